@@ -1,0 +1,2 @@
+/** Typed errors that carry the culprits. */
+export * from './errors.ts';

@@ -1,0 +1,532 @@
+/**
+ * Real abelian fields: Q(2 cos(2 pi/N)) with square roots of further primes adjoined. Every exact number
+ * of a model lives in one of them: integers, fractions, square roots of rationals, cos, sin and tan of
+ * rational multiples of pi.
+ *
+ * Basis: c_k * sqrt(r) with c_0 = 1, c_k = 2 cos(2 pi k/N) for 0 < k < m, m = max(1, phi(N)/2), and r a
+ * product of adjoined primes. The adjoined primes do not ramify in the cyclotomic part, so the two parts
+ * are linearly disjoint and the basis is one (ramification of Q(sqrt p) at p; from memory).
+ */
+import { cyclotomicPolynomial, gcdInt, isqrt, lcmInt } from './arithmetic.ts';
+import { CyclotomicField } from './cyclotomic.ts';
+import type { OrderedField } from './field.ts';
+import { AbelianField, type Algebraic } from './number-field.ts';
+import { invMod, mulAddMod, mulMod, powModInt, primeCongruentToOne, reduceBigint, rootOfUnity, sqrtMod } from './prime.ts';
+import { gcd, type Rational, rational, ratioToNumber } from './rational.ts';
+import { cosFixed } from './trigonometry.ts';
+
+/** What a field must contain: 2 cos(2 pi/n) for each n, the square root of each integer. */
+export interface FieldDemand {
+  readonly cosines?: readonly number[];
+  readonly squareRoots?: readonly bigint[];
+}
+
+/** The largest degree over Q that is worth computing in. */
+export const DEGREE_LIMIT = 512;
+
+const cache = new Map<string, RealField>();
+const normalConductor = (n: number) => (n % 4 === 2 ? n / 2 : n);
+
+/** Square-free kernel and square part of n >= 1: n = free * square^2, with the primes of free. */
+export function squareFree(n: bigint): { primes: bigint[]; square: bigint; complete: boolean } {
+  const primes: bigint[] = [];
+  let square = 1n;
+  let complete = true;
+  for (let p = 2n; p * p <= n; p += p === 2n ? 1n : 2n) {
+    if (p > 1_000_000n) {
+      complete = false;
+      break;
+    }
+    let e = 0;
+    while (n % p === 0n) {
+      n /= p;
+      e++;
+    }
+    square *= p ** BigInt(e >> 1);
+    if (e & 1) primes.push(p);
+  }
+  if (n > 1n) {
+    const r = isqrt(n);
+    if (r * r === n) square *= r;
+    else primes.push(n);
+  }
+  return { primes, square, complete };
+}
+
+export class RealField extends AbelianField implements OrderedField<Algebraic> {
+  readonly name: string;
+  /** Odd or divisible by 4; 1 if there is no cyclotomic part. */
+  readonly conductor: number;
+  /** Primes whose square roots are adjoined, increasing. */
+  readonly radicals: readonly bigint[];
+  readonly #m: number;
+  readonly #masks: number;
+  readonly #reduced: readonly (readonly number[])[]; // 2cos(2 pi k/N) over c_0 … c_{m-1}
+  readonly #masked: readonly bigint[]; // product of the radicals in a mask
+  readonly #units: readonly number[];
+  readonly #values: number[];
+
+  private constructor(conductor: number, radicals: readonly bigint[]) {
+    const cyclotomic = CyclotomicField.of(conductor);
+    const m = Math.max(1, cyclotomic.degree / 2);
+    super(m << radicals.length);
+    this.conductor = conductor;
+    this.radicals = radicals;
+    this.#m = m;
+    this.#masks = 1 << radicals.length;
+    const parts = [...(m > 1 ? [`cos(2*pi/${conductor})`] : []), ...radicals.map((r) => `sqrt(${r})`)];
+    this.name = parts.length === 0 ? 'Q' : `Q(${parts.join(', ')})`;
+    this.#reduced = m === 1 ? [] : reductionTable(conductor, m);
+    this.#masked = Array.from({ length: this.#masks }, (_, mask) => radicals.reduce((x, r, i) => (mask & (1 << i) ? x * r : x), 1n));
+    this.#units = cyclotomic.units.filter((k) => 2 * k <= conductor || conductor <= 2);
+    this.#values = Array.from({ length: this.degree }, (_, i) => {
+      const k = i % m;
+      return (k === 0 ? 1 : 2 * Math.cos((2 * Math.PI * k) / conductor)) * Math.sqrt(Number(this.#masked[(i / m) | 0]!));
+    });
+  }
+
+  /** The smallest field of this family that meets the demand. Throws RangeError past DEGREE_LIMIT. */
+  static of(demand: FieldDemand = {}): RealField {
+    let n = 1;
+    for (const k of demand.cosines ?? []) n = normalConductor(lcmInt(n, normalConductor(k)));
+    // only 2cos matters: conductors 1, 3, 4 give nothing new
+    let primes = new Set<bigint>();
+    for (const r of demand.squareRoots ?? []) for (const p of squareFree(r < 0n ? -r : r).primes) primes.add(p);
+    for (let changed = true; changed; ) {
+      changed = false;
+      for (const p of [...primes].sort((a, b) => (b > a ? 1 : -1))) {
+        const ramified = p === 2n ? n % 4 === 0 && n > 4 : n > 4 && p < 1_000_000n && n % Number(p) === 0;
+        if (!ramified) continue;
+        const next = lcmInt(n, p === 2n ? 8 : p % 4n === 1n ? Number(p) : 4 * Number(p));
+        primes = new Set([...primes].filter((q) => q !== p));
+        n = next;
+        changed = true;
+        break;
+      }
+    }
+    if (n <= 4) n = 1;
+    // a quadratic cyclotomic part is the same field as one square root: keep one spelling
+    const quadratic = new Map([[5, 5n], [8, 2n], [12, 3n]]).get(n);
+    if (quadratic !== undefined) {
+      n = 1;
+      primes.add(quadratic);
+    }
+    const radicals = [...primes].sort((a, b) => (a > b ? 1 : -1));
+    const key = `${n};${radicals.join(',')}`;
+    const known = cache.get(key);
+    if (known !== undefined) return known;
+    const degree = Math.max(1, CyclotomicField.of(n).degree / 2) * 2 ** radicals.length;
+    if (degree > DEGREE_LIMIT) throw new RangeError(`the numbers of this model need a field of degree ${degree} over Q; the limit is ${DEGREE_LIMIT}`);
+    const field = new RealField(n, radicals);
+    cache.set(key, field);
+    return field;
+  }
+
+  /** The smallest field of the family that contains both. */
+  static join(a: RealField, b: RealField): RealField {
+    if (a === b) return a;
+    return RealField.of({ cosines: [a.conductor, b.conductor], squareRoots: [...a.radicals, ...b.radicals] });
+  }
+
+  /** What `RealField.of` needs to contain this field. */
+  get demand(): FieldDemand {
+    return { cosines: [this.conductor], squareRoots: this.radicals };
+  }
+
+  /** cos(2 pi k/n), or undefined if it is not in the field. */
+  cos(k: number, n: number): Algebraic | undefined {
+    const g = gcdInt(k, n);
+    let num = (((k / g) % (n / g)) + n / g) % (n / g);
+    let den = n / g;
+    let sign = 1n;
+    if (den % 4 === 2) {
+      // zeta_{2j} = -zeta_j^{(j+1)/2}
+      const j = den / 2;
+      sign = num % 2 === 0 ? 1n : -1n;
+      num = (num * ((j + 1) / 2)) % j;
+      den = j;
+    }
+    const half = (x: Algebraic) => this.element(x.c.map((y) => y * sign), x.d * 2n);
+    if (den === 1) return this.fromInteger(sign);
+    if (den === 3) return this.fromRational(-sign, 2n);
+    if (den === 4) return num % 2 === 0 ? this.fromInteger(num === 0 ? sign : -sign) : this.zero;
+    if (this.conductor % den === 0) {
+      const at = (num * (this.conductor / den)) % this.conductor;
+      const c = this.zero.c.slice();
+      this.#reduced[at]!.forEach((x, i) => {
+        c[i] = BigInt(x);
+      });
+      return half({ c, d: 1n });
+    }
+    if (den === 8 || den === 12 || den === 5) {
+      const root = this.sqrt(den === 8 ? rational(2n) : den === 12 ? rational(3n) : rational(5n));
+      if (root === undefined) return undefined;
+      if (den === 5) {
+        // 2cos(2 pi/5) = (sqrt5 - 1)/2, 2cos(4 pi/5) = (-sqrt5 - 1)/2
+        const s = num === 1 || num === 4 ? root : this.neg(root);
+        return half(this.mul(this.sub(s, this.one), this.fromRational(1n, 2n)));
+      }
+      const negative = den === 8 ? num === 3 || num === 5 : num === 5 || num === 7;
+      return half(negative ? this.neg(root) : root);
+    }
+    return undefined;
+  }
+
+  /** sin(2 pi k/n), or undefined if it is not in the field. */
+  sin(k: number, n: number): Algebraic | undefined {
+    return this.cos(n - 4 * k, 4 * n);
+  }
+
+  /** The square root of a non-negative rational, or undefined if it is not in the field. */
+  sqrt(r: Rational): Algebraic | undefined {
+    if (r.n < 0n) return undefined;
+    if (r.n === 0n) return this.zero;
+    const { primes, square } = squareFree(r.n * r.d);
+    let out = this.fromRational(square, r.d);
+    for (const p of primes) {
+      const root = this.#sqrtPrime(p);
+      if (root === undefined) return undefined;
+      out = this.mul(out, root);
+    }
+    return out;
+  }
+
+  #sqrtPrime(p: bigint): Algebraic | undefined {
+    const index = this.radicals.indexOf(p);
+    if (index >= 0) {
+      const c = this.zero.c.slice();
+      c[this.#m << index] = 1n;
+      return { c, d: 1n };
+    }
+    if (p > BigInt(this.conductor)) return undefined;
+    const q = Number(p);
+    const need = q === 2 ? 8 : q % 4 === 1 ? q : 4 * q;
+    if (this.conductor % need !== 0) return undefined;
+    if (q === 2) return this.mul(this.fromInteger(2), this.cos(1, 8)!);
+    // Gauss 1811: sum of (k/p) zeta_p^k is sqrt(p) for p = 1 mod 4 and i sqrt(p) for p = 3 mod 4.
+    let sum = this.zero;
+    for (let k = 1; k < q; k++) {
+      const legendre = powModInt(k, (q - 1) / 2, q) === 1 ? 1 : -1;
+      const term = q % 4 === 1 ? this.cos(k, q)! : this.sin(k, q)!;
+      sum = legendre === 1 ? this.add(sum, term) : this.sub(sum, term);
+    }
+    return sum;
+  }
+
+  /** The image of an element of a subfield of this family; throws RangeError if it does not lie in here. */
+  embed(from: RealField, a: Algebraic): Algebraic {
+    if (from === this) return a;
+    let out = this.zero;
+    a.c.forEach((x, i) => {
+      if (x === 0n) return;
+      const k = i % from.#m;
+      const cosine = k === 0 ? this.one : this.cos(k, from.conductor);
+      const root = this.sqrt(rational(from.#masked[(i / from.#m) | 0]!));
+      if (cosine === undefined || root === undefined) throw new RangeError(`${from.name} does not lie in ${this.name}`);
+      const factor = k === 0 ? x : 2n * x;
+      out = this.add(out, this.mul(this.fromInteger(factor), this.mul(cosine, root)));
+    });
+    return this.mul(out, this.fromRational(1n, a.d));
+  }
+
+  /** The real element of a cyclotomic field, or undefined if it is not real or not in here. */
+  fromCyclotomic(from: CyclotomicField, a: Algebraic): Algebraic | undefined {
+    if (!from.equal(a, from.conj(a))) return undefined;
+    // a = (a + conj a)/2 = sum of c_k cos(2 pi k/n)
+    let out = this.zero;
+    for (let k = 0; k < a.c.length; k++) {
+      if (a.c[k] === 0n) continue;
+      const cosine = this.cos(k, from.conductor);
+      if (cosine === undefined) return undefined;
+      out = this.add(out, this.mul(this.fromInteger(a.c[k]!), cosine));
+    }
+    return this.mul(out, this.fromRational(1n, a.d));
+  }
+
+  protected product(a: readonly bigint[], b: readonly bigint[]): bigint[] {
+    const m = this.#m;
+    const out = new Array<bigint>(this.degree).fill(0n);
+    if (m === 1) {
+      for (let s = 0; s < this.#masks; s++) {
+        const x = a[s]!;
+        if (x === 0n) continue;
+        for (let t = 0; t < this.#masks; t++) {
+          const y = b[t]!;
+          if (y !== 0n) out[s ^ t] = out[s ^ t]! + x * y * this.#masked[s & t]!;
+        }
+      }
+      return out;
+    }
+    for (let s = 0; s < this.#masks; s++)
+      for (let t = 0; t < this.#masks; t++) {
+        const base = (s ^ t) * m;
+        const common = this.#masked[s & t]!;
+        for (let i = 0; i < m; i++) {
+          let x = a[s * m + i]!;
+          if (x === 0n) continue;
+          if (common !== 1n) x *= common;
+          for (let j = 0; j < m; j++) {
+            const y = b[t * m + j]!;
+            if (y === 0n) continue;
+            const xy = x * y;
+            if (i === 0 || j === 0) {
+              out[base + i + j] = out[base + i + j]! + xy;
+              continue;
+            }
+            // c_i c_j = c_{i+j} + c_{|i-j|}; 2cos(0) = 2 = 2 c_0
+            if (i + j < m) out[base + i + j] = out[base + i + j]! + xy;
+            else {
+              const row = this.#reduced[(i + j) % this.conductor]!;
+              for (let l = 0; l < m; l++) if (row[l] !== 0) out[base + l] = out[base + l]! + xy * BigInt(row[l]!);
+            }
+            const diff = Math.abs(i - j);
+            out[base + diff] = out[base + diff]! + (diff === 0 ? 2n * xy : xy);
+          }
+        }
+      }
+    return out;
+  }
+
+  automorphism(index: number, a: Algebraic): Algebraic {
+    const m = this.#m;
+    const k = this.#units[index % m]!;
+    const flips = (index / m) | 0;
+    const out = new Array<bigint>(this.degree).fill(0n);
+    for (let i = 0; i < this.degree; i++) {
+      let x = a.c[i]!;
+      if (x === 0n) continue;
+      const mask = (i / m) | 0;
+      for (let bit = mask & flips; bit !== 0; bit &= bit - 1) x = -x;
+      const j = i % m;
+      if (j === 0 || k === 1) out[i] = out[i]! + x;
+      else {
+        const row = this.#reduced[(j * k) % this.conductor]!;
+        for (let l = 0; l < m; l++) if (row[l] !== 0) out[mask * m + l] = out[mask * m + l]! + x * BigInt(row[l]!);
+      }
+    }
+    return { c: out, d: a.d };
+  }
+  conj(a: Algebraic): Algebraic {
+    return a;
+  }
+
+  /** Value as a fixed-point number with the given bits, and a bound on its error in units. */
+  #fixed(a: Algebraic, bits: number): { value: bigint; error: bigint } {
+    let value = 0n;
+    let error = 1n;
+    const b = BigInt(bits);
+    for (let i = 0; i < this.degree; i++) {
+      const x = a.c[i]!;
+      if (x === 0n) continue;
+      const k = i % this.#m;
+      const root = isqrt(this.#masked[(i / this.#m) | 0]! << (2n * b)); // error below 1 unit
+      const cosine = k === 0 ? 1n << b : 2n * cosFixed(k, this.conductor, bits); // error below 8 units
+      const magnitude = x < 0n ? -x : x;
+      value += (x * cosine * root) >> b;
+      error += magnitude * ((root >> b) * 9n + 12n) + 1n;
+    }
+    return { value, error };
+  }
+  toNumber(a: Algebraic): number {
+    if (this.degree === 1) return ratioToNumber(a.c[0]!, a.d);
+    let sum = 0;
+    let magnitude = 0;
+    for (let i = 0; i < this.degree; i++) {
+      if (a.c[i] === 0n) continue;
+      const t = ratioToNumber(a.c[i]!, a.d) * this.#values[i]!;
+      sum += t;
+      magnitude += Math.abs(t);
+    }
+    if (Math.abs(sum) > 0.01 * magnitude || magnitude === 0) return sum;
+    for (let bits = 128; ; bits *= 2) {
+      const { value, error } = this.#fixed(a, bits);
+      const size = value < 0n ? -value : value;
+      if (size > error << 60n) return ratioToNumber(value, a.d << BigInt(bits));
+    }
+  }
+  sign(a: Algebraic): -1 | 0 | 1 {
+    if (this.isZero(a)) return 0;
+    if (this.degree === 1) return a.c[0]! > 0n ? 1 : -1;
+    let sum = 0;
+    let magnitude = 0;
+    for (let i = 0; i < this.degree; i++) {
+      if (a.c[i] === 0n) continue;
+      const t = ratioToNumber(a.c[i]!, a.d) * this.#values[i]!;
+      sum += t;
+      magnitude += Math.abs(t);
+    }
+    if (Number.isFinite(magnitude) && Math.abs(sum) > 1e-10 * magnitude) return sum > 0 ? 1 : -1;
+    for (let bits = 128; ; bits *= 2) {
+      const { value, error } = this.#fixed(a, bits);
+      if (value > error) return 1;
+      if (value < -error) return -1;
+    }
+  }
+  compare(a: Algebraic, b: Algebraic): -1 | 0 | 1 {
+    return this.sign(this.sub(a, b));
+  }
+
+  /** The square root of a in this field if there is one with a rational square (a rational). */
+  sqrtElement(a: Algebraic): Algebraic | undefined {
+    const r = this.toRational(a);
+    return r === undefined ? undefined : this.sqrt(r);
+  }
+
+  /** Rational part and multiple of one square root, if a lies in a quadratic field: a = u + v sqrt(w). */
+  quadraticForm(a: Algebraic): { u: Rational; v: Rational; w: bigint } | undefined {
+    let other: Algebraic | undefined;
+    for (let i = 1; i < this.degree; i++) {
+      const b = this.automorphism(i, a);
+      if (this.equal(a, b)) continue;
+      if (other !== undefined && !this.equal(other, b)) return undefined;
+      other = b;
+    }
+    if (other === undefined) return undefined;
+    const half = this.fromRational(1n, 2n);
+    const u = this.toRational(this.mul(half, this.add(a, other)))!;
+    const difference = this.mul(half, this.sub(a, other));
+    const square = this.toRational(this.mul(difference, difference))!;
+    const { primes, square: s } = squareFree(square.n * square.d);
+    const w = primes.reduce((x, p) => x * p, 1n);
+    const v = rational(this.sign(difference) > 0 ? s : -s, square.d);
+    return { u, v, w };
+  }
+
+  format(a: Algebraic): string {
+    const cosine = (k: number, n: number) => {
+      const g = gcdInt(2 * k, n);
+      return `cos(${(2 * k) / g === 1 ? '' : `${(2 * k) / g}*`}pi/${n / g})`;
+    };
+    return this.#write(a, (r) => `sqrt(${r})`, cosine, '*', (num, den) => `${num}/${den}`);
+  }
+  latex(a: Algebraic): string {
+    const cosine = (k: number, n: number) => {
+      const g = gcdInt(2 * k, n);
+      return `\\cos\\tfrac{${(2 * k) / g === 1 ? '' : (2 * k) / g}\\pi}{${n / g}}`;
+    };
+    return this.#write(a, (r) => `\\sqrt{${r}}`, cosine, '', (num, den) => {
+      const negative = num.startsWith('-') && !/ [+-] /.test(num);
+      return `${negative ? '-' : ''}\\tfrac{${negative ? num.slice(1) : num}}{${den}}`;
+    });
+  }
+
+  #write(
+    a: Algebraic,
+    root: (r: bigint) => string,
+    cosine: (k: number, n: number) => string,
+    times: string,
+    over: (numerator: string, denominator: string) => string,
+  ): string {
+    const terms: Array<{ x: bigint; body: string }> = [];
+    const q = this.quadraticForm(a);
+    let d = a.d;
+    if (q !== undefined) {
+      d = (q.u.d * q.v.d) / gcd(q.u.d, q.v.d);
+      if (q.u.n !== 0n) terms.push({ x: (q.u.n * d) / q.u.d, body: '' });
+      terms.push({ x: (q.v.n * d) / q.v.d, body: root(q.w) });
+    } else
+      a.c.forEach((x, i) => {
+        if (x === 0n) return;
+        const k = i % this.#m;
+        const mask = (i / this.#m) | 0;
+        const parts = [...(k === 0 ? [] : [cosine(k, this.conductor)]), ...(mask === 0 ? [] : [root(this.#masked[mask]!)])];
+        terms.push({ x: k === 0 ? x : 2n * x, body: parts.join(times) });
+      });
+    if (terms.length === 0) return '0';
+    if (terms.length === 1) {
+      const { x, body } = terms[0]!;
+      const g = gcd(x, d);
+      const n = x / g;
+      const den = d / g;
+      const num = body === '' ? `${n}` : n === 1n ? body : n === -1n ? `-${body}` : `${n}${times}${body}`;
+      return den === 1n ? num : over(num, `${den}`);
+    }
+    let sum = '';
+    for (const { x, body } of terms) {
+      const n = x < 0n ? -x : x;
+      const t = body === '' ? `${n}` : n === 1n ? body : `${n}${times}${body}`;
+      sum += sum === '' ? (x < 0n ? `-${t}` : t) : x < 0n ? ` - ${t}` : ` + ${t}`;
+    }
+    if (d === 1n) return sum;
+    return times === '' ? over(sum, `${d}`) : `(${sum})/${d}`;
+  }
+
+  /** A reduction into GF(p): p = 1 mod 4N with every adjoined root. `index` picks the prime. */
+  reduction(index = 0): Reduction {
+    const n = lcmInt(4, this.conductor);
+    for (let i = 0, found = -1; ; i++) {
+      const p = primeCongruentToOne(n, i);
+      const roots = this.radicals.map((r) => sqrtMod(reduceBigint(r, p), p));
+      if (roots.some((r) => r === undefined || r === 0) || ++found < index) continue;
+      const zeta = this.#m === 1 ? 1 : powModInt(rootOfUnity(n, p), n / this.conductor, p);
+      const images = new Int32Array(this.degree);
+      const inverse = invMod(zeta, p);
+      for (let j = 0; j < this.degree; j++) {
+        const k = j % this.#m;
+        const mask = (j / this.#m) | 0;
+        let v = k === 0 ? 1 : (powModInt(zeta, k, p) + powModInt(inverse, k, p)) % p;
+        roots.forEach((r, b) => {
+          if (mask & (1 << b)) v = mulMod(v, r!, p);
+        });
+        images[j] = v;
+      }
+      return new Reduction(p, images);
+    }
+  }
+}
+
+/** A ring homomorphism from a real field (elements with denominators prime to p) into GF(p). */
+export class Reduction {
+  readonly p: number;
+  readonly #images: Int32Array;
+  constructor(p: number, images: Int32Array) {
+    this.p = p;
+    this.#images = images;
+  }
+  /** The image in [0, p). Throws RangeError if p divides the denominator. */
+  apply(a: Algebraic): number {
+    const p = this.p;
+    let v = 0;
+    for (let i = 0; i < a.c.length; i++) if (a.c[i] !== 0n) v = mulAddMod(v, reduceBigint(a.c[i]!, p), this.#images[i]!, p);
+    return a.d === 1n ? v : mulMod(v, invMod(reduceBigint(a.d, p), p), p);
+  }
+}
+
+/** 2cos(2 pi k/N), 0 <= k < N, over the basis 1, c_1, …, c_{m-1}. */
+function reductionTable(n: number, m: number): number[][] {
+  // Over the power basis of Q(zeta_N), zeta^k + zeta^-k; the c_j with j < m are triangular there up to sign,
+  // so solve by the recursion c_{k+1} = c_1 c_k - c_{k-1} with the minimal relation found from Phi_N.
+  const rows: number[][] = [];
+  const unit = (j: number, v: number) => Array.from({ length: m }, (_, i) => (i === j ? v : 0));
+  for (let k = 0; k < m; k++) rows.push(unit(k, k === 0 ? 2 : 1));
+  // Phi_N is palindromic of degree 2m: a_0 c_m + … : sum over i of a_{m-i} c_i = 0 (a_m counted once)
+  const phi = cyclotomicPolynomial(n);
+  const relation = new Array<number>(m).fill(0);
+  relation[0] = -phi[m]!;
+  for (let i = 1; i < m; i++) relation[i] = -phi[m - i]!;
+  rows.push(relation); // c_m, since phi[0] = phi[2m] = 1
+  for (let k = m + 1; k < n; k++) {
+    // c_k = c_1 c_{k-1} - c_{k-2}
+    const prev = rows[k - 1]!;
+    const out = new Array<number>(m).fill(0);
+    for (let i = 0; i < m; i++) {
+      const x = prev[i]!;
+      if (x === 0) continue;
+      if (i === 0) {
+        if (m > 1) out[1] = out[1]! + x;
+        else out[0] = out[0]! + x * relation[0]!;
+        continue;
+      }
+      // c_1 c_i = c_{i+1} + c_{i-1}
+      if (i + 1 < m) out[i + 1] = out[i + 1]! + x;
+      else for (let l = 0; l < m; l++) out[l] = out[l]! + x * relation[l]!;
+      out[i - 1] = out[i - 1]! + (i === 1 ? 2 * x : x);
+    }
+    const before = rows[k - 2]!;
+    for (let i = 0; i < m; i++) out[i] = out[i]! - before[i]!;
+    rows.push(out);
+  }
+  return rows;
+}
+
+
