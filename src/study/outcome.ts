@@ -1,0 +1,64 @@
+/**
+ * What a command hands back to whoever asked for it: the result as plain data, the exit
+ * status it stands for, the text for a terminal, and the documents that can be made of it.
+ * Documents are made on demand, so that an answer in JSON never pays for a picture.
+ */
+
+/** The commands that answer a question about one model. */
+export type StudyCommand = 'check' | 'components' | 'codim' | 'events' | 'invariants' | 'reduce' | 'branches' | 'sweep' | 'report';
+
+/** 0 answered; 1 answered and the answer is no; 3 undecided at the stated tolerance. Wrong input (2) is an error, never an outcome. */
+export type OutcomeStatus = 0 | 1 | 3;
+
+/** Plain JSON data: what a result is made of. */
+export type Json = null | boolean | number | string | readonly Json[] | { readonly [key: string]: Json };
+
+/** A result in the form that is printed by `--json`; every result names its schema and command. */
+export interface ResultObject {
+  readonly schema: 'symcodim/1';
+  readonly command: string;
+  readonly [key: string]: unknown;
+}
+
+/** The kinds of documents that can be written. */
+export type DocumentFormat = 'latex' | 'html' | 'markdown' | 'svg';
+
+/** A document made on demand; `fragment` leaves the preamble off (LaTeX only). */
+export type DocumentMaker = (options: { readonly fragment: boolean }) => string | Promise<string>;
+
+export interface Outcome {
+  readonly result: ResultObject;
+  readonly status: OutcomeStatus;
+  /** For a terminal; ends without a line break; no line needs to be wrapped by hand. */
+  readonly text: string;
+  /** The formats this command can write; a format left out cannot be made of this result. */
+  readonly documents: Readonly<Partial<Record<DocumentFormat, DocumentMaker>>>;
+  /** Remarks for standard error, one sentence each, such as the term that made an answer floating. */
+  readonly notes?: readonly string[];
+}
+
+/** How a study is to be carried out; everything here has a default. */
+export interface StudyOptions {
+  /** Number of parameters the study may tune (K of the verdict); default: the number varied, at least 1. */
+  readonly parameters?: number;
+  /** Degree of invariants, Taylor expansion or reduction. */
+  readonly degree?: number;
+  /** Highest codimension listed by `events`. */
+  readonly codimension?: number;
+  /** Range of `sweep`; the ends are expressions in exact numbers. */
+  readonly range?: { readonly name: string; readonly from: string; readonly to: string; readonly steps?: number };
+  /** Largest group order that is enumerated. */
+  readonly orderLimit?: number;
+  /** Relative tolerance of floating decisions. */
+  readonly tolerance?: number;
+  /** Treat every number as floating. */
+  readonly floating?: boolean;
+  /** Look for translations and rotations that leave H invariant. */
+  readonly findNeutral?: boolean;
+  /** Look for signed permutations that leave H invariant (`check`). */
+  readonly find?: boolean;
+  /** Birkhoff normal form at an elliptic equilibrium (`reduce`). */
+  readonly elliptic?: boolean;
+  /** Told how far a long study has come, from 0 to 1. */
+  readonly progress?: (share: number) => void;
+}
