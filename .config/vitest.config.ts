@@ -1,3 +1,8 @@
 import { defineConfig } from 'vitest/config';
+import { grammarPlugin } from '../.build/grammar.mjs';
 
-export default defineConfig({ root: new URL('..', import.meta.url).pathname, test: { include: ['**/*.test.ts'], testTimeout: 60000 } });
+export default defineConfig({
+  plugins: [grammarPlugin()],
+  root: new URL('..', import.meta.url).pathname,
+  test: { include: ['**/*.test.ts'], testTimeout: 60000 },
+});
