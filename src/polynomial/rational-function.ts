@@ -4,7 +4,8 @@
  * makes it primitive with integer coordinates and positive there (over Q), or monic times such an integer.
  */
 import { AbelianField, type Algebraic, type Field, gcd, type OrderedField, type Rational, rationals } from '../field/index.ts';
-import { divideExactly, gcdPolynomials } from './division.ts';
+import { divideExactly } from './division.ts';
+import { gcdPolynomials } from './gcd.ts';
 import { type Polynomial, PolynomialRing } from './polynomial.ts';
 import { isSum } from './writing.ts';
 

@@ -1,10 +1,12 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { type Algebraic, type Field, RealField, rational, rationals } from '../../src/field/index.ts';
+import { type Algebraic, CyclotomicField, type Field, RealField, rational, rationals } from '../../src/field/index.ts';
 import {
   divideExactly,
   gcdOfList,
   gcdPolynomials,
+  monic,
+  monomialsOfDegree,
   type Polynomial,
   PolynomialRing,
   type RationalFunction,
@@ -58,6 +60,29 @@ describe('greatest common divisors', () => {
     const g = gcdPolynomials(ring, p, q);
     expect(ring.degree(g)).toBe(1);
     expect(ring.format(divideExactly(ring, p, q)!)).toBe('-sqrt(2) + x');
+  });
+  it('remainder sequences, where the field has no images: Q(zeta_12)', () => {
+    const z = CyclotomicField.of(12);
+    const ring = new PolynomialRing(z, ['x', 'y']);
+    const [x, y] = [ring.variable(0), ring.variable(1)];
+    const h = ring.add(ring.mul(x, x), ring.scale(y, z.root(1)));
+    const f = ring.sub(ring.mul(x, y), ring.constant(z.root(5)));
+    const g = ring.add(ring.power(y, 2), ring.add(x, ring.one));
+    const d = gcdPolynomials(ring, ring.mul(f, h), ring.mul(g, h));
+    expect(ring.key(d)).toBe(ring.key(monic(ring, h)));
+  });
+  it('dense quartic factors in three variables', () => {
+    const ring = new PolynomialRing(RealField.of(), ['a', 'b', 'c']);
+    let state = 7;
+    const dense = () =>
+      ring.fromTerms(
+        [0, 1, 2, 3, 4]
+          .flatMap((d) => monomialsOfDegree(3, d))
+          .map((m) => [m, ring.field.fromInteger(((state = (state * 75 + 74) % 65537) % 19) - 9)] as const),
+      );
+    const [f, g, h] = [dense(), dense(), dense()];
+    const d = gcdPolynomials(ring, ring.mul(f, h), ring.mul(g, h));
+    expect(ring.key(d)).toBe(ring.key(monic(ring, h)));
   });
   it('no variables, zero, lists', () => {
     const ring = new PolynomialRing(rationals, []);
