@@ -11,10 +11,6 @@ function dense(a: NumberMatrix): DenseMatrix {
   return DenseMatrix.from1DArray(a.rows, a.cols, a.data);
 }
 
-function fromDense(a: DenseMatrix): NumberMatrix {
-  return numberBuild(a.rows, a.columns, (i, j) => a.get(i, j));
-}
-
 export interface SymmetricEigen {
   /** Ascending. */
   readonly values: Float64Array;
