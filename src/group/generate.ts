@@ -106,7 +106,11 @@ export function leftCosets(group: FiniteGroup, subgroup: ArrayLike<number>): Cos
 }
 
 /** The elements g with g H g^-1 = H, increasing. */
-export function normalizer(group: FiniteGroup, subgroup: ArrayLike<number>, generators: readonly number[] = Array.from(subgroup)): Int32Array {
+export function normalizer(
+  group: FiniteGroup,
+  subgroup: ArrayLike<number>,
+  generators: readonly number[] = Array.from(subgroup),
+): Int32Array {
   const product = productOf(group);
   const inside = new Uint8Array(group.order);
   for (let i = 0; i < subgroup.length; i++) inside[subgroup[i]!] = 1;

@@ -40,8 +40,7 @@ export function signFromGenerators(group: FiniteGroup, signs: readonly (1 | -1)[
     distinct.set(g, signs[s]!);
   });
   for (const [g, sign] of distinct)
-    for (let i = 0; i < group.order; i++)
-      if (sigma[group.multiply(g, i)] !== sigma[i]! * sign) throw noSign(group.generators.indexOf(g));
+    for (let i = 0; i < group.order; i++) if (sigma[group.multiply(g, i)] !== sigma[i]! * sign) throw noSign(group.generators.indexOf(g));
   return sigma;
 }
 
