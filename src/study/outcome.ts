@@ -10,9 +10,6 @@ export type StudyCommand = 'check' | 'components' | 'codim' | 'events' | 'invari
 /** 0 answered; 1 answered and the answer is no; 3 undecided at the stated tolerance. Wrong input (2) is an error, never an outcome. */
 export type OutcomeStatus = 0 | 1 | 3;
 
-/** Plain JSON data: what a result is made of. */
-export type Json = null | boolean | number | string | readonly Json[] | { readonly [key: string]: Json };
-
 /** A result in the form that is printed by `--json`; every result names its schema and command. */
 export interface ResultObject {
   readonly schema: 'symcodim/1';
@@ -37,27 +34,11 @@ export interface Outcome {
   readonly notes?: readonly string[];
 }
 
-/** How a study is to be carried out; everything here has a default. */
+/** What one run of a command adds to the declaration, which holds everything else (degree, tolerance, range, …). */
 export interface StudyOptions {
-  /** Number of parameters the study may tune (K of the verdict); default: the number varied, at least 1. */
-  readonly parameters?: number;
-  /** Degree of invariants, Taylor expansion or reduction. */
-  readonly degree?: number;
-  /** Highest codimension listed by `events`. */
-  readonly codimension?: number;
-  /** Range of `sweep`; the ends are expressions in exact numbers. */
-  readonly range?: { readonly name: string; readonly from: string; readonly to: string; readonly steps?: number };
-  /** Largest group order that is enumerated. */
-  readonly orderLimit?: number;
-  /** Relative tolerance of floating decisions. */
-  readonly tolerance?: number;
-  /** Treat every number as floating. */
-  readonly floating?: boolean;
-  /** Look for translations and rotations that leave H invariant. */
-  readonly findNeutral?: boolean;
   /** Look for signed permutations that leave H invariant (`check`). */
   readonly find?: boolean;
-  /** Birkhoff normal form at an elliptic equilibrium (`reduce`). */
+  /** Birkhoff normal form at an elliptic equilibrium (`reduce`, `report`). */
   readonly elliptic?: boolean;
   /** Told how far a long study has come, from 0 to 1. */
   readonly progress?: (share: number) => void;

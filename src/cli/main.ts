@@ -1,0 +1,43 @@
+#!/usr/bin/env node
+/** Entry of the command line: the only file that touches the streams of the process and its exit status. */
+import { readFileSync } from 'node:fs';
+import { runners } from './dispatch.ts';
+import { program } from './program.ts';
+import { ClosedPipe, type World } from './world.ts';
+
+const { env } = process;
+const plain = (env.NO_COLOR ?? '') !== '' || env.TERM === 'dumb';
+
+// The streams are touched only where they are used: each costs time at the start.
+const world: World = {
+  write: (text) =>
+    new Promise((resolve, reject) => {
+      // A reader that has gone is reported to whoever writes; the event itself must not end the process.
+      if (process.stdout.listenerCount('error') === 0) process.stdout.on('error', () => {});
+      process.stdout.write(text, (error) => {
+        if (error === null || error === undefined) resolve();
+        else reject((error as NodeJS.ErrnoException).code === 'EPIPE' ? new ClosedPipe() : error);
+      });
+    }),
+  tell: (text) => {
+    if (process.stderr.listenerCount('error') === 0) process.stderr.on('error', () => {});
+    process.stderr.write(`${text}\n`);
+  },
+  input: () => process.stdin,
+  get width() {
+    return process.stdout.isTTY ? process.stdout.columns : undefined;
+  },
+  get colorOutput() {
+    return process.stdout.isTTY && !plain;
+  },
+  get colorMessages() {
+    return process.stderr.isTTY && !plain;
+  },
+  progress: (share) => {
+    if (process.stderr.isTTY) process.stderr.write(share >= 1 ? '\r\u001b[K' : `\r${Math.floor(100 * share)} %`);
+  },
+  version: () => (JSON.parse(readFileSync(new URL('../../package.json', import.meta.url), 'utf8')) as { version: string }).version,
+  trace: (env.SYMCODIM_TRACE ?? '') !== '',
+};
+
+process.exitCode = await program(process.argv.slice(2), world, runners);
