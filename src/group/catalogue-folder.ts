@@ -30,8 +30,9 @@ export function catalogueNames(folder: string = catalogueFolder()): string[] {
   return named.sort((a, b) => Number(word(b)) - Number(word(a)) || (a < b ? -1 : 1));
 }
 
-/** Levenshtein's distance (1965) of two short texts; a change of case counts one half. */
+/** Edit distance of two short texts (Damerau 1964, Levenshtein 1965): change, omission, addition, exchange of neighbours; a change of case counts one half. */
 function distance(a: string, b: string): number {
+  let before: number[] = [];
   let row = Array.from({ length: b.length + 1 }, (_, j) => j);
   for (let i = 1; i <= a.length; i++) {
     const next = [i];
@@ -39,9 +40,10 @@ function distance(a: string, b: string): number {
       const x = a[i - 1]!;
       const y = b[j - 1]!;
       const change = x === y ? 0 : x.toLowerCase() === y.toLowerCase() ? 0.5 : 1;
-      next.push(Math.min(row[j - 1]! + change, row[j]! + 1, next[j - 1]! + 1));
+      const exchange = i > 1 && j > 1 && x === b[j - 2] && y === a[i - 2] ? before[j - 2]! + 1 : Number.POSITIVE_INFINITY;
+      next.push(Math.min(row[j - 1]! + change, row[j]! + 1, next[j - 1]! + 1, exchange));
     }
-    row = next;
+    [before, row] = [row, next];
   }
   return row[b.length]!;
 }

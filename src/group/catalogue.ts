@@ -49,6 +49,7 @@ export interface CatalogueOptions {
 }
 
 const FACTOR_LIMIT = 9;
+const NAME_LIMIT = 60;
 const EXAMPLE = 3;
 
 /** One factor of a product, or the whole group. */
@@ -175,7 +176,7 @@ function candidates(spec: string): { name: string; typed: string | undefined }[]
 function catalogueDeclaration(spec: string): { declaration: GroupDeclaration; typed: string | undefined } {
   const folder = catalogueFolder();
   for (const { name, typed } of candidates(spec)) {
-    if (!/^[A-Za-z][\w-]*(?::\w+)?$/.test(name)) continue;
+    if (name.length > NAME_LIMIT || !/^[A-Za-z][\w-]*(?::\w+)?$/.test(name)) continue;
     const declaration = readCatalogueFile(join(folder, catalogueFileName(name)));
     // file systems may ignore case, the names do not
     if (declaration?.name === name) return { declaration, typed };
