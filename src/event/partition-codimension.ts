@@ -202,3 +202,13 @@ export function galinCodimension(type: SpectrumType): number {
   for (const m of even) for (const t of pairs) twice += 4 * Math.min(m, t);
   return twice / 2;
 }
+
+/** Parameters that a Hermitian matrix over R, C or H (β = 1, 2, 4) needs for an r-fold zero: r + β r (r - 1)/2 (von Neumann & Wigner 1929). */
+export function corankCodimension(beta: 1 | 2 | 4, r: number): number {
+  return r + (beta * r * (r - 1)) / 2;
+}
+
+/** The same for an r-fold eigenvalue at a place that is free. */
+export function coincidenceCodimension(beta: 1 | 2 | 4, r: number): number {
+  return corankCodimension(beta, r) - 1;
+}
