@@ -47,6 +47,8 @@ const EXCESS: Readonly<Record<ClassNumber, readonly [number, number]>> = {
   10: [-1, 2],
 };
 
+const DOUBLED: ReadonlySet<ClassNumber> = new Set([5, 8, 10]);
+
 function validPartition(parts: readonly number[]): number[] {
   for (const p of parts)
     if (!Number.isSafeInteger(p) || p < 1)
@@ -142,8 +144,17 @@ export function freeParameters(kind: EigenvalueKind): 1 | 2 {
  * Orbit codimension in the class of one cluster off zero. λ is the Jordan partition of L at ONE eigenvalue λ of the cluster on the complex
  * multiplicity space of χ. What the other elements of the cluster are: in classes 1, 3, 4, 5, 9, 10 its negative and conjugates; in 2, 7, 8
  * the negative conjugate alone, so that eigenvalues iω and -iω of χ are two clusters whose orbit codimensions add; in 6 all of them again.
+ * In classes 5, 8, 10 all parts, in 3 and 9 those of real pairs, come in equal pairs. Throws InputError if λ does not occur.
  */
 export function clusterOrbitCodimension(classNumber: ClassNumber, kind: EigenvalueKind, parts: readonly number[]): number {
+  // a quaternionic structure or an invariant skew form on the eigenspace doubles every block
+  if (DOUBLED.has(classNumber) || (kind === 'real' && FAMILY[classNumber] === 'so*'))
+    for (const p of new Set(parts))
+      if (parts.filter((q) => q === p).length % 2 === 1)
+        throw new InputError(`the blocks ${parts.join(', ')} do not occur off zero in class ${classNumber}`, {
+          value: parts.join(', '),
+          expected: 'each part an even number of times',
+        });
   const self = squares(parts);
   const r = sizeOf(parts);
   let copies: number;
