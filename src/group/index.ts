@@ -1,4 +1,5 @@
-/** Finite groups as permutations: closure, classes, characters, real irreducibles, subgroups. */
+/** Finite groups as permutations: the catalogue, closure, classes, characters, real irreducibles, subgroups. */
+export * from './catalogue.ts';
 export * from './characters.ts';
 export * from './closure.ts';
 export * from './decompose.ts';

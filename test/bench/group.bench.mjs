@@ -20,9 +20,9 @@ function orbit(seeds, maps) {
     }
     return numbers.get(key);
   };
-  seeds.forEach(enter);
+  for (const x of seeds) enter(x);
   const images = maps.map(() => []);
-  for (let i = 0; i < points.length; i++) maps.forEach((f, s) => images[s].push(enter(f(points[i]))));
+  for (let i = 0; i < points.length; i++) for (const [s, f] of maps.entries()) images[s].push(enter(f(points[i])));
   return images.map((p) => Int32Array.from(p));
 }
 

@@ -28,9 +28,9 @@ export function orbit<P>(seeds: readonly P[], maps: readonly ((x: P) => P)[]): G
     }
     return i;
   };
-  seeds.forEach(enter);
+  for (const x of seeds) enter(x);
   const images: number[][] = maps.map(() => []);
-  for (let i = 0; i < points.length; i++) maps.forEach((f, s) => images[s]!.push(enter(f(points[i]!))));
+  for (let i = 0; i < points.length; i++) for (const [s, f] of maps.entries()) images[s]!.push(enter(f(points[i]!)));
   return { degree: points.length, generators: images.map((p) => Int32Array.from(p)) };
 }
 
