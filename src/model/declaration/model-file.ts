@@ -82,7 +82,8 @@ function degreesOf(energy: EnergyDeclaration): { readonly n: number; readonly wh
 function phaseOf(
   top: YamlMap,
   energy: EnergyDeclaration,
-  notCoordinates: ReadonlySet<string>,
+  parameters: ReadonlySet<string>,
+  define: ReadonlyMap<string, string>,
 ): { coordinates: string[]; momenta: string[] } {
   const [first, second] = [top.entries.get('coordinates'), top.entries.get('momenta')];
   const degrees = degreesOf(energy);
@@ -90,8 +91,9 @@ function phaseOf(
     if (second !== undefined)
       throw refuse(second, 'momenta are given without coordinates', 'coordinates in the same order', 'add coordinates');
     if (degrees !== undefined) return numberedNames(degrees.n);
-    const found = energy.kind === 'hamiltonian' || energy.kind === 'quadratic' ? [...namesIn(energy.text)] : [];
-    const pairs = pairedNames(found.filter((name) => !notCoordinates.has(name)));
+    const texts = energy.kind === 'hamiltonian' || energy.kind === 'quadratic' ? [energy.text, ...define.values()] : [];
+    const found = texts.flatMap((text) => [...namesIn(text)]);
+    const pairs = pairedNames(found.filter((name) => !parameters.has(name) && !define.has(name)));
     if (pairs.coordinates.length === 0)
       throw refuse(top, 'The model has no coordinates', 'coordinates: [q1, …] and momenta: [p1, …]', 'add coordinates');
     return pairs;
@@ -154,9 +156,10 @@ function rangesOf(node: YamlNode | undefined): Map<string, RangeDeclaration> {
 
 /** Text of a model file to a draft; `folder` is where relative paths start. Throws InputError. */
 export function draftFromText(text: string, source: string, folder: string): Draft {
-  const root = readYaml(text, source);
+  const label = source === '-' ? 'standard input' : source;
+  const root = readYaml(text, label);
   if (root.kind !== 'map')
-    throw refuse(root, `${source} is not a model: it has no keys`, 'a mapping with hamiltonian, coordinates and so on');
+    throw refuse(root, `${label} is not a model: it has no keys`, 'a mapping with hamiltonian, coordinates and so on');
   const top = root;
   assertKeys(top, MODEL_KEYS);
   const { entries } = top;
@@ -166,7 +169,7 @@ export function draftFromText(text: string, source: string, folder: string): Dra
   const { values: parameters, empty } = parametersOf(get('parameters'));
   const vary = get('vary') === undefined ? [] : namesOf(get('vary')!);
   const define = get('define') === undefined ? new Map<string, string>() : expressionMap(get('define')!, 'names');
-  const { coordinates, momenta } = phaseOf(top, energy, new Set([...parameters.keys(), ...empty, ...vary, ...define.keys()]));
+  const { coordinates, momenta } = phaseOf(top, energy, new Set([...parameters.keys(), ...empty, ...vary]), define);
   const phase = { names: [...coordinates, ...momenta], kind: 'a coordinate or momentum' };
 
   const symplectic = get('symplectic');
@@ -183,7 +186,7 @@ export function draftFromText(text: string, source: string, folder: string): Dra
   return {
     source,
     folder,
-    title: title === undefined ? source : asText(title, 'a text').text,
+    title: title === undefined ? label : asText(title, 'a text').text,
     coordinates,
     momenta,
     ...(symplectic === undefined ? {} : { form: squareTableOf(symplectic, [2 * coordinates.length], 'coordinates, then momenta') }),
