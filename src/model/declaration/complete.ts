@@ -11,9 +11,14 @@ export type Draft = Omit<Declaration, 'unset' | 'parameterCount'> & {
   readonly parameterCount?: number;
 };
 
+/** How a source is called in messages. */
+export function sourceLabel(source: string): string {
+  return source === '-' ? 'standard input' : source;
+}
+
 function clash(draft: Draft, name: string, first: string, second: string): InputError {
   return new InputError(`${name} is both ${first} and ${second}.`, {
-    file: draft.source,
+    file: sourceLabel(draft.source),
     value: name,
     expected: 'one meaning for each name',
     next: 'rename one of them',
@@ -59,7 +64,7 @@ export function complete(draft: Draft): Declaration {
           : `There is no parameter ${name}.`;
       const options = draft.source === 'options';
       throw new InputError(`${what}${didYouMean(name, known)}`, {
-        file: draft.source,
+        file: sourceLabel(draft.source),
         key: options ? `--${key}` : key,
         value: name,
         expected: known.size === 0 ? 'a parameter; the model has none' : `one of ${listed(known)}`,

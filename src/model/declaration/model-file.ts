@@ -2,7 +2,7 @@
 import { dirname } from 'node:path';
 import { InputError } from '../../errors/index.ts';
 import { namesMatrixFile } from '../matrix-file/index.ts';
-import { complete, type Draft } from './complete.ts';
+import { complete, type Draft, sourceLabel } from './complete.ts';
 import type { Declaration, EnergyDeclaration, RangeDeclaration } from './declaration.ts';
 import { asList, asMap, assertKeys, assertName, asText, expressionMap, expressionOf, integerOf, namesOf, squareTableOf } from './keys.ts';
 import { matrixOf } from './matrix-value.ts';
@@ -10,7 +10,7 @@ import { mechanicalOf } from './mechanical.ts';
 import { momentumOf, namesIn, numberedNames, pairedNames } from './names.ts';
 import { networkOf } from './network.ts';
 import { symmetryOf } from './symmetry.ts';
-import { MODEL_BYTES, readTextFile } from './text-file.ts';
+import { assertPlainText, MODEL_BYTES, readTextFile } from './text-file.ts';
 import { readYaml, refuse, type YamlMap, type YamlNode } from './yaml-reader.ts';
 
 /** The keys of a model file, in the order of the documentation. */
@@ -156,7 +156,8 @@ function rangesOf(node: YamlNode | undefined): Map<string, RangeDeclaration> {
 
 /** Text of a model file to a draft; `folder` is where relative paths start. Throws InputError. */
 export function draftFromText(text: string, source: string, folder: string): Draft {
-  const label = source === '-' ? 'standard input' : source;
+  const label = sourceLabel(source);
+  assertPlainText(text, label, MODEL_BYTES);
   const root = readYaml(text, label);
   if (root.kind !== 'map')
     throw refuse(root, `${label} is not a model: it has no keys`, 'a mapping with hamiltonian, coordinates and so on');

@@ -2,6 +2,7 @@
  * Options of the command line to a declaration: alone, or over a model file. The options arrive in the order in
  * which they were typed, because `--action` applies to the `--on` after it.
  */
+import { dirname } from 'node:path';
 import { UsageError } from '../../errors/index.ts';
 import { namesMatrixFile } from '../matrix-file/index.ts';
 import { complete, type Draft } from './complete.ts';
@@ -429,6 +430,9 @@ export function declare(model: ModelSource, uses: readonly OptionUse[]): Declara
       `leave out the file, or write it into the file`,
     );
   }
-  const draft = model.text === undefined ? draftFromFile(model.path!) : draftFromText(model.text, model.path ?? '-', '.');
+  const draft =
+    model.text === undefined
+      ? draftFromFile(model.path!)
+      : draftFromText(model.text, model.path ?? '-', model.path === undefined ? '.' : dirname(model.path));
   return complete(overlaid(draft, settings));
 }

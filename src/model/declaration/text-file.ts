@@ -57,6 +57,19 @@ export function decodeText(bytes: Uint8Array, file: string): string {
   }
 }
 
+/** Refuses text from elsewhere (standard input) that is too long or is not plain text. Throws InputError. */
+export function assertPlainText(text: string, file: string, limit: number): void {
+  if (text.length > limit) {
+    throw new InputError(`${file} is larger than ${limit / 2 ** 20} MB.`, {
+      file,
+      expected: `at most ${limit / 2 ** 20} MB`,
+      next: 'put large matrices into files of their own',
+    });
+  }
+  if (/[\0\uFFFD]/.test(text))
+    throw new InputError(`${file} is not plain text in UTF-8.`, { file, expected: 'text in UTF-8', next: 'send a model in YAML or JSON' });
+}
+
 /** The text of a file. Throws InputError when it is missing, a folder, unreadable, larger than `limit` bytes or not text. */
 export function readTextFile(path: string, limit: number, key?: string): string {
   if (path.includes('\0'))
