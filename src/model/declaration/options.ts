@@ -6,19 +6,16 @@ import { dirname } from 'node:path';
 import { UsageError } from '../../errors/index.ts';
 import { namesMatrixFile } from '../matrix-file/index.ts';
 import { complete, type Draft } from './complete.ts';
-import type { Declaration, EnergyDeclaration, GroupDeclaration, RangeDeclaration, SiteDeclaration } from './declaration.ts';
-import { isName } from './keys.ts';
+import type { Declaration, EnergyDeclaration, GroupDeclaration, SiteDeclaration } from './declaration.ts';
 import { readMatrixFile } from './matrix-value.ts';
 import { draftFromFile, draftFromText } from './model-file.ts';
 import { momentumOf, namesIn, numberedNames, pairedNames } from './names.ts';
 import { didYouMean, listed } from './nearest.ts';
+import { type Settings, settingsOf } from './option-settings.ts';
+import { all, nameList, type OptionUse, single, splitList, usage } from './option-values.ts';
 import { usedNames } from './texts.ts';
 
-/** One use of an option, without the dashes; `value` is '' for flags. */
-export interface OptionUse {
-  readonly name: string;
-  readonly value: string;
-}
+export type { OptionUse } from './option-values.ts';
 
 /** Where the model comes from: a path, or text that the caller has read (standard input). */
 export interface ModelSource {
@@ -43,155 +40,6 @@ export const SETTING_OPTIONS = [
   'floating',
   'neutral',
 ] as const;
-
-function usage(option: string, value: string, message: string, expected: string, next: string): UsageError {
-  return new UsageError(message, { key: `--${option}`, value: value.length > 200 ? `${value.slice(0, 200)}…` : value, expected, next });
-}
-
-/** Splits at commas outside brackets. */
-function splitList(text: string): string[] {
-  const parts: string[] = [];
-  let depth = 0;
-  let start = 0;
-  for (let k = 0; k <= text.length; k++) {
-    const c = text[k];
-    if (c === '(' || c === '[') depth++;
-    else if (c === ')' || c === ']') depth--;
-    else if (c === undefined || (c === ',' && depth <= 0)) {
-      parts.push(text.slice(start, k).trim());
-      start = k + 1;
-    }
-  }
-  return parts;
-}
-
-function nameList(option: string, value: string): string[] {
-  const names = splitList(value);
-  for (const name of names) {
-    if (!isName(name))
-      throw usage(
-        option,
-        value,
-        name === '' ? `--${option} has an empty name.` : `${name} is not a name.`,
-        'names separated by commas',
-        `write --${option} q1,q2`,
-      );
-  }
-  return names;
-}
-
-function assignment(option: string, part: string, example: string): [string, string] {
-  const at = part.indexOf('=');
-  const name = part.slice(0, Math.max(0, at)).trim();
-  const text = part.slice(at + 1).trim();
-  if (at < 0 || text === '' || !isName(name))
-    throw usage(option, part, `--${option} needs NAME=VALUE.`, 'a name, an equals sign, an expression', `write --${option} ${example}`);
-  return [name, text];
-}
-
-function count(option: string, value: string, least: number): number {
-  if (!/^\d{1,9}$/.test(value) || Number(value) < least)
-    throw usage(
-      option,
-      value,
-      `--${option} needs an integer not below ${least}.`,
-      `an integer not below ${least}`,
-      `write --${option} ${Math.max(least, 4)}`,
-    );
-  return Number(value);
-}
-
-function rangeOf(value: string): [string, RangeDeclaration] {
-  const [name, text] = assignment('range', value, 'mu=-1:1');
-  const parts = text.split(':').map((part) => part.trim());
-  if (parts.length < 2 || parts.length > 3 || parts.includes(''))
-    throw usage(
-      'range',
-      value,
-      '--range needs NAME=FROM:TO or NAME=FROM:TO:STEPS.',
-      'two ends and perhaps a number of steps',
-      'write --range mu=-1:1:100',
-    );
-  const [from, to, steps] = parts;
-  return [name, { from: from!, to: to!, ...(steps === undefined ? {} : { steps: count('range', steps, 1) }) }];
-}
-
-/** The last value of an option that may be given once. */
-function single(uses: readonly OptionUse[], name: string): string | undefined {
-  const found = uses.filter((use) => use.name === name);
-  if (found.length > 1) throw usage(name, found[1]!.value, `--${name} is given twice.`, 'it once', 'remove one of them');
-  return found[0]?.value;
-}
-
-function all(uses: readonly OptionUse[], name: string): string[] {
-  return uses.filter((use) => use.name === name).map((use) => use.value);
-}
-
-/** What the setting options say. */
-interface Settings {
-  readonly values: ReadonlyMap<string, string>;
-  readonly vary: readonly string[] | undefined;
-  readonly define: ReadonlyMap<string, string>;
-  readonly range: ReadonlyMap<string, RangeDeclaration>;
-  readonly rest: Partial<Pick<Declaration, 'degree' | 'codimension' | 'orderLimit' | 'tolerance' | 'parameterCount'>> & {
-    timeReversal?: true;
-    numbers?: 'floating';
-    neutralFind?: true;
-  };
-}
-
-function settingsOf(uses: readonly OptionUse[]): Settings {
-  const values = new Map<string, string>();
-  for (const value of all(uses, 'set')) {
-    for (const part of splitList(value)) {
-      const [name, text] = assignment('set', part, 'mu=0');
-      if (values.has(name)) throw usage('set', part, `${name} is set twice.`, 'one value for each parameter', 'remove one of them');
-      values.set(name, text);
-    }
-  }
-  const define = new Map<string, string>();
-  for (const value of all(uses, 'define')) {
-    const [name, text] = assignment('define', value, 'd=q1-q2');
-    if (define.has(name)) throw usage('define', value, `${name} is defined twice.`, 'one definition for each name', 'remove one of them');
-    define.set(name, text);
-  }
-  const varied = all(uses, 'vary');
-  const range = new Map<string, RangeDeclaration>();
-  for (const value of all(uses, 'range')) range.set(...rangeOf(value));
-  const neutral = single(uses, 'neutral');
-  if (neutral !== undefined && neutral !== 'find')
-    throw usage('neutral', neutral, '--neutral knows one value.', 'find', 'write --neutral find, or declare the fields in a model file');
-  const tolerance = single(uses, 'tolerance');
-  if (tolerance !== undefined && (tolerance.trim() === '' || !(Number(tolerance) > 0 && Number.isFinite(Number(tolerance))))) {
-    throw usage('tolerance', tolerance, '--tolerance needs a positive number.', 'a positive number', 'write --tolerance 1e-9');
-  }
-  const number = (name: string, least: number): number | undefined => {
-    const value = single(uses, name);
-    return value === undefined ? undefined : count(name, value, least);
-  };
-  const [degree, codimension, orderLimit, parameterCount] = [
-    number('degree', 1),
-    number('codimension', 0),
-    number('order-limit', 1),
-    number('parameters', 0),
-  ];
-  return {
-    values,
-    vary: varied.length === 0 ? undefined : [...new Set(varied.flatMap((value) => nameList('vary', value)))],
-    define,
-    range,
-    rest: {
-      ...(degree === undefined ? {} : { degree }),
-      ...(codimension === undefined ? {} : { codimension }),
-      ...(orderLimit === undefined ? {} : { orderLimit }),
-      ...(parameterCount === undefined ? {} : { parameterCount }),
-      ...(tolerance === undefined ? {} : { tolerance }),
-      ...(uses.some(({ name }) => name === 'time-reversal') ? { timeReversal: true as const } : {}),
-      ...(uses.some(({ name }) => name === 'floating') ? { numbers: 'floating' as const } : {}),
-      ...(neutral === 'find' ? { neutralFind: true as const } : {}),
-    },
-  };
-}
 
 /** The lists of `--on`, each with the `--action` typed before it. */
 function sitesOf(uses: readonly OptionUse[]): SiteDeclaration[] {
