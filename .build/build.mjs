@@ -1,29 +1,32 @@
-// Builds the library with tsc and the command-line entry with esbuild.
+// Builds the library with tsc, the command line with esbuild, and the code cache of the command line.
 import { spawnSync } from 'node:child_process';
-import { chmodSync, rmSync, writeFileSync } from 'node:fs';
+import { chmodSync, rmSync } from 'node:fs';
 import { build } from 'esbuild';
-import { bundleGrammar } from './grammar.mjs';
 
 const root = new URL('..', import.meta.url).pathname;
+const node = (...words) => spawnSync(process.execPath, words, { stdio: ['ignore', 'ignore', 'inherit'], cwd: root }).status;
+
 rmSync(`${root}dist`, { recursive: true, force: true });
 const tsc = spawnSync(process.execPath, [`${root}node_modules/typescript/bin/tsc`, '-p', `${root}tsconfig.json`], { stdio: 'inherit' });
 if (tsc.status !== 0) process.exit(tsc.status ?? 1);
-// the library gets the parser as one small file: importing the package whole takes about a second
-writeFileSync(`${root}dist/model/expression/grammar.js`, await bundleGrammar());
-rmSync(`${root}dist/model/expression/grammar.js.map`, { force: true });
+
+// The command line is bundled; what tsc made of it is no part of the library.
+rmSync(`${root}dist/cli`, { recursive: true, force: true });
+const common = { bundle: true, platform: 'node', target: 'node20', logLevel: 'warning' };
 await build({
+  ...common,
   entryPoints: [`${root}src/cli/main.ts`],
-  outdir: `${root}dist/cli`,
-  bundle: true,
-  splitting: true,
-  format: 'esm',
-  platform: 'node',
-  target: 'node20',
-  chunkNames: 'chunks/[name]-[hash]',
-  sourcemap: false,
-  minify: false,
-  allowOverwrite: true,
-  logLevel: 'warning',
-  banner: { js: "import { createRequire as __createRequire } from 'node:module'; const require = __createRequire(import.meta.url);" },
+  outfile: `${root}dist/cli/program.cjs`,
+  format: 'cjs',
+  // Loaded where they are used, from node_modules. No import() is left in the bundle, so that it can run as a script.
+  external: ['katex', 'ml-matrix', 'nerdamer', 'nerdamer/*'],
+  supported: { 'dynamic-import': false },
+  define: { 'import.meta.url': '__url' },
+  banner: { js: '(function (require, __url) { const module = { exports: {} };' },
+  footer: { js: 'return module.exports; })' },
 });
+await build({ ...common, entryPoints: [`${root}src/cli/start.ts`], outfile: `${root}dist/cli/main.js`, format: 'esm' });
 chmodSync(`${root}dist/cli/main.js`, 0o755);
+
+const cache = node(`${root}.build/code-cache.mjs`);
+if (cache !== 0) process.exit(cache ?? 1);

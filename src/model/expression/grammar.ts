@@ -1,11 +1,13 @@
+/*! The bundled form of this module contains parts of mathjs (Jos de Jong and contributors, Apache License 2.0). */
 /**
  * The tokenizer and the precedence rules of mathjs, and nothing else of it: `createParse` and five node
  * factories, with stand-ins for everything that parsing never calls. No evaluator is in the program.
  * A literal keeps its text, so that numbers can be read exactly. The scan in `scan.ts` comes first and
  * leaves only what these five nodes can express.
  *
- * The package as a whole loads some 1 200 files (about a second); the build and the test runner bundle
- * this one module (`.build/grammar.mjs`), which then loads in about 15 ms.
+ * The package as a whole loads some 1 200 files; the build and the test runner bundle this one module
+ * (`.build/grammar.mjs`). Load and first parse, five runs on Node 20.20: whole package 620 to 1 000 ms, its single
+ * browser file 150 to 250 ms, this module bundled 6 to 9 ms.
  */
 import {
   createConstantNode,

@@ -8,6 +8,6 @@ export * from './nearest.ts';
 export * from './numeric.ts';
 export * from './parser.ts';
 export { isName, LENGTH_LIMIT, NESTING_LIMIT, type Where } from './scan.ts';
-export { FieldTooSmall, Transcendental, withField } from './signals.ts';
+export { FieldTooSmall, located, Transcendental, withField } from './signals.ts';
 export * from './taylor.ts';
 export * from './writing.ts';

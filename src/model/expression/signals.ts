@@ -1,6 +1,7 @@
 /** What an exact evaluation can run into: a larger field, a number that is in none, a point outside the domain. */
 import { InputError, LimitError } from '../../errors/index.ts';
 import { type FieldDemand, RealField } from '../../field/index.ts';
+import type { Where } from './scan.ts';
 
 /** A square root, cosine or sine needs a larger field; `withField` catches it, enlarges and repeats. */
 export class FieldTooSmall extends Error {
@@ -43,6 +44,16 @@ function enlarge(field: RealField, demand: FieldDemand): RealField {
   } catch (error) {
     if (!(error instanceof RangeError)) throw error;
     throw new LimitError(error.message, { expected: 'fewer different square roots and angles', next: 'use floating numbers' });
+  }
+}
+
+/** Runs an evaluation and says in its InputErrors where the expression stands, unless they know better. */
+export function located<R>(where: Where, run: () => R): R {
+  try {
+    return run();
+  } catch (error) {
+    if (error instanceof InputError) throw new InputError(error.message, { ...where, ...error.culprit });
+    throw error;
   }
 }
 

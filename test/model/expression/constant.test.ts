@@ -6,6 +6,7 @@ import {
   compileNumeric,
   exactValue,
   FieldTooSmall,
+  located,
   parseExpression,
   primePowers,
   Transcendental,
@@ -78,6 +79,13 @@ describe('exact values', () => {
     expect(field.format(exactValue(parseExpression('c^2 + c*__proto__'), values, field))).toBe('3 + sqrt(3)');
     expect(() => exactValue(parseExpression('cc'), values, field)).toThrow("'cc' has no value");
     expect(() => exactValue(parseExpression('constructor'), values, field)).toThrow(InputError);
+  });
+  it('errors say where the expression stands', () => {
+    const attempt = () => located({ file: 'm.yaml', key: 'equilibrium.q1' }, () => evaluate('1/(2-2)'));
+    expect(attempt).toThrow(
+      expect.objectContaining({ culprit: expect.objectContaining({ file: 'm.yaml', key: 'equilibrium.q1', value: '1/(2 - 2)' }) }),
+    );
+    expect(() => located({}, () => evaluate('pi'))).toThrow(Transcendental);
   });
   it('the field grows only as far as needed, from where it started', () => {
     expect(() => exactValue(parseExpression('sqrt(2)'), undefined, RealField.of())).toThrow(FieldTooSmall);
