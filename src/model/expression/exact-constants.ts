@@ -6,22 +6,21 @@
  * sines carry the relation that rewrites their powers.
  */
 import { LimitError } from '../../errors/index.ts';
-import { type Algebraic, isqrt, type Rational, type RealField, rational, rationals, ratioToNumber } from '../../field/index.ts';
-import { build, column, fromColumns, solve } from '../../linear/index.ts';
-import { PolynomialRing, type RationalFunction, RationalFunctionField } from '../../polynomial/index.ts';
+import { type Algebraic, type Rational, type RealField, rational, rationals } from '../../field/index.ts';
+import { PolynomialRing, RationalFunctionField } from '../../polynomial/index.ts';
 import type { FunctionName } from './ast.ts';
 import type { Constants } from './constants.ts';
+import { bits, logOf, primePowers } from './prime-powers.ts';
+import { type Relation, reduceByRelation, type Value } from './relation.ts';
 import { outside } from './signals.ts';
 import { cosine, sine, squareRoot } from './square-root.ts';
-
-export type Value = RationalFunction<Algebraic>;
 
 interface Atom {
   readonly name: string;
   /** Its value in double precision; undefined if a kept parameter is in it. */
   readonly approximate: number | undefined;
   /** name^power = value. */
-  readonly relation?: { readonly power: number; readonly value: Value };
+  readonly relation?: Relation;
   /** name = exp(argument), log(argument). */
   readonly exponential?: Value;
   readonly logarithm?: Value;
@@ -32,8 +31,6 @@ const BIT_LIMIT = 1 << 20;
 const DEGREE_LIMIT = 1 << 12;
 /** Denominators of pi up to which cosines are looked for in a field. */
 const ANGLE_LIMIT = 5000n;
-
-const bits = (n: bigint) => n.toString(16).length * 4;
 
 export class ExactConstants implements Constants<Value> {
   readonly numbers: RealField;
@@ -112,50 +109,10 @@ export class ExactConstants implements Constants<Value> {
   simplify(v: Value): Value {
     if (this.#atoms.size === 0 || this.#field.isConstant(v)) return v;
     let out = v;
-    for (const atom of [...this.#atoms.values()].reverse()) if (atom.relation !== undefined) out = this.#reduceBy(atom, out);
+    for (const atom of [...this.#atoms.values()].reverse())
+      if (atom.relation !== undefined) out = reduceByRelation(this.#field, atom.name, atom.relation, out);
     return out;
   }
-  #reduceBy(atom: Atom, v: Value): Value {
-    const f = this.#field;
-    const { ring } = f;
-    const { power, value } = atom.relation!;
-    const i = ring.indexOf(atom.name);
-    const below = ring.degreeIn(v.denominator, i);
-    if (ring.degreeIn(v.numerator, i) < power && below <= 0) return v;
-    const lowered = (p: Value['numerator']): Value[] => {
-      const out = new Array<Value>(power).fill(f.zero);
-      ring.coefficientsIn(p, i).forEach((c, e) => {
-        let t = f.fromPolynomial(c);
-        for (let k = Math.floor(e / power); k > 0; k--) t = f.mul(t, value);
-        out[e % power] = f.add(out[e % power]!, t);
-      });
-      return out;
-    };
-    const root = f.symbol(i);
-    const joined = (list: readonly Value[]) => list.reduceRight((sum, c) => f.add(f.mul(sum, root), c), f.zero);
-    const top = lowered(v.numerator);
-    if (below <= 0) return f.div(joined(top), f.fromPolynomial(v.denominator));
-    const bottom = lowered(v.denominator);
-    const used = bottom.flatMap((c, e) => (f.isZero(c) ? [] : [e]));
-    if (used.length === 1) {
-      const e = used[0]!;
-      if (e === 0) return f.div(joined(top), bottom[0]!);
-      // c a^e = c value / a^(power - e)
-      const raised = f.mul(joined(top), power - e === 0 ? f.one : f.fromPolynomial(ring.power(ring.variable(i), power - e)));
-      return this.#reduceBy(atom, f.div(raised, f.mul(bottom[e]!, value)));
-    }
-    // top/bottom modulo a^power = value is a linear system for its coefficients; small ones only
-    if (power === 2 || (power <= 6 && f.isConstant(value))) {
-      const product = build(f, power, power, (row, j) => {
-        const c = bottom[(row - j + power) % power]!;
-        return row < j ? f.mul(c, value) : c;
-      });
-      const solved = solve(product, fromColumns(f, [top]));
-      if (solved !== undefined) return joined(column(solved, 0));
-    }
-    return f.div(joined(top), joined(bottom));
-  }
-
   #integerPower(v: Value, n: bigint): Value {
     const f = this.#field;
     if (n === 0n) return f.one;
@@ -405,48 +362,4 @@ function finiteOr(x: number, text: string): number {
   if (!Number.isFinite(x))
     throw new LimitError('a value exceeds the range of numbers', { value: text.slice(0, 80), next: 'use smaller arguments' });
   return x;
-}
-
-/** log p, also for p beyond the range of doubles. */
-function logOf(p: bigint): number {
-  const shift = Math.max(0, bits(p) - 64);
-  return Math.log(ratioToNumber(p >> BigInt(shift), 1n)) + shift * Math.LN2;
-}
-
-/** Trial division up to these bounds, for numbers below and above 2^53; what remains counts as one prime (or a square). */
-const SMALL_BOUND = 1_000_000;
-const LARGE_BOUND = 20_000;
-
-/** n >= 1 as a product of powers of pairwise coprime bases, primes where they are small. */
-export function primePowers(n: bigint): Array<readonly [base: bigint, exponent: number]> {
-  const out: Array<readonly [bigint, number]> = [];
-  for (let p = 2; n > 1n; p += p === 2 ? 1 : 2) {
-    if (n < 9007199254740992n) {
-      let m = Number(n);
-      for (; p * p <= m && p < SMALL_BOUND; p += p === 2 ? 1 : 2) {
-        let e = 0;
-        while (m % p === 0) {
-          m /= p;
-          e++;
-        }
-        if (e > 0) out.push([BigInt(p), e]);
-      }
-      n = BigInt(m);
-      break;
-    }
-    if (p > LARGE_BOUND) break;
-    const b = BigInt(p);
-    let e = 0;
-    while (n % b === 0n) {
-      n /= b;
-      e++;
-    }
-    if (e > 0) out.push([b, e]);
-  }
-  if (n > 1n) {
-    const root = isqrt(n);
-    if (root * root === n) out.push([root, 2]);
-    else out.push([n, 1]);
-  }
-  return out;
 }

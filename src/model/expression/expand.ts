@@ -3,9 +3,10 @@ import { InputError } from '../../errors/index.ts';
 import { type Algebraic, type RealField, rational, rationals } from '../../field/index.ts';
 import { PolynomialRing } from '../../polynomial/index.ts';
 import { type Expression, fold } from './ast.ts';
-import { ExactConstants, type Value } from './exact-constants.ts';
+import { ExactConstants } from './exact-constants.ts';
 import { type Jet, JetAlgebra } from './jet.ts';
 import { nearest } from './nearest.ts';
+import type { Value } from './relation.ts';
 import { Transcendental } from './signals.ts';
 import { formatExpression } from './writing.ts';
 

@@ -7,6 +7,8 @@ export * from './jet.ts';
 export * from './nearest.ts';
 export * from './numeric.ts';
 export * from './parser.ts';
+export * from './prime-powers.ts';
+export type { Value } from './relation.ts';
 export { isName, LENGTH_LIMIT, NESTING_LIMIT, type Where } from './scan.ts';
 export { FieldTooSmall, located, Transcendental, withField } from './signals.ts';
 export * from './taylor.ts';

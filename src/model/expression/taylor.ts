@@ -6,11 +6,12 @@ import { type Algebraic, RealField } from '../../field/index.ts';
 import { type Polynomial, PolynomialRing } from '../../polynomial/index.ts';
 import { type Expression, resolveDefinitions } from './ast.ts';
 import { type Constants, doubleConstants, doubles } from './constants.ts';
-import { ExactConstants, type Value } from './exact-constants.ts';
+import { ExactConstants } from './exact-constants.ts';
 import { expandExpression, unknownName } from './expand.ts';
 import { type Jet, JetAlgebra } from './jet.ts';
 import { compileNumeric } from './numeric.ts';
 import { parseExpression } from './parser.ts';
+import type { Value } from './relation.ts';
 import { withField } from './signals.ts';
 
 export interface TaylorRequest {
