@@ -50,8 +50,10 @@ export interface ChainArithmetic<M> {
   split(s: M, level: number): { readonly kernel: M; preimage(y: M): M };
   /** Columns k c, c a basis of the kernel of the skew matrix kᵀ w k. */
   radical(k: M, w: M, level: number): M;
-  /** Signature of a symmetric matrix: b on the radical, or ω(I·, ·) on the kernel. */
-  signature(form: M, kind: 'chain' | 'hermitian', level: number): Inertia;
+  /** Signature of ω(I·, ·) on the kernel. */
+  hermitian(form: M, level: number): Inertia;
+  /** Signature of b on the radical r: that of s on the columns x with s x = wᵀ r. */
+  chain(s: M, x: M, w: M, level: number): Inertia;
   /** Columns that together with r ⊂ k^ω form a basis of k^ω = {x : kᵀ w x = 0}. */
   reduced(k: M, r: M, w: M): M;
   /** The map i induced on the span of `basis` modulo that of r. */
@@ -67,7 +69,11 @@ export function chainBlocks<M>(s: M, w: M, i: M | undefined, a: ChainArithmetic<
   const signed = (size: number, count: number, positive: number, negative: number, turned: boolean) =>
     blocks.unshift({ size, count, positive: turned ? negative : positive, negative: turned ? positive : negative });
   let expected: number | undefined;
-  for (let level = 0; a.columns(s) > 0; level++) {
+  for (let level = 0; ; level++) {
+    if (a.columns(s) === 0) {
+      if (expected !== undefined && expected > 0) a.inconsistent(level, 0, expected);
+      break;
+    }
     const { kernel: k, preimage } = a.split(s, level);
     const dimension = a.columns(k);
     if (expected !== undefined && dimension !== expected) a.inconsistent(level, dimension, expected);
@@ -76,11 +82,11 @@ export function chainBlocks<M>(s: M, w: M, i: M | undefined, a: ChainArithmetic<
     const r = a.radical(k, w, level);
     const odd = dimension - a.columns(r);
     if (odd > 0) {
-      const form = i === undefined ? undefined : a.signature(onColumns(k, a.multiply(a.transpose(i), w)), 'hermitian', level);
+      const form = i === undefined ? undefined : a.hermitian(onColumns(k, a.multiply(a.transpose(i), w)), level);
       signed(1 + 2 * level, odd, form?.positive ?? 0, form?.negative ?? 0, turned);
     }
     if (a.columns(r) === 0) break;
-    const b = a.signature(a.multiply(a.transpose(r), a.multiply(w, preimage(a.multiply(a.transpose(w), r)))), 'chain', level);
+    const b = a.chain(s, preimage(a.multiply(a.transpose(w), r)), w, level);
     if (b.positive + b.negative > 0) signed(2 + 2 * level, b.positive + b.negative, b.positive, b.negative, turned);
     expected = b.zero;
     const basis = a.reduced(k, r, w);
@@ -114,7 +120,8 @@ function exactArithmetic<T>(field: OrderedField<T>): ChainArithmetic<Matrix<T>> 
       },
     }),
     radical: (k, w) => multiply(k, kernel(congruence(k, w))),
-    signature: (form) => inertia(form, field),
+    hermitian: (form) => inertia(form, field),
+    chain: (s, x) => inertia(congruence(x, s), field),
     reduced: (k, r, w) => {
       const orthogonal = kernel(multiply(transpose(k), w));
       const all = beside(r, orthogonal);

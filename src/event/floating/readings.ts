@@ -12,7 +12,7 @@ export interface Reading {
   /** Number of the reduction, or of the step of a staircase. */
   readonly level: number;
   /**
-   * hessian: eigenvalues of S; form: singular values of ω on ker S; chain: eigenvalues of b on the radical;
+   * hessian: eigenvalues of S; form: singular values of ω on ker S; chain: eigenvalues of b, as those of S on L⁻¹R;
    * hermitian: eigenvalues of ω(I·,·) on ker S; staircase: singular values of L - λ.
    */
   readonly quantity: 'hessian' | 'form' | 'chain' | 'hermitian' | 'staircase';

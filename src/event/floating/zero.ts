@@ -58,13 +58,17 @@ export function chainRun(
   const contradict = (message: string) => {
     contradiction ??= message;
   };
-  // g: smallest nonzero eigenvalue of the present S. An error ε of S moves the kernel by at most ε/g, so ω on it is cut at tolerance/g.
-  // b has entries between 1/scale and 1/g and, in the worst case, an error ε/g²; times g, its eigenvalues are cut at the middle
-  // tolerance/√g. Of 40 random conjugates (condition 10² to 10⁴, noise 1e-10) of each type of the tests, cuts at tolerance, tolerance/√g,
-  // tolerance/g left at most 12, 2, 34 undecided; none was wrong.
-  let g = scale;
   const unit = scale > 0 ? scale : 1;
-  const loss = () => Math.max(1, unit / g);
+  // pseudo-inverse of the present S, and by how much an error of S, in units of the scale, is magnified in ω on its kernel
+  let inverse: (y: NumberMatrix) => NumberMatrix = (y) => y;
+  let spread = 1;
+  const signature = (form: NumberMatrix, kind: 'chain' | 'hermitian', level: number, size: number, cut: number) => {
+    const values = symmetricEigen(form.data, form.rows).values.map((x) => x / size);
+    readings.push(reading(level, kind, values, cut));
+    const positive = values.filter((x) => x > cut).length;
+    const negative = values.filter((x) => x < -cut).length;
+    return { positive, zero: values.length - positive - negative, negative };
+  };
   const arithmetic: ChainArithmetic<NumberMatrix> = {
     columns: (a) => a.cols,
     transpose: numberTranspose,
@@ -78,37 +82,38 @@ export function chainRun(
         tolerance,
       );
       readings.push(r);
-      g = (r.nonzero[0] ?? 1) * unit;
       const isZero = (x: number) => Math.abs(x / unit) <= tolerance;
       const indices = Array.from(values.keys());
       const kernelIndices = indices.filter((k) => isZero(values[k]!));
       const others = indices.filter((k) => !isZero(values[k]!));
       const kernel = numberBuild(m.rows, kernelIndices.length, (row, k) => numberAt(vectors, row, kernelIndices[k]!));
       const rest = numberBuild(m.rows, others.length, (row, k) => numberAt(vectors, row, others[k]!));
-      const preimage = (y: NumberMatrix) => {
+      inverse = (y: NumberMatrix) => {
         const c = numberMultiply(numberTranspose(rest), y);
         return numberMultiply(
           rest,
           numberBuild(c.rows, c.cols, (k, j) => numberAt(c, k, j) / values[others[k]!]!),
         );
       };
-      return { kernel, preimage };
+      return { kernel, preimage: inverse };
     },
     radical: (k, form, level) => {
-      const gram = numberMultiply(numberTranspose(k), numberMultiply(form, k));
-      const { values, v } = rightSingular(gram);
-      const r = reading(level, 'form', values, tolerance * loss());
+      const images = numberMultiply(form, k);
+      // an error E of S turns the kernel k by -S⁺Ek, and changes kᵀwk by at most |E| |S⁺wk|
+      spread = Math.max(1, unit * largestEntry(inverse(images)));
+      const { values, v } = rightSingular(numberMultiply(numberTranspose(k), images));
+      const r = reading(level, 'form', values, tolerance * spread);
       readings.push(r);
       if (r.nonzero.length % 2 === 1) contradict(`ω has odd rank ${r.nonzero.length} on the kernel (reduction ${level})`);
       return numberMultiply(k, numberColumns(v, r.nonzero.length, k.cols));
     },
-    signature: (form, kind, level) => {
-      const { values } = symmetricEigen(form.data, form.rows);
-      const relative = kind === 'chain' ? values.map((x) => x * g) : values;
-      const cut = tolerance * (kind === 'chain' ? Math.sqrt(loss()) : loss());
-      readings.push(reading(level, kind, relative, cut));
-      const count = (test: (x: number) => boolean) => relative.reduce((n, x) => n + (test(x) ? 1 : 0), 0);
-      return { positive: count((x) => x > cut), zero: count((x) => Math.abs(x) <= cut), negative: count((x) => x < -cut) };
+    hermitian: (form, level) => signature(form, 'hermitian', level, 1, tolerance * spread),
+    chain: (m, x, form, level) => {
+      // b is S on the columns x: on an orthonormal basis q of them it changes by |E| directly and by |E| |Sq| |S⁺wq| as the kernel turns
+      const q = orthonormalise(x);
+      const mq = numberMultiply(m, q);
+      const turn = Math.max(1, largestEntry(mq) * largestEntry(inverse(numberMultiply(form, q))));
+      return signature(numberMultiply(numberTranspose(q), mq), 'chain', level, unit, tolerance * turn);
     },
     reduced: (k, r, form) =>
       nullSpaceOfDimension(numberAbove(numberMultiply(numberTranspose(k), form), numberTranspose(r)), k.rows - k.cols - r.cols),

@@ -108,3 +108,27 @@ export function noisy(s: Exact, noise: number, random: () => number): NumberMatr
 }
 
 export const doubles = (a: Exact): NumberMatrix => toNumberMatrix(a, rationals);
+
+/**
+ * One block over the complex numbers of size j and sign ε, realified in the coordinates (real parts, imaginary parts), with I = i:
+ * L = N, ω the real part of a skew-Hermitian form on the antidiagonal, real for even and imaginary for odd sizes.
+ */
+export function hermitianBlock(size: number, sign: 1 | -1): Planted & { readonly i: Exact } {
+  const n = 2 * size;
+  const anti = (r: number, c: number) => (r + c === size - 1 ? sign * (r % 2 === 0 ? 1 : -1) : 0);
+  const w = (r: number, c: number): number => {
+    const [x, y] = [r % size, c % size];
+    const sameHalf = r < size === c < size;
+    if (size % 2 === 0) return sameHalf ? anti(x, y) : 0;
+    return sameHalf ? 0 : r < size ? anti(x, y) : -anti(x, y);
+  };
+  const s = (r: number, c: number): number => (r % size === 0 ? 0 : w(r - 1, c));
+  const i = (r: number, c: number): number => (r < size && c === r + size ? -1 : r >= size && c === r - size ? 1 : 0);
+  return { s: integers(n, n, s), w: integers(n, n, w), i: integers(n, n, i) };
+}
+
+/** Direct sum of blocks over the complex numbers. */
+export function hermitianSum(list: readonly (readonly [number, 1 | -1])[]): Planted & { readonly i: Exact } {
+  const blocks = list.map(([size, sign]) => hermitianBlock(size, sign));
+  return { ...sum(blocks), i: blocks.reduce((a, b) => directSum(a, b.i), zeroMatrix(rationals, 0, 0)) };
+}
