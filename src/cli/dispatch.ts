@@ -15,11 +15,7 @@ async function answer(invocation: Invocation, world: World): Promise<Outcome> {
     const { groupsOutcome } = await import('../study/groups-command.ts');
     return groupsOutcome(argument, invocation.orderLimit);
   }
-  if (command === 'verify') {
-    const { verifyOutcome } = await import('../study/verify.ts');
-    return verifyOutcome(await textOf(argument ?? STANDARD_INPUT, world), argument ?? STANDARD_INPUT, invocation.tolerance);
-  }
-  const [{ declare }, { runCommand }] = await Promise.all([import('../model/declaration/options.ts'), import('../study/commands.ts')]);
+  const [{ declare }, { runCommand }] = await Promise.all([import('../model/declaration/options.ts'), import('./run-command.ts')]);
   const declaration = declare(await sourceOf(argument, world), invocation.uses);
   const progress = invocation.output.quiet ? {} : { progress: world.progress };
   return runCommand(command as StudyCommand, declaration, { ...invocation.study, ...progress });
@@ -30,15 +26,6 @@ async function sourceOf(argument: string | undefined, world: World): Promise<Mod
   if (argument !== STANDARD_INPUT) return { path: argument };
   const { readAll } = await import('./standard-input.ts');
   return { text: await readAll(world.input()) };
-}
-
-async function textOf(argument: string, world: World): Promise<string> {
-  if (argument === STANDARD_INPUT) {
-    const { readAll } = await import('./standard-input.ts');
-    return readAll(world.input());
-  }
-  const { MODEL_BYTES, readTextFile } = await import('../model/declaration/text-file.ts');
-  return readTextFile(argument, MODEL_BYTES, 'RESULT');
 }
 
 async function stream(invocation: Invocation, world: World): Promise<number> {
@@ -84,12 +71,12 @@ async function batch(invocation: Invocation, world: World): Promise<number> {
   };
   const jobs = invocation.batch?.jobs ?? defaultJobs();
   if (jobs === 1) {
-    const { runCommand } = await import('../study/commands.ts');
+    const { runCommand } = await import('./run-command.ts');
     return runBatch(setup, jobs, (line) => answerLine(setup, line, runCommand), world);
   }
   const { workerPool } = await import('./worker-pool.ts');
   const pool = workerPool<{ number: number; text: string }, { json: string; status: number }>(
-    new URL('./batch-worker.js', import.meta.url),
+    new URL('./main.js', import.meta.url),
     setup,
     jobs,
   );

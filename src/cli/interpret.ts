@@ -18,7 +18,6 @@ export function interpret(command: CommandName, operands: readonly string[], typ
   const takesModel = commandRecord(command).argument?.name === 'MODEL';
   const declaring = typed.filter(({ option }) => option.model === true);
   const orderLimit = takesModel ? undefined : whole(typed, 'order-limit', 1);
-  const tolerance = takesModel ? undefined : toleranceOf(typed);
   return {
     command,
     ...(argument === undefined ? {} : { argument }),
@@ -26,7 +25,6 @@ export function interpret(command: CommandName, operands: readonly string[], typ
     study: { find: given(typed, 'find'), elliptic: given(typed, 'elliptic') },
     output: outputOptions(typed),
     ...(orderLimit === undefined ? {} : { orderLimit }),
-    ...(tolerance === undefined ? {} : { tolerance }),
     ...(command === 'batch' ? { batch: batchOptions(typed) } : {}),
   };
 }
@@ -98,14 +96,6 @@ function whole(typed: readonly Typed[], name: string, least: number): number | u
   if (entry?.value === undefined) return undefined;
   const number = /^\d{1,9}$/.test(entry.value) ? Number(entry.value) : Number.NaN;
   if (!(number >= least)) throw malformed(entry.option, entry.value, `a whole number of at least ${least}`);
-  return number;
-}
-
-function toleranceOf(typed: readonly Typed[]): number | undefined {
-  const entry = single(typed, 'tolerance');
-  if (entry?.value === undefined) return undefined;
-  const number = /^(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i.test(entry.value) ? Number(entry.value) : Number.NaN;
-  if (!(number > 0 && number < 1)) throw malformed(entry.option, entry.value, 'a number between 0 and 1');
   return number;
 }
 

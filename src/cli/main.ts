@@ -1,12 +1,14 @@
-#!/usr/bin/env node
-/** Entry of the command line: the only file that touches the streams of the process and its exit status. */
+/** Entry of the program: the only file that touches the streams of the process and its exit status. */
 import { readFileSync } from 'node:fs';
+import { isMainThread } from 'node:worker_threads';
 import { runners } from './dispatch.ts';
 import { program } from './program.ts';
 import { ClosedPipe, type World } from './world.ts';
 
 const { env } = process;
 const plain = (env.NO_COLOR ?? '') !== '' || env.TERM === 'dumb';
+
+let inputUsed = false;
 
 // The streams are touched only where they are used: each costs time at the start.
 const world: World = {
@@ -23,7 +25,10 @@ const world: World = {
     if (process.stderr.listenerCount('error') === 0) process.stderr.on('error', () => {});
     process.stderr.write(`${text}\n`);
   },
-  input: () => process.stdin,
+  input: () => {
+    inputUsed = true;
+    return process.stdin;
+  },
   get width() {
     return process.stdout.isTTY ? process.stdout.columns : undefined;
   },
@@ -40,4 +45,11 @@ const world: World = {
   trace: (env.SYMCODIM_TRACE ?? '') !== '',
 };
 
-process.exitCode = await program(process.argv.slice(2), world, runners);
+/** Settled when the command line has been carried out; a thread of a batch has none of its own. */
+export const finished: Promise<unknown> = isMainThread
+  ? program(process.argv.slice(2), world, runners).then((status) => {
+      process.exitCode = status;
+      // A producer may hold standard input open behind an error; nothing is left to be read.
+      if (inputUsed) process.stdin.destroy();
+    })
+  : import('./batch-worker.ts');

@@ -7,6 +7,8 @@ const code = (text: string): string => `\`${cell(text)}\``;
 
 /** The commands that take an option, put as briefly as they can be. */
 function where(option: OptionRecord): string {
+  const others = commands.filter((command) => command.argument?.name === 'MODEL');
+  if (others.length === option.commands.length && others.every(({ name }) => option.commands.includes(name))) return 'all with MODEL';
   const missing = commandNames.filter((name) => !option.commands.includes(name));
   if (missing.length === 0) return 'all';
   return option.commands.length > 6 ? `all but ${missing.join(', ')}` : option.commands.join(', ');

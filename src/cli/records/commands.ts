@@ -92,13 +92,6 @@ export const commands: readonly CommandRecord[] = [
     examples: ['symcodim groups', 'symcodim groups dihedral:5'],
   },
   {
-    name: 'verify',
-    argument: { name: 'RESULT', required: true, short: 'result file written by --json, or - for standard input', completion: 'file' },
-    short: 're-checks a result file by an independent route',
-    long: 'Reads a result written by --json and checks its numbers again by another route than the one that made them. Exit status 1 tells that something disagrees.',
-    examples: ['symcodim codim samples/three-resonator-ring.yaml --json > ring.json && symcodim verify ring.json'],
-  },
-  {
     name: 'batch',
     argument: { ...model, short: 'model file to which each line gives parameter values; without it each line is a model' },
     short: 'many models or parameter points as JSON lines, answers as JSON lines in order',

@@ -15,7 +15,6 @@ export const commandNames = [
   'sweep',
   'report',
   'groups',
-  'verify',
   'batch',
   'completions',
   'man',
