@@ -40,6 +40,8 @@ export interface Decision {
   readonly decided: boolean;
   /** Why not; null if decided. */
   readonly reason: string | null;
+  /** Kind of the reason: two steps contradict each other, two numbers lie too near, or the answer moves with the tolerance. */
+  readonly cause: 'contradiction' | 'gap' | 'tolerance' | null;
   readonly readings: readonly Reading[];
   /** Largest gapRatio of the readings. */
   readonly gap: number;
@@ -73,12 +75,18 @@ export function decide<B>(
   );
   const gap = worst === undefined ? 0 : gapRatio(worst);
   let reason: string | null = null;
-  if (middle.contradiction !== null) reason = middle.contradiction;
-  else if (worst !== undefined && gap > LARGEST_GAP_RATIO)
+  let cause: Decision['cause'] = null;
+  if (middle.contradiction !== null) {
+    cause = 'contradiction';
+    reason = middle.contradiction;
+  } else if (worst !== undefined && gap > LARGEST_GAP_RATIO) {
+    cause = 'gap';
     reason = `${show(worst.zero.at(-1)!)} was counted as zero and ${show(worst.nonzero[0]!)} as nonzero (${worst.quantity}, reduction ${worst.level}): their ratio ${show(gap)} is above ${show(LARGEST_GAP_RATIO)}`;
-  else if (moved !== undefined)
+  } else if (moved !== undefined) {
+    cause = 'tolerance';
     reason = `the answer is ${key(middle.answer)} at tolerance ${show(tolerance)} and ${key(moved.answer)} at ${show(moved.tolerance)}`;
-  return { decided: reason === null, reason, readings: middle.readings, gap, answer: middle.answer, others };
+  }
+  return { decided: reason === null, reason, cause, readings: middle.readings, gap, answer: middle.answer, others };
 }
 
 /** Blocks as text, e.g. `4+ 2+ 2- 1 1`; equal for equal signed blocks. `none` if there is none. */

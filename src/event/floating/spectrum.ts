@@ -18,7 +18,7 @@ import {
   numberSolve,
   numberTranspose,
 } from '../../linear/floating.ts';
-import { type ComplexNumber, hamiltonianEigenvalues, nullSpaceOfDimension } from '../../linear/spectral.ts';
+import { type ComplexNumber, hamiltonianEigenvalues, nullSpaceOfDimension, symmetricEigen } from '../../linear/spectral.ts';
 import type { SignedBlocks } from '../chain.ts';
 import type { EigenvalueKind } from '../partition-codimension.ts';
 import { blocksKey, DEFAULT_TOLERANCE, type Decision, decide, type Run } from './readings.ts';
@@ -77,23 +77,51 @@ function kreinOfBlocks(blocks: readonly SignedBlocks[]): { positive: number; neg
 }
 
 /** The recursion at iω on the realified Hermitian pair; counts over the complex numbers. */
-function imaginaryRun(p: Problem, frequency: number, tolerance: number): Run<SignedBlocks[]> {
+function imaginaryRun(p: Problem, frequency: number): (tolerance: number) => Run<SignedBlocks[]> {
   const n = p.s.rows;
   const none = numberMatrix(n, n);
   const hermitian = realified(p.s, numberScale(p.w, frequency));
+  const form = realified(p.w, none);
   const i = realified(none, numberIdentity(n));
-  const run = chainRun(hermitian, realified(p.w, none), i, Math.max(p.scale, frequency), tolerance);
-  const odd = run.answer.some((b) => b.count % 2 === 1 || b.positive % 2 === 1);
-  return {
-    answer: run.answer.map((b) => ({
-      size: b.size,
-      count: Math.floor(b.count / 2),
-      positive: Math.floor(b.positive / 2),
-      negative: Math.floor(b.negative / 2),
-    })),
-    readings: run.readings,
-    contradiction: run.contradiction ?? (odd ? 'a complex space has an odd real dimension' : null),
+  const eigen = symmetricEigen(hermitian.data, 2 * n);
+  return (tolerance) => {
+    const run = chainRun(hermitian, form, i, Math.max(p.scale, frequency), tolerance, eigen);
+    const odd = run.answer.some((b) => b.count % 2 === 1 || b.positive % 2 === 1);
+    return {
+      answer: run.answer.map((b) => ({
+        size: b.size,
+        count: Math.floor(b.count / 2),
+        positive: Math.floor(b.positive / 2),
+        negative: Math.floor(b.negative / 2),
+      })),
+      readings: run.readings,
+      contradiction: run.contradiction ?? (odd ? 'a complex space has an odd real dimension' : null),
+    };
   };
+}
+
+/**
+ * An upper bound, by inverse iteration, of the smallest singular value of L - μ, usually within a factor 2. Where it is a thousand
+ * tolerances there is no eigenvalue at μ, and no need of a decomposition that costs a hundred times as much.
+ */
+function distanceToSpectrum(p: Problem, value: ComplexNumber): number {
+  const a = shifted(p.l, value);
+  const t = numberTranspose(a);
+  let v = numberBuild(a.rows, 1, (i) => Math.cos(1 + i * i));
+  let bound = Infinity;
+  try {
+    for (let k = 0; k < 3; k++) {
+      v = numberScale(v, 1 / Math.hypot(...v.data));
+      v = numberSolve(a, v);
+      bound = Math.min(bound, 1 / Math.hypot(...v.data));
+      v = numberSolve(t, v);
+    }
+  } catch (e) {
+    // an exactly singular matrix
+    if (e instanceof RangeError) return 0;
+    throw e;
+  }
+  return bound;
 }
 
 const dimensionOf = (blocks: readonly SignedBlocks[]) => blocks.reduce((d, b) => d + b.size * b.count, 0);
@@ -125,27 +153,23 @@ function simple(p: Problem, kind: EigenvalueKind, value: ComplexNumber): Spectra
     krein: kind === 'imaginary' ? { positive, negative } : null,
     decided: !doubtful,
     reason: doubtful ? `the Krein form of the eigenvector of ${value.im}i is ${form.toExponential(1)}` : null,
+    cause: doubtful ? 'gap' : null,
     readings: [],
     gap: 0,
   };
 }
 
-/** The cluster as one multiple eigenvalue of the given kind. */
-function attempt(p: Problem, kind: EigenvalueKind, mean: ComplexNumber): SpectralCluster {
+/** The cluster as one eigenvalue of the given kind and multiplicity; `doubt` where it may yet be one although the answer is no. */
+function attempt(p: Problem, kind: EigenvalueKind, mean: ComplexNumber, expected: number): { cluster: SpectralCluster; doubt: boolean } {
   const value = { re: kind === 'imaginary' ? 0 : mean.re, im: kind === 'real' ? 0 : mean.im };
-  const run = (t: number) => (kind === 'imaginary' ? imaginaryRun(p, value.im, t) : staircaseRun(p.l, value, p.scale, t));
-  const d = decide(p.tolerance, run, blocksKey);
-  return {
-    kind,
-    value,
-    multiplicity: dimensionOf(d.answer),
-    blocks: d.answer,
-    krein: kind === 'imaginary' ? kreinOfBlocks(d.answer) : null,
-    decided: d.decided,
-    reason: d.reason,
-    readings: d.readings,
-    gap: d.gap,
-  };
+  const far = distanceToSpectrum(p, value) > 1000 * p.tolerance * p.scale;
+  const nothing = (): Run<SignedBlocks[]> => ({ answer: [], readings: [], contradiction: null });
+  const run = far ? nothing : kind === 'imaginary' ? imaginaryRun(p, value.im) : (t: number) => staircaseRun(p.l, value, p.scale, t);
+  const { answer, others, ...decision } = decide(p.tolerance, run, blocksKey);
+  const krein = kind === 'imaginary' ? kreinOfBlocks(answer) : null;
+  const cluster = { kind, value, multiplicity: dimensionOf(answer), blocks: answer, krein, ...decision };
+  const elsewhere = others.some((o) => dimensionOf(o.answer) === expected);
+  return { cluster, doubt: cluster.multiplicity !== expected && (elsewhere || decision.cause === 'contradiction') };
 }
 
 /** Single linkage: the sets into which the points fall when gaps wider than `reach` separate. */
@@ -194,36 +218,39 @@ function resolve(p: Problem, points: readonly ComplexNumber[]): SpectralCluster[
   const nearImaginary = points.every((z) => z.re <= p.reach);
   const nearReal = points.every((z) => z.im <= p.reach);
   if (n === 2 && !nearImaginary && !nearReal) return [simple(p, 'quadruple', mean)];
-  const failed: SpectralCluster[] = [];
   const kinds: [EigenvalueKind, boolean, number][] = [
     ['imaginary', nearImaginary, n],
     ['real', nearReal, n],
     ['quadruple', n % 2 === 0 && points.every((z) => z.re > 0 && z.im > 0), n / 2],
   ];
+  const failed: ReturnType<typeof attempt>[] = [];
   for (const [kind, possible, expected] of kinds) {
     if (!possible) continue;
-    const c = attempt(p, kind, mean);
-    if (c.multiplicity === expected) return [c];
-    failed.push(c);
+    const a = attempt(p, kind, mean, expected);
+    if (a.cluster.multiplicity === expected) return [a.cluster];
+    failed.push(a);
   }
+  const doubt = failed.find((a) => a.doubt)?.cluster;
   const gap = widestGap(points);
   const parts = gap > 0 ? components(points, gap * (1 - 1e-9)) : [];
-  const doubt = failed.find((c) => !c.decided);
   if (parts.length > 1) {
     const split = parts.flatMap((part) => resolve(p, part));
     if (doubt === undefined || split.some((c) => !c.decided)) return split;
+    const place = `${doubt.value.re} + ${doubt.value.im}i`;
     return split.map((c) => ({
       ...c,
       decided: false,
-      reason: `whether ${n} eigenvalues near ${c.value.re}+${c.value.im}i are one: ${doubt.reason}`,
+      cause: doubt.cause,
+      reason: `whether ${n} eigenvalues near ${place} are one: ${doubt.reason}`,
     }));
   }
-  const best = doubt ?? failed[0] ?? attempt(p, 'quadruple', mean);
+  const best = doubt ?? failed[0]?.cluster ?? attempt(p, 'quadruple', mean, n / 2).cluster;
   return [
     {
       ...best,
       decided: false,
-      reason: best.reason ?? `${n} eigenvalue pairs coincide, but the blocks fill ${best.multiplicity} dimensions`,
+      cause: best.cause ?? 'contradiction',
+      reason: best.reason ?? `${n} eigenvalues coincide, but their blocks fill ${best.multiplicity} dimensions`,
     },
   ];
 }

@@ -17,7 +17,7 @@ import {
   requireFinite,
   symmetricPart,
 } from '../../linear/floating.ts';
-import { nullSpaceOfDimension, rightSingular, symmetricEigen } from '../../linear/spectral.ts';
+import { nullSpaceOfDimension, rightSingular, type SymmetricEigen, symmetricEigen } from '../../linear/spectral.ts';
 import { type ChainArithmetic, chainBlocks, chainOfBlocks, type SignedBlocks, type ZeroChain } from '../chain.ts';
 import { blocksKey, DEFAULT_TOLERANCE, type Decision, decide, type Reading, type Run, reading } from './readings.ts';
 import { balanceScaling, type CanonicalPair } from './scaling.ts';
@@ -45,13 +45,14 @@ export interface FloatingZero extends ZeroChain, Decision {
   readonly others: readonly { readonly tolerance: number; readonly blocks: readonly SignedBlocks[] }[];
 }
 
-/** One run of the recursion. w should be near canonical; `scale` is that of s. */
+/** One run of the recursion. w should be near canonical; `scale` is that of s, `eigen` its decomposition. */
 export function chainRun(
   s: NumberMatrix,
   w: NumberMatrix,
   i: NumberMatrix | undefined,
   scale: number,
   tolerance: number,
+  eigen: SymmetricEigen,
 ): Run<SignedBlocks[]> {
   const readings: Reading[] = [];
   let contradiction: string | null = null;
@@ -74,7 +75,7 @@ export function chainRun(
     transpose: numberTranspose,
     multiply: numberMultiply,
     split: (m, level) => {
-      const { values, vectors } = symmetricEigen(m.data, m.rows);
+      const { values, vectors } = level === 0 ? eigen : symmetricEigen(m.data, m.rows);
       const r = reading(
         level,
         'hessian',
@@ -184,15 +185,17 @@ export function prepared(
 export function decideZeroEvent(s: NumberMatrix, w: NumberMatrix, options: ZeroOptions = {}): FloatingZero {
   const p = prepared(s, w, options);
   const tolerance = options.tolerance ?? DEFAULT_TOLERANCE;
-  const d = decide(tolerance, (t) => chainRun(p.s, p.w, p.i, p.scale, t), blocksKey);
+  const eigen = symmetricEigen(p.s.data, p.s.rows);
+  const d = decide(tolerance, (t) => chainRun(p.s, p.w, p.i, p.scale, t, eigen), blocksKey);
   const cut = tolerance * p.scale;
-  const { values } = symmetricEigen(p.s.data, p.s.rows);
+  const { values } = eigen;
   const positive = values.filter((x) => x > cut).length;
   const negative = values.filter((x) => x < -cut).length;
   return {
     ...chainOfBlocks(d.answer),
     decided: d.decided,
     reason: d.reason,
+    cause: d.cause,
     readings: d.readings,
     gap: d.gap,
     inertia: { positive, zero: values.length - positive - negative, negative },

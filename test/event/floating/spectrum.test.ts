@@ -136,6 +136,22 @@ describe('Krein signatures', () => {
   });
 });
 
+describe('units and strengths', () => {
+  it('two oscillators of frequency 1, one of mass and stiffness 10⁶', () => {
+    const s = diagonal(1e6, 1, 1e-6, 1);
+    const f = floatingSpectrum(s, square(4), { terms: s });
+    expect(show(f)).toBe('0: none; imaginary 0.0000 1.0000: 1+ 1+');
+    expect(f.decided).toBe(true);
+  });
+  it('vortices of strengths 2 and -2000 with the same frequency have opposite senses', () => {
+    const w = numberBuild(4, 4, (i, j) => (i === j || i < 2 !== j < 2 ? 0 : (i < j ? 1 : -1) * (i < 2 ? 2 : -2000)));
+    const s = diagonal(6, 6, 6000, 6000);
+    const f = floatingSpectrum(s, w);
+    // both Hamiltonians are positive, so both Krein signs are
+    expect(show(f)).toBe('0: none; imaginary 0.0000 3.0000: 1+ 1+');
+  });
+});
+
 describe('near collisions', () => {
   it('are told apart above the tolerance, joined below it, and undecided at it', () => {
     for (const [d, clusters, decided] of [

@@ -376,3 +376,33 @@ describe('generalised kernel from the blocks, without powers', () => {
     expect(generalisedKernelBasis(numberIdentity(2), plane, []).cols).toBe(0);
   });
 });
+
+describe("Thomson's heptagon of equal vortices in the rotating frame (Havelock 1931)", () => {
+  const n = 7;
+  const z = Array.from({ length: n }, (_, k) => [Math.cos((2 * Math.PI * k) / n), Math.sin((2 * Math.PI * k) / n)] as const);
+  // H = -1/(4π) Σ ln |z_i - z_j|² + Ω/2 Σ |z_i|², Ω = 6/(4π); coordinates x_1 … x_7, y_1 … y_7
+  const data = new Float64Array(4 * n * n);
+  const add = (i: number, a: number, j: number, b: number, v: number) => {
+    data[(i + a * n) * 2 * n + (j + b * n)]! += v;
+  };
+  for (let i = 0; i < n; i++)
+    for (let a = 0; a < 2; a++) {
+      add(i, a, i, a, 6 / (4 * Math.PI));
+      for (let j = 0; j < n; j++)
+        for (let b = 0; b < 2; b++) {
+          if (i === j) continue;
+          const d = [z[i]![0] - z[j]![0], z[i]![1] - z[j]![1]];
+          const r = d[0]! ** 2 + d[1]! ** 2;
+          const second = (-1 / (2 * Math.PI)) * ((a === b ? 1 : 0) / r - (2 * d[a]! * d[b]!) / r ** 2);
+          add(i, a, i, b, second);
+          add(i, a, j, b, -second);
+        }
+    }
+  const w = numberBuild(2 * n, 2 * n, (i, j) => (j === i + n ? 1 : i === j + n ? -1 : 0));
+  it('has the signature (11, 0, 3) and the blocks 2, 2, 2', () => {
+    const f = decideZeroEvent(numberMatrix(2 * n, 2 * n, data), w);
+    expect(f.decided).toBe(true);
+    expect(f.inertia).toEqual({ positive: 11, negative: 0, zero: 3 });
+    expect(f.blocks.map((b) => [b.size, b.count])).toEqual([[2, 3]]);
+  });
+});
