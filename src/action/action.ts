@@ -5,7 +5,15 @@
 import { NotSymplecticError } from '../errors/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
 import type { FiniteGroup } from '../group/index.ts';
-import { type SparseMatrix, sparseCongruence, sparseEquals, sparseIdentity, sparseMultiply, sparseScale, sparseTrace } from '../linear/index.ts';
+import {
+  type SparseMatrix,
+  sparseCongruence,
+  sparseEquals,
+  sparseIdentity,
+  sparseMultiply,
+  sparseScale,
+  sparseTrace,
+} from '../linear/index.ts';
 import { groupOfMatrices } from './orbit.ts';
 
 export interface ActionGenerator {
@@ -67,7 +75,12 @@ export function makeAction(
 }
 
 /** An action whose group is known already. */
-export function assembleAction(field: RealField, form: SparseMatrix<Algebraic>, generators: readonly ActionGenerator[], group: FiniteGroup): Action {
+export function assembleAction(
+  field: RealField,
+  form: SparseMatrix<Algebraic>,
+  generators: readonly ActionGenerator[],
+  group: FiniteGroup,
+): Action {
   const signs = new Int8Array(group.order);
   signs[0] = 1;
   for (let i = 1; i < group.order; i++) signs[i] = (generators[group.via[i]!]!.sign * signs[group.parent[i]!]!) as 1 | -1;
@@ -109,6 +122,8 @@ export function symplecticElements(action: Action): Int32Array {
 
 /** The action restricted to a subgroup, given by the numbers of its generators in the big group. */
 export function restrictAction(action: Action, sub: FiniteGroup, generatorElements: readonly number[]): Action {
-  const generators = generatorElements.map((e, i): ActionGenerator => ({ name: `h${i + 1}`, matrix: action.matrix(e), sign: action.signs[e] as 1 | -1 }));
+  const generators = generatorElements.map(
+    (e, i): ActionGenerator => ({ name: `h${i + 1}`, matrix: action.matrix(e), sign: action.signs[e] as 1 | -1 }),
+  );
   return assembleAction(action.field, action.form, generators, sub);
 }

@@ -10,9 +10,8 @@ import { build, type Matrix, modularRank, multiply, type SparseMatrix, scale, sp
 import type { Action } from './action.ts';
 import { type Irreducible, irreduciblesOf, type RestrictedGroup, restrictedGroup } from './irreducibles.ts';
 import { coordinateMap, cutterMatrix, multiplicityBasis, type Represented } from './multiplicity-space.ts';
-import { conjugationOnClasses, symmetryClass } from './symmetry-class.ts';
 import { type Cutter, findCutters } from './subspace-search.ts';
-
+import { conjugationOnClasses, symmetryClass } from './symmetry-class.ts';
 
 /** h(g) and h(g⁻¹) on a multiplicity space, with σ(g). */
 export interface CompressedElement {
@@ -57,7 +56,12 @@ export function symplecticPart(action: Action): SymplecticPart {
 /** All flow blocks of an action, in the order of the irreducibles of Γ₀. */
 export function flowBlocks(action: Action, symplectic: SymplecticPart = symplecticPart(action)): FlowBlock[] {
   const { part, irreducibles } = symplectic;
-  const rep: Represented = { field: action.field, dimension: action.dimension, group: part.group, matrix: (e) => action.matrix(part.inclusion[e]!) };
+  const rep: Represented = {
+    field: action.field,
+    dimension: action.dimension,
+    group: part.group,
+    matrix: (e) => action.matrix(part.inclusion[e]!),
+  };
   const reversing = action.signs.indexOf(-1);
   const reversingElements = Array.from(action.signs, (x, i) => (x === -1 ? i : -1)).filter((i) => i >= 0);
   const partners = irreducibles.map((k) => (reversing < 0 ? k.index : twisted(action, part, irreducibles, k, reversing)));
@@ -148,6 +152,8 @@ function compressedOperators(
 
 /** Restriction of a sparse form to the columns of a basis. */
 export function restrictForm(basis: Matrix<Algebraic>, form: SparseMatrix<Algebraic>): Matrix<Algebraic> {
-  return multiply(build(basis.field, basis.cols, basis.rows, (i, j) => basis.data[j * basis.cols + i]!), sparseTimes(form, basis));
+  return multiply(
+    build(basis.field, basis.cols, basis.rows, (i, j) => basis.data[j * basis.cols + i]!),
+    sparseTimes(form, basis),
+  );
 }
-

@@ -1,7 +1,9 @@
 /** Groups acting by matrices with signs on a symplectic space; irreducibles and multiplicity spaces. */
 export * from './action.ts';
+export * from './components.ts';
 export * from './flow-blocks.ts';
 export * from './irreducibles.ts';
+export * from './labels.ts';
 export * from './multiplicity-space.ts';
 export * from './orbit.ts';
 export * from './subspace-search.ts';

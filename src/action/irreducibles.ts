@@ -43,7 +43,13 @@ export function wholeGroup(action: Action): RestrictedGroup {
   if (known !== undefined) return known;
   const group = action.group;
   const table = characterTable(group);
-  const whole = { group, table, irreducibles: realIrreducibles(group, table), inclusion: Int32Array.from({ length: group.order }, (_, i) => i), position: (e: number) => e };
+  const whole = {
+    group,
+    table,
+    irreducibles: realIrreducibles(group, table),
+    inclusion: Int32Array.from({ length: group.order }, (_, i) => i),
+    position: (e: number) => e,
+  };
   wholeCache.set(group, whole);
   return whole;
 }
@@ -147,7 +153,9 @@ export function withCharacters(action: Action): Action {
   for (let i = 0; i < action.group.order; i++) if (action.signs[i] === 1) elements.push(i);
   const demands = [action.field.demand, characterDemand(action, wholeGroup(action))];
   if (elements.length < action.group.order) demands.push(characterDemand(action, restrictedGroup(action, elements)));
-  const field = RealField.of({ cosines: demands.flatMap((d) => d.cosines ?? []), squareRoots: demands.flatMap((d) => d.squareRoots ?? []) });
+  const field = RealField.of({
+    cosines: demands.flatMap((d) => d.cosines ?? []),
+    squareRoots: demands.flatMap((d) => d.squareRoots ?? []),
+  });
   return embedAction(action, field);
 }
-

@@ -7,6 +7,7 @@ import type { FiniteGroup } from '../group/index.ts';
 import {
   build,
   fromColumns,
+  identity,
   inverse,
   kernel,
   type Matrix,
@@ -18,7 +19,6 @@ import {
   sparseFromMaps,
   sparseTimes,
   sub,
-  identity,
 } from '../linear/index.ts';
 import type { Cutter } from './subspace-search.ts';
 

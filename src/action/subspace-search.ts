@@ -46,7 +46,12 @@ function generated(group: FiniteGroup, generators: readonly number[]): { element
 }
 
 /** The real linear characters of ⟨generators⟩ as sign lists along `elements`. */
-function realCharacters(group: FiniteGroup, generators: readonly number[], elements: readonly number[], words: readonly number[][]): (1 | -1)[][] {
+function realCharacters(
+  group: FiniteGroup,
+  generators: readonly number[],
+  elements: readonly number[],
+  words: readonly number[][],
+): (1 | -1)[][] {
   const position = new Map(elements.map((e, i) => [e, i]));
   const out: (1 | -1)[][] = [];
   for (let mask = 0; mask < 1 << generators.length; mask++) {
@@ -92,11 +97,18 @@ export function findCutters(group: FiniteGroup, irreducibles: readonly SearchedI
         const d = dimensions[k]!;
         if (d === 0) continue;
         const old = best[k];
-        if (old === undefined || d < old.cutter.dimensions[k]! || (d === old.cutter.dimensions[k] && total < old.total)) best[k] = { cutter, total };
+        if (old === undefined || d < old.cutter.dimensions[k]! || (d === old.cutter.dimensions[k] && total < old.total))
+          best[k] = { cutter, total };
       }
     }
   };
-  const settled = () => best.every((b, k) => b !== undefined && b.cutter.dimensions[k] === irreducibles[k]!.beta && b.total <= 4 * irreducibles[k]!.beta * irreducibles[k]!.multiplicity);
+  const settled = () =>
+    best.every(
+      (b, k) =>
+        b !== undefined &&
+        b.cutter.dimensions[k] === irreducibles[k]!.beta &&
+        b.total <= 4 * irreducibles[k]!.beta * irreducibles[k]!.multiplicity,
+    );
   if (group.order <= SUBGROUP_LIMIT) consider(group.generators);
   consider([]);
   const representatives = group.classes.map((c) => c.representative);

@@ -14,14 +14,21 @@ export interface ClassedIrreducible {
 /** Class of t⁻¹ g t for a representative g of each class of the part; t an element of Γ that normalises it. */
 export function conjugationOnClasses(group: FiniteGroup, part: RestrictedGroup, t: number): number[] {
   const back = group.inverse(t);
-  return part.group.classes.map((c) => part.group.classOf[part.position(group.multiply(back, group.multiply(part.inclusion[c.representative]!, t)))]!);
+  return part.group.classes.map(
+    (c) => part.group.classOf[part.position(group.multiply(back, group.multiply(part.inclusion[c.representative]!, t)))]!,
+  );
 }
 
 /**
  * Class 1 to 10 of χ, given the elements that reverse time and map the component of χ to itself (none: the basic classes).
  * The squares g² are summed over all of them; the sum is an integer times |Γ₀|.
  */
-export function symmetryClass(group: FiniteGroup, part: RestrictedGroup, k: ClassedIrreducible, reversing: readonly number[]): SymmetryClass {
+export function symmetryClass(
+  group: FiniteGroup,
+  part: RestrictedGroup,
+  k: ClassedIrreducible,
+  reversing: readonly number[],
+): SymmetryClass {
   if (reversing.length === 0) return k.beta === 1 ? 1 : k.beta === 2 ? 2 : 3;
   const chi = k.complexValues;
   let sum = 0;

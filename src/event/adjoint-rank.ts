@@ -54,15 +54,23 @@ function invariantForms(n: number, operators: readonly { h: ModularMatrix; k: Mo
 
 function unpack(n: number, forms: ModularMatrix, r: number): ModularMatrix {
   const data = new Int32Array(n * n);
-  for (let i = 0; i < n; i++) for (let j = 0; j <= i; j++) data[i * n + j] = data[j * n + i] = forms.data[r * forms.cols + pairIndex(i, j)]!;
+  for (let i = 0; i < n; i++)
+    for (let j = 0; j <= i; j++) data[i * n + j] = data[j * n + i] = forms.data[r * forms.cols + pairIndex(i, j)]!;
   return { p: forms.p, rows: n, cols: n, data };
 }
 
-/** Codimension of the orbit of L in the class given by the operators (none: no symmetry). L is n x n. */
-export function adjointRank(l: Matrix<Algebraic>, operators: readonly ClassOperator[], reduction: Reduction): AdjointRank {
+/** The tangent space of an orbit: the forms TL + LᵀT, T in a basis of 𝔤₀, one a row, coordinates (i, j) with i ≥ j at i(i+1)/2 + j. */
+export interface AdjointImage {
+  readonly dimensionOfClass: number;
+  readonly dimensionOfGroup: number;
+  readonly image: ModularMatrix;
+}
+
+export function adjointImage(l: Matrix<Algebraic>, operators: readonly ClassOperator[], reduction: Reduction): AdjointImage {
   const n = l.rows;
   const p = reduction.p;
-  if (n === 0) return { dimensionOfClass: 0, dimensionOfGroup: 0, codimension: 0 };
+  const unknowns = (n * (n + 1)) / 2;
+  if (n === 0) return { dimensionOfClass: 0, dimensionOfGroup: 0, image: { p, rows: 0, cols: 0, data: new Int32Array(0) } };
   const reduced = operators.map((o) => ({ h: reduceMatrix(o.matrix, reduction), k: reduceMatrix(o.inverse, reduction), sign: o.sign }));
   const group = invariantForms(
     n,
@@ -77,7 +85,6 @@ export function adjointRank(l: Matrix<Algebraic>, operators: readonly ClassOpera
         p,
       ).rows;
   const lm = reduceMatrix(l, reduction);
-  const unknowns = (n * (n + 1)) / 2;
   const images = new Int32Array(group.rows * unknowns);
   for (let r = 0; r < group.rows; r++) {
     const tl = modularMultiply(unpack(n, group, r), lm);
@@ -88,8 +95,21 @@ export function adjointRank(l: Matrix<Algebraic>, operators: readonly ClassOpera
         images[r * unknowns + pairIndex(i, j)] = s >= p ? s - p : s;
       }
   }
-  const rank = modularRank({ p, rows: group.rows, cols: unknowns, data: images });
-  return { dimensionOfClass, dimensionOfGroup: group.rows, codimension: dimensionOfClass - rank };
+  return { dimensionOfClass, dimensionOfGroup: group.rows, image: { p, rows: group.rows, cols: unknowns, data: images } };
+}
+
+/** Codimension of the orbit of L in the class given by the operators (none: no symmetry). L is n x n. */
+export function adjointRank(l: Matrix<Algebraic>, operators: readonly ClassOperator[], reduction: Reduction): AdjointRank {
+  const { dimensionOfClass, dimensionOfGroup, image } = adjointImage(l, operators, reduction);
+  return { dimensionOfClass, dimensionOfGroup, codimension: dimensionOfClass - modularRank(image) };
+}
+
+/** Coordinates of a symmetric matrix in the order of `AdjointImage`, modulo the prime of the reduction. */
+export function formCoordinates(form: Matrix<Algebraic>, reduction: Reduction): Int32Array {
+  const n = form.rows;
+  const out = new Int32Array((n * (n + 1)) / 2);
+  for (let i = 0; i < n; i++) for (let j = 0; j <= i; j++) out[pairIndex(i, j)] = reduction.apply(form.data[i * n + j]!);
+  return out;
 }
 
 /** A piece of a space that splits into `copies` spaces on each of which L looks the same. */

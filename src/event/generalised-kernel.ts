@@ -40,6 +40,10 @@ export function generalisedKernel(l: Matrix<Algebraic>): GeneralisedKernel {
 }
 
 /** The map induced on an invariant subspace: X with basis·X = m·basis, by coordinates in chosen rows. */
-export function inducedMap(m: Matrix<Algebraic>, basis: Matrix<Algebraic>, coordinates: (images: Matrix<Algebraic>) => Matrix<Algebraic>): Matrix<Algebraic> {
+export function inducedMap(
+  m: Matrix<Algebraic>,
+  basis: Matrix<Algebraic>,
+  coordinates: (images: Matrix<Algebraic>) => Matrix<Algebraic>,
+): Matrix<Algebraic> {
   return coordinates(multiply(m, basis));
 }

@@ -3,7 +3,14 @@
  * carried by the representations M_j of Γ₀ on the heads of the Jordan blocks of size j; restricted to
  * Σ ∩ Γ₀ they give the partition of every irreducible there, and the formula by class gives the rest.
  */
-import { type Action, conjugationOnClasses, type FlowBlock, type RestrictedGroup, restrictedGroup, symmetryClass } from '../action/index.ts';
+import {
+  type Action,
+  conjugationOnClasses,
+  type FlowBlock,
+  type RestrictedGroup,
+  restrictedGroup,
+  symmetryClass,
+} from '../action/index.ts';
 import type { SubgroupClass } from '../group/index.ts';
 import { zeroCodimensionOfPartition } from './partition-codimension.ts';
 
@@ -89,10 +96,20 @@ export function codimensionUnder(action: Action, elements: ArrayLike<number>, ch
 }
 
 /** One entry per conjugacy class of subgroups. */
-export function subgroupCodimensions(action: Action, classes: readonly SubgroupClass[], characters: readonly EventCharacter[]): SubgroupCodimension[] {
+export function subgroupCodimensions(
+  action: Action,
+  classes: readonly SubgroupClass[],
+  characters: readonly EventCharacter[],
+): SubgroupCodimension[] {
   return classes.map((h) => {
     let reversing = 0;
     for (const e of h.elements) if (action.signs[e] === -1) reversing++;
-    return { order: h.order, reversing, conjugates: h.conjugates, codimension: codimensionUnder(action, h.elements, characters), generators: h.generators };
+    return {
+      order: h.order,
+      reversing,
+      conjugates: h.conjugates,
+      codimension: codimensionUnder(action, h.elements, characters),
+      generators: h.generators,
+    };
   });
 }

@@ -3,7 +3,7 @@
  * structure with signs, and the codimension in the symmetric class by two routes, the rank of the adjoint
  * map and the formula by class. The routes must agree, or the program stops.
  */
-import { type FlowBlock, coordinateMap, restrictForm } from '../action/index.ts';
+import { coordinateMap, type FlowBlock, restrictForm } from '../action/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
 import { congruence, type Matrix, multiply, type SparseMatrix } from '../linear/index.ts';
 import { type AdjointRank, adjointRank, adjointRankWithoutSymmetry, type ClassOperator } from './adjoint-rank.ts';
@@ -23,7 +23,12 @@ export interface BlockForms {
 export interface BlockZero extends BlockForms {
   readonly kernel: GeneralisedKernel;
   /** Everything restricted to E₀. */
-  readonly event: { readonly s: Matrix<Algebraic>; readonly w: Matrix<Algebraic>; readonly l: Matrix<Algebraic>; readonly operators: readonly ClassOperator[] };
+  readonly event: {
+    readonly s: Matrix<Algebraic>;
+    readonly w: Matrix<Algebraic>;
+    readonly l: Matrix<Algebraic>;
+    readonly operators: readonly ClassOperator[];
+  };
   /** Signed blocks on the multiplicity space (empty where the kernel is 0). */
   readonly signed: readonly SignedBlocks[];
   /** Jordan partition on the multiplicity space of one complex constituent χ of Γ₀, descending. */
@@ -66,7 +71,11 @@ function blockZero(b: BlockForms, field: RealField): BlockZero {
   const operatorsOn = (): ClassOperator[] => {
     if (e.cols === 0) return [];
     const coordinates = coordinateMap(e, field);
-    return b.block.operators.map((o) => ({ matrix: coordinates(multiply(o.matrix, e)), inverse: coordinates(multiply(o.inverse, e)), sign: o.sign }));
+    return b.block.operators.map((o) => ({
+      matrix: coordinates(multiply(o.matrix, e)),
+      inverse: coordinates(multiply(o.inverse, e)),
+      sign: o.sign,
+    }));
   };
   const s = congruence(e, b.s);
   const w = congruence(e, b.w);
@@ -75,7 +84,8 @@ function blockZero(b: BlockForms, field: RealField): BlockZero {
   const signed = e.cols === 0 ? [] : zeroChain(s, w, field).blocks;
   for (let j = 1; j < kernel.blocks.length; j++) {
     const counted = signed.find((x) => x.size === j)?.count ?? 0;
-    if (counted !== kernel.blocks[j]) throw new RoutesDisagree(`blocks of size ${j}: ${kernel.blocks[j]} by kernels, ${counted} by symplectic reduction`);
+    if (counted !== kernel.blocks[j])
+      throw new RoutesDisagree(`blocks of size ${j}: ${kernel.blocks[j]} by kernels, ${counted} by symplectic reduction`);
   }
   const partition = kernel.blocks.flatMap((count, j) => new Array<number>((count / b.block.cut) * chiCount(b.block)).fill(j)).reverse();
   const rank = adjointRank(l, event.operators, reduction);
@@ -84,7 +94,9 @@ function blockZero(b: BlockForms, field: RealField): BlockZero {
     // a prime can be unlucky; a second one decides
     const again = adjointRank(l, event.operators, field.reduction(1));
     if (again.codimension !== formula)
-      throw new RoutesDisagree(`codimension of class ${b.block.symmetryClass}: ${again.codimension} by the adjoint map, ${formula} by the partition ${partition.join(',')}`);
+      throw new RoutesDisagree(
+        `codimension of class ${b.block.symmetryClass}: ${again.codimension} by the adjoint map, ${formula} by the partition ${partition.join(',')}`,
+      );
   }
   return { ...b, kernel, event, signed, partition, rank, formula };
 }

@@ -106,7 +106,11 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
     }
     if (n <= 4) n = 1;
     // a quadratic cyclotomic part is the same field as one square root: keep one spelling
-    const quadratic = new Map([[5, 5n], [8, 2n], [12, 3n]]).get(n);
+    const quadratic = new Map([
+      [5, 5n],
+      [8, 2n],
+      [12, 3n],
+    ]).get(n);
     if (quadratic !== undefined) {
       n = 1;
       primes.add(quadratic);
@@ -116,7 +120,8 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
     const known = cache.get(key);
     if (known !== undefined) return known;
     const degree = Math.max(1, CyclotomicField.of(n).degree / 2) * 2 ** radicals.length;
-    if (degree > DEGREE_LIMIT) throw new RangeError(`the numbers of this model need a field of degree ${degree} over Q; the limit is ${DEGREE_LIMIT}`);
+    if (degree > DEGREE_LIMIT)
+      throw new RangeError(`the numbers of this model need a field of degree ${degree} over Q; the limit is ${DEGREE_LIMIT}`);
     const field = new RealField(n, radicals);
     cache.set(key, field);
     return field;
@@ -146,7 +151,11 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
       num = (num * ((j + 1) / 2)) % j;
       den = j;
     }
-    const half = (x: Algebraic) => this.element(x.c.map((y) => y * sign), x.d * 2n);
+    const half = (x: Algebraic) =>
+      this.element(
+        x.c.map((y) => y * sign),
+        x.d * 2n,
+      );
     if (den === 1) return this.fromInteger(sign);
     if (den === 3) return this.fromRational(-sign, 2n);
     if (den === 4) return num % 2 === 0 ? this.fromInteger(num === 0 ? sign : -sign) : this.zero;
@@ -397,17 +406,29 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
       const g = gcdInt(2 * k, n);
       return `cos(${(2 * k) / g === 1 ? '' : `${(2 * k) / g}*`}pi/${n / g})`;
     };
-    return this.#write(a, (r) => `sqrt(${r})`, cosine, '*', (num, den) => `${num}/${den}`);
+    return this.#write(
+      a,
+      (r) => `sqrt(${r})`,
+      cosine,
+      '*',
+      (num, den) => `${num}/${den}`,
+    );
   }
   latex(a: Algebraic): string {
     const cosine = (k: number, n: number) => {
       const g = gcdInt(2 * k, n);
       return `\\cos\\tfrac{${(2 * k) / g === 1 ? '' : (2 * k) / g}\\pi}{${n / g}}`;
     };
-    return this.#write(a, (r) => `\\sqrt{${r}}`, cosine, '', (num, den) => {
-      const negative = num.startsWith('-') && !/ [+-] /.test(num);
-      return `${negative ? '-' : ''}\\tfrac{${negative ? num.slice(1) : num}}{${den}}`;
-    });
+    return this.#write(
+      a,
+      (r) => `\\sqrt{${r}}`,
+      cosine,
+      '',
+      (num, den) => {
+        const negative = num.startsWith('-') && !/ [+-] /.test(num);
+        return `${negative ? '-' : ''}\\tfrac{${negative ? num.slice(1) : num}}{${den}}`;
+      },
+    );
   }
 
   #write(
@@ -528,5 +549,3 @@ function reductionTable(n: number, m: number): number[][] {
   }
   return rows;
 }
-
-

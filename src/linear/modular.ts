@@ -27,7 +27,8 @@ function eliminateInPlace(data: Int32Array, rows: number, cols: number, p: numbe
         data[done * cols + k] = t;
       }
     const inv = invMod(data[done * cols + j]!, p);
-    if (inv !== 1) for (let k = j; k < cols; k++) if (data[done * cols + k] !== 0) data[done * cols + k] = mulMod(inv, data[done * cols + k]!, p);
+    if (inv !== 1)
+      for (let k = j; k < cols; k++) if (data[done * cols + k] !== 0) data[done * cols + k] = mulMod(inv, data[done * cols + k]!, p);
     for (let r = reduced ? 0 : done + 1; r < rows; r++) {
       const x = data[r * cols + j]!;
       if (x !== 0 && r !== done) addRowInPlace(data, r * cols, done * cols, j, cols, p - x, p);

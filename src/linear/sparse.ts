@@ -129,7 +129,10 @@ export function sparseEquals<T>(a: SparseMatrix<T>, b: SparseMatrix<T>): boolean
   return (
     a.rows === b.rows &&
     a.cols === b.cols &&
-    a.index.every((cols, i) => cols.length === b.index[i]!.length && cols.every((j, k) => j === b.index[i]![k] && a.field.equal(a.value[i]![k]!, b.value[i]![k]!)))
+    a.index.every(
+      (cols, i) =>
+        cols.length === b.index[i]!.length && cols.every((j, k) => j === b.index[i]![k] && a.field.equal(a.value[i]![k]!, b.value[i]![k]!)),
+    )
   );
 }
 

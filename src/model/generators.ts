@@ -7,7 +7,7 @@ import type { Algebraic, RealField } from '../field/index.ts';
 import { loadCatalogueGroup } from '../group/catalogue.ts';
 import { dense, fromRows, inverse, type Matrix, type SparseMatrix, sparse, sparseFromMaps, transpose } from '../linear/index.ts';
 import type { Declaration, GeneratorDeclaration, GroupDeclaration } from './declaration/declaration.ts';
-import { exactValue, parseExpression } from './expression/index.ts';
+import { type Expression, exactValue, parseExpression } from './expression/index.ts';
 import { affineForm } from './linear-form.ts';
 
 /** A generator as a matrix; `declared` is what the declaration says about time, where it says anything. */
@@ -25,12 +25,27 @@ interface Frame {
   readonly names: readonly string[];
   readonly index: ReadonlyMap<string, number>;
   readonly half: number;
+  /** Text of the declaration to an expression, definitions replaced. */
+  readonly parse: (text: string, key: string) => Expression;
 }
 
 /** All generators of a declaration, own ones first, then those of groups, then time reversal. */
-export function modelGenerators(declaration: Declaration, field: RealField, values: ReadonlyMap<string, Algebraic>): ModelGenerator[] {
+export function modelGenerators(
+  declaration: Declaration,
+  field: RealField,
+  values: ReadonlyMap<string, Algebraic>,
+  parse: (text: string, key: string) => Expression,
+): ModelGenerator[] {
   const names = [...declaration.coordinates, ...declaration.momenta];
-  const frame: Frame = { declaration, field, values, names, index: new Map(names.map((n, i) => [n, i])), half: declaration.coordinates.length };
+  const frame: Frame = {
+    declaration,
+    field,
+    values,
+    names,
+    index: new Map(names.map((n, i) => [n, i])),
+    half: declaration.coordinates.length,
+    parse,
+  };
   const out: ModelGenerator[] = [];
   for (const g of declaration.generators) out.push(ownGenerator(frame, g));
   for (const g of declaration.groups) out.push(...groupGenerators(frame, g));
@@ -56,13 +71,24 @@ function cotangentLift(frame: Frame, a: Matrix<Algebraic>, sigma: 1 | -1, where:
   try {
     contragredient = sparse(transpose(inverse(a)));
   } catch {
-    throw new InputError(`the map of ${where} is singular`, { file: frame.declaration.source, key: where, expected: 'an invertible linear map' });
+    throw new InputError(`the map of ${where} is singular`, {
+      file: frame.declaration.source,
+      key: where,
+      expected: 'an invertible linear map',
+    });
   }
   const q = sparse(a);
   const rows: Map<number, Algebraic>[] = [];
   for (let i = 0; i < half; i++) rows.push(new Map(q.index[i]!.map((j, k) => [j, q.value[i]![k]!])));
   for (let i = 0; i < half; i++)
-    rows.push(new Map(contragredient.index[i]!.map((j, k) => [j + half, sigma === 1 ? contragredient.value[i]![k]! : field.neg(contragredient.value[i]![k]!)])));
+    rows.push(
+      new Map(
+        contragredient.index[i]!.map((j, k) => [
+          j + half,
+          sigma === 1 ? contragredient.value[i]![k]! : field.neg(contragredient.value[i]![k]!),
+        ]),
+      ),
+    );
   return sparseFromMaps(field, 2 * half, rows);
 }
 
@@ -92,7 +118,7 @@ function ownGenerator(frame: Frame, g: GeneratorDeclaration): ModelGenerator {
   }
   if (g.matrix !== undefined) {
     const rows = g.matrix.map((row, i) =>
-      row.map((text, j) => exactValue(parseExpression(text, { file: declaration.source, key: `${g.where}.matrix[${i + 1}][${j + 1}]` }), frame.values, field)),
+      row.map((text, j) => exactValue(frame.parse(text, `${g.where}.matrix[${i + 1}][${j + 1}]`), frame.values, field)),
     );
     return { ...head, matrix: square(rows) };
   }
@@ -102,9 +128,13 @@ function ownGenerator(frame: Frame, g: GeneratorDeclaration): ModelGenerator {
   const rows = names.map((_, i) => unit(i));
   for (const [name, text] of g.map) {
     const where = { file: declaration.source, key: `${g.where}.map.${name}` };
-    const form = affineForm(parseExpression(text, where), known, frame.values, field, where);
+    const form = affineForm(frame.parse(text, where.key), known, frame.values, field, where);
     if (!field.isZero(form.constant))
-      throw new InputError(`the map of ${g.name} moves the origin: ${name} ↦ ${text}`, { ...where, value: text, expected: 'a linear map without constant term' });
+      throw new InputError(`the map of ${g.name} moves the origin: ${name} ↦ ${text}`, {
+        ...where,
+        value: text,
+        expected: 'a linear map without constant term',
+      });
     rows[frame.index.get(name)!] = new Map([...form.coefficients].map(([k, v]) => [frame.index.get(k)!, v]));
   }
   const full = sparseFromMaps(field, names.length, rows);
@@ -144,13 +174,16 @@ function groupGenerators(frame: Frame, g: GroupDeclaration): ModelGenerator[] {
     const rows = names.map((_, i) => new Map([[i, field.one]]));
     for (const site of sites) {
       if (site.action.dimension !== site.on.length)
-        throw new InputError(`the action ${site.action.name} of ${group.name} moves ${site.action.dimension} coordinates, the list names ${site.on.length}`, {
-          file: declaration.source,
-          key: `${g.where}.on`,
-          value: site.on.join(', '),
-          expected: `${site.action.dimension} coordinates`,
-          next: 'see the actions with: symcodim groups NAME',
-        });
+        throw new InputError(
+          `the action ${site.action.name} of ${group.name} moves ${site.action.dimension} coordinates, the list names ${site.on.length}`,
+          {
+            file: declaration.source,
+            key: `${g.where}.on`,
+            value: site.on.join(', '),
+            expected: `${site.action.dimension} coordinates`,
+            next: 'see the actions with: symcodim groups NAME',
+          },
+        );
       const texts = site.action.matrices.get(name)!;
       texts.forEach((line, i) => {
         const row = new Map<number, Algebraic>();
@@ -163,7 +196,7 @@ function groupGenerators(frame: Frame, g: GroupDeclaration): ModelGenerator[] {
     }
     const reversing = g.reversing.includes(name);
     const where = `${g.where}.${name}`;
-    if (!lift) return { name, where, matrix: sparseFromMaps(field, names.length, rows), ...(reversing ? { declared: true } : {}) };
+    if (!lift) return { name, where, matrix: sparseFromMaps(field, names.length, rows), declared: reversing };
     const a = Array.from({ length: half }, (_, i) => Array.from({ length: half }, (_, j) => rows[i]!.get(j) ?? field.zero));
     return { name, where, matrix: cotangentLift(frame, fromRows(field, a, half), reversing ? -1 : 1, where), declared: reversing };
   });
@@ -173,33 +206,53 @@ function groupGenerators(frame: Frame, g: GroupDeclaration): ModelGenerator[] {
 function pointGenerators(frame: Frame, g: GroupDeclaration): ModelGenerator[] {
   const { declaration, field, half, values } = frame;
   const energy = declaration.energy;
-  if (energy.kind !== 'network') throw new InputError('`on: points` needs a network', { file: declaration.source, key: `${g.where}.on`, value: 'points', expected: 'lists of coordinates' });
+  if (energy.kind !== 'network')
+    throw new InputError('`on: points` needs a network', {
+      file: declaration.source,
+      key: `${g.where}.on`,
+      value: 'points',
+      expected: 'lists of coordinates',
+    });
   const d = energy.dimension;
   const group = loadCatalogueGroup(g.group, { folder: declaration.folder });
-  const action = g.action === undefined ? ([...group.actions.values()].find((a) => a.dimension === d) ?? group.action(undefined, d)) : group.action(g.action, d);
+  const action =
+    g.action === undefined
+      ? ([...group.actions.values()].find((a) => a.dimension === d) ?? group.action(undefined, d))
+      : group.action(g.action, d);
   if (action.dimension !== d)
-    throw new InputError(`no action of ${group.name} turns points of ${d} coordinates`, { file: declaration.source, key: `${g.where}.group`, value: g.group, expected: `a group with an action of dimension ${d}` });
+    throw new InputError(`no action of ${group.name} turns points of ${d} coordinates`, {
+      file: declaration.source,
+      key: `${g.where}.group`,
+      value: g.group,
+      expected: `a group with an action of dimension ${d}`,
+    });
   const labels = [...energy.points.keys()];
   const positions = labels.map((label) =>
-    energy.points.get(label)!.map((text, i) => exactValue(parseExpression(text, { file: declaration.source, key: `network.points.${label}[${i + 1}]` }), values, field)),
+    energy.points.get(label)!.map((text, i) => exactValue(frame.parse(text, `network.points.${label}[${i + 1}]`), values, field)),
   );
   const at = new Map(positions.map((x, i) => [x.map((c) => field.key(c)).join(';'), i]));
   return group.generators.map((name) => {
-    const r = action.matrices.get(name)!.map((line) => line.map((text) => exactValue(parseExpression(text, { key: g.where }), values, field)));
+    const r = action.matrices
+      .get(name)!
+      .map((line) => line.map((text) => exactValue(parseExpression(text, { key: g.where }), values, field)));
     const a = Array.from({ length: half }, () => new Map<number, Algebraic>());
     positions.forEach((x, from) => {
       const y = r.map((line) => line.reduce((s, c, j) => field.add(s, field.mul(c, x[j]!)), field.zero));
       const to = at.get(y.map((c) => field.key(c)).join(';'));
       if (to === undefined)
-        throw new InputError(`${name} of ${group.name} moves point ${labels[from]} to (${y.map((c) => field.format(c)).join(', ')}), where there is no point`, {
-          file: declaration.source,
-          key: `network.points.${labels[from]}`,
-          expected: 'a set of points that the group maps to itself',
-          next: 'check the axes: main axis z, two-fold axes of D_n along x, vertical mirrors contain x',
+        throw new InputError(
+          `${name} of ${group.name} moves point ${labels[from]} to (${y.map((c) => field.format(c)).join(', ')}), where there is no point`,
+          {
+            file: declaration.source,
+            key: `network.points.${labels[from]}`,
+            expected: 'a set of points that the group maps to itself',
+            next: 'check the axes: main axis z, two-fold axes of D_n along x, vertical mirrors contain x',
+          },
+        );
+      for (let i = 0; i < d; i++)
+        r[i]!.forEach((c, j) => {
+          if (!field.isZero(c)) a[to * d + i]!.set(from * d + j, c);
         });
-      for (let i = 0; i < d; i++) r[i]!.forEach((c, j) => {
-        if (!field.isZero(c)) a[to * d + i]!.set(from * d + j, c);
-      });
     });
     // orthogonal matrices: the lift of A is A itself, with the sign
     const reversing = g.reversing.includes(name);

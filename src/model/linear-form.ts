@@ -18,7 +18,13 @@ export interface Where {
  * Reads an expression as an affine form in `names`; everything else must be constant under `values`.
  * Throws InputError where it is not affine; lets the signals of a field that is too small pass.
  */
-export function affineForm(e: Expression, names: ReadonlySet<string>, values: ReadonlyMap<string, Algebraic>, field: RealField, where: Where): AffineForm {
+export function affineForm(
+  e: Expression,
+  names: ReadonlySet<string>,
+  values: ReadonlyMap<string, Algebraic>,
+  field: RealField,
+  where: Where,
+): AffineForm {
   type Part = { readonly e: Expression; readonly form?: AffineForm };
   const none: ReadonlyMap<string, Algebraic> = new Map();
   const nonlinear = (x: Expression): InputError =>
@@ -29,7 +35,8 @@ export function affineForm(e: Expression, names: ReadonlySet<string>, values: Re
       next: 'a symmetry must be a linear map of the phase space',
     });
   const combine = (x: Expression, parts: readonly Part[]): Part => {
-    if (x.kind === 'symbol' && names.has(x.name)) return { e: x, form: { constant: field.zero, coefficients: new Map([[x.name, field.one]]) } };
+    if (x.kind === 'symbol' && names.has(x.name))
+      return { e: x, form: { constant: field.zero, coefficients: new Map([[x.name, field.one]]) } };
     if (parts.every((p) => p.form === undefined)) return { e: x };
     const form = (p: Part): AffineForm => p.form ?? { constant: exactValue(p.e, values, field), coefficients: none };
     const scaled = (a: AffineForm, s: Algebraic): AffineForm => ({
@@ -59,7 +66,8 @@ export function affineForm(e: Expression, names: ReadonlySet<string>, values: Re
       case 'quotient': {
         if (parts[1]!.form !== undefined) throw nonlinear(x);
         const d = exactValue(parts[1]!.e, values, field);
-        if (field.isZero(d)) throw new InputError('division by zero', { ...where, value: formatExpression(x), expected: 'a nonzero denominator' });
+        if (field.isZero(d))
+          throw new InputError('division by zero', { ...where, value: formatExpression(x), expected: 'a nonzero denominator' });
         return { e: x, form: scaled(parts[0]!.form!, field.inv(d)) };
       }
       case 'power': {

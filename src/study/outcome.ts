@@ -36,6 +36,8 @@ export interface Outcome {
 
 /** What one run of a command adds to the declaration, which holds everything else (degree, tolerance, range, …). */
 export interface StudyOptions {
+  /** Number of parameters that may be tuned (K of the verdict), where it is not that of the declaration. */
+  readonly parameters?: number;
   /** Look for signed permutations that leave H invariant (`check`). */
   readonly find?: boolean;
   /** Birkhoff normal form at an elliptic equilibrium (`reduce`, `report`). */

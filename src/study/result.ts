@@ -76,6 +76,8 @@ export interface SubgroupSummary {
   readonly codimension: number;
   readonly motion: Motion;
   readonly generators?: readonly string[];
+  /** Places in the list of the classes next above: those that contain a conjugate of this one, none between. */
+  readonly coveredBy?: readonly number[];
 }
 
 export interface SignedBlockSummary {
@@ -98,7 +100,13 @@ export interface ZeroSummary {
   readonly components: readonly string[];
   readonly signs: readonly SignedBlockSummary[];
   /** Both routes, block by block of the flow. */
-  readonly routes: readonly { readonly components: readonly string[]; readonly class: number; readonly partition: readonly number[]; readonly formula: number; readonly rank: number }[];
+  readonly routes: readonly {
+    readonly components: readonly string[];
+    readonly class: number;
+    readonly partition: readonly number[];
+    readonly formula: number;
+    readonly rank: number;
+  }[];
   /** Normal space as quadratic Hamiltonians in the user's coordinates. */
   readonly unfolding?: readonly string[];
   readonly unfoldingWithoutSymmetry?: readonly string[];
@@ -180,10 +188,27 @@ export interface EventSummary {
 
 export interface InvariantsResult extends StudyResult {
   readonly molien: { readonly numerator: readonly number[]; readonly denominator: readonly number[]; readonly series: readonly number[] };
-  readonly equivariants?: { readonly numerator: readonly number[]; readonly denominator: readonly number[]; readonly series: readonly number[]; readonly generators?: readonly { readonly degree: number; readonly field: readonly string[] }[] };
-  readonly generators: readonly { readonly name: string; readonly degree: number; readonly polynomial: string; readonly latex?: string; readonly readable?: string }[];
+  readonly equivariants?: {
+    readonly numerator: readonly number[];
+    readonly denominator: readonly number[];
+    readonly series: readonly number[];
+    readonly generators?: readonly { readonly degree: number; readonly field: readonly string[] }[];
+  };
+  readonly generators: readonly {
+    readonly name: string;
+    readonly degree: number;
+    readonly polynomial: string;
+    readonly latex?: string;
+    readonly readable?: string;
+  }[];
   readonly complete: boolean;
   readonly proof: string;
   readonly relations: readonly string[];
-  readonly hamiltonian: { readonly expression: string; readonly latex?: string; readonly remainder: string; readonly breaking?: string; readonly degree?: number } | null;
+  readonly hamiltonian: {
+    readonly expression: string;
+    readonly latex?: string;
+    readonly remainder: string;
+    readonly breaking?: string;
+    readonly degree?: number;
+  } | null;
 }

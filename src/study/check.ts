@@ -1,0 +1,46 @@
+/** `check`: is the point an equilibrium, is each generator (anti)symplectic, does it leave H invariant. */
+import { groupOfMatrices } from '../action/index.ts';
+import { NotAGroupError } from '../errors/index.ts';
+import type { Prepared } from './prepare.ts';
+import type { StudyResult } from './result.ts';
+import { head } from './summary.ts';
+
+export interface CheckResult extends StudyResult {
+  /** Degree in the coordinates to which invariance was compared; 'all' for a polynomial H. */
+  readonly invarianceDegree: number | 'all';
+  readonly failures: readonly string[];
+}
+
+/** The full result, also where something fails; then `group` counts the matrices alone. */
+export function checkResult(p: Prepared): CheckResult {
+  const failures = p.generators.flatMap((g) => (g.reason === undefined ? [] : [g.reason]));
+  if (!p.equilibriumHolds) {
+    const i = p.local.gradient.findIndex((x) => !p.field.isZero(x));
+    failures.push(`the point is not an equilibrium: ∂H/∂${p.quantities.names[i]} = ${p.field.format(p.local.gradient[i]!)}`);
+  }
+  return { ...head('check', p, groupOrder(p, failures)), invarianceDegree: p.invarianceDegree, failures };
+}
+
+function groupOrder(p: Prepared, failures: string[]): StudyResult['group'] {
+  const names = p.generators.map((g) => g.name);
+  try {
+    const group = groupOfMatrices(
+      p.field,
+      p.form.rows,
+      p.generators.map((g) => g.matrix),
+      p.declaration.orderLimit ?? 100_000,
+    );
+    let reversing = 0;
+    const signs = new Int8Array(group.order);
+    signs[0] = 1;
+    for (let i = 1; i < group.order; i++) {
+      signs[i] = (p.generators[group.via[i]!]!.sign ?? 1) * signs[group.parent[i]!]!;
+      if (signs[i] === -1) reversing++;
+    }
+    return { order: group.order, reversing, generators: names };
+  } catch (error) {
+    if (!(error instanceof NotAGroupError)) throw error;
+    failures.push(error.message);
+    return { order: 0, reversing: 0, generators: names };
+  }
+}

@@ -1,0 +1,269 @@
+/** `codim`: the zero event of an exact model, its codimension, motion, subgroups, and the verdict. */
+import {
+  type Action,
+  adaptedBlocks,
+  type Component,
+  type Components,
+  componentsOf,
+  componentsOfBlock,
+  cutterMatrix,
+  embedSparse,
+  flowBlocks,
+  restrictForm,
+  type SymplecticPart,
+  symplecticPart,
+  tidy,
+} from '../action/index.ts';
+import { LimitError } from '../errors/index.ts';
+import { eventCharacters, subgroupCodimensions } from '../event/subgroup-codimension.ts';
+import { type Family, versality } from '../event/versality.ts';
+import { type BlockForms, blockForms, motionOf, type ZeroEvent, zeroEvent } from '../event/zero-event.ts';
+import type { Algebraic, RealField } from '../field/index.ts';
+import { type SubgroupClass, subgroupClasses } from '../group/index.ts';
+import { above, dense, fromColumns, identity, image, inertia, kernel, type Matrix, sub } from '../linear/index.ts';
+import { cubicAlong } from '../model/local.ts';
+import { actionOf, type Prepared, requireHolds } from './prepare.ts';
+import type { CodimResult, InertiaSummary, SubgroupSummary, ZeroSummary } from './result.ts';
+import { componentSummaries, groupSummary, head } from './summary.ts';
+import { type VerdictFacts, verdict } from './verdict.ts';
+
+/** Subgroups of larger groups are not enumerated. */
+export const SUBGROUP_ORDER_LIMIT = 2000;
+
+/** The linear analysis of one exact model: what codim, report and verify share. */
+export interface LinearStudy {
+  readonly prepared: Prepared;
+  readonly action: Action;
+  readonly components: Components;
+  readonly symplectic: SymplecticPart;
+  readonly forms: readonly BlockForms[];
+  /** Components of Γ in each flow block. */
+  readonly blockComponents: readonly (readonly Component[])[];
+  readonly event: ZeroEvent;
+}
+
+/** Runs the linear analysis. Throws the errors of `check` where the model is not what it claims. */
+export function linearStudy(prepared: Prepared): LinearStudy {
+  requireHolds(prepared);
+  const action = actionOf(prepared);
+  const components = componentsOf(action);
+  const symplectic = symplecticPart(action);
+  const flow = flowBlocks(action, symplectic);
+  const forms = blockForms(flow, embedSparse(prepared.local.hessian, prepared.field, action.field), action.form);
+  const event = zeroEvent(forms, action.field);
+  const blockComponents = flow.map((b) => componentsOfBlock(action, components, symplectic.part, b.irreducible));
+  return { prepared, action, components, symplectic, forms, blockComponents, event };
+}
+
+/** Inertia of S on the whole space, block by block. */
+export function inertiaOf(forms: readonly BlockForms[], field: RealField): InertiaSummary {
+  let positive = 0;
+  let zero = 0;
+  let negative = 0;
+  for (const b of forms) {
+    const i = inertia(b.s, field);
+    positive += i.positive * b.block.copies;
+    zero += i.zero * b.block.copies;
+    negative += i.negative * b.block.copies;
+  }
+  return { positive, zero, negative };
+}
+
+/** Basis of Fix(Γ), n × f. */
+export function fixedSpace(action: Action, components: Components): Matrix<Algebraic> {
+  const f = action.field;
+  const n = action.dimension;
+  const trivial = components.present.find((c) => c.irreducible.index === 0);
+  if (trivial === undefined) return fromColumns<Algebraic>(f, [], n);
+  if (action.group.order === 1) return identity<Algebraic>(f, n);
+  if (action.group.order <= 500) {
+    const elements = Array.from({ length: action.group.order }, (_, i) => i);
+    const rep = { field: f, dimension: n, group: action.group, matrix: (e: number) => action.matrix(e) };
+    return tidy(image(dense(cutterMatrix(rep, { elements, signs: elements.map(() => 1 as const), dimensions: [] }))), f);
+  }
+  let stacked: Matrix<Algebraic> | undefined;
+  for (const g of action.generators) {
+    const d = sub(dense(g.matrix), identity<Algebraic>(f, n));
+    stacked = stacked === undefined ? d : above(stacked, d);
+  }
+  return kernel(stacked!);
+}
+
+function family(study: LinearStudy): Family {
+  const { prepared, action, components } = study;
+  const { local, field: from } = prepared;
+  const to = action.field;
+  const move = (x: Algebraic) => to.embed(from, x);
+  return {
+    field: to,
+    hessian: embedSparse(local.hessian, from, to),
+    hessianBy: local.hessianBy.map((m) => embedSparse(m, from, to)),
+    gradientBy: local.gradientBy.map((g) => g.map(move)),
+    cubicAlong: (v) => {
+      const back = v.map((x) => x);
+      const lifted = { ...local, field: to, higher: { ...local.higher, coefficients: local.higher.coefficients.map(move) } };
+      return cubicAlong(lifted, back);
+    },
+    fixed: fixedSpace(action, components),
+    branch: local.pointBy.map((x) => x.map(move)),
+  };
+}
+
+/** ker S component by component under Γ: how often each irreducible occurs in it, and the inertia of S there. */
+export interface ComponentForms {
+  readonly component: Component;
+  readonly kernelMultiplicity: number;
+  readonly inertia: InertiaSummary;
+}
+
+export function componentForms(study: LinearStudy): ComponentForms[] {
+  const { action, components, prepared } = study;
+  const hessian = embedSparse(prepared.local.hessian, prepared.field, action.field);
+  return adaptedBlocks(action, components).map((b) => {
+    const i = inertia(restrictForm(b.basis, hessian), action.field);
+    const copies = b.component.irreducible.dimension / b.cut;
+    return {
+      component: b.component,
+      kernelMultiplicity: i.zero / b.cut,
+      inertia: { positive: i.positive * copies, zero: i.zero * copies, negative: i.negative * copies },
+    };
+  });
+}
+
+/** The result of `codim`. */
+export function codimResult(study: LinearStudy, parameters: number): CodimResult {
+  const { prepared, action, components, event, symplectic } = study;
+  const forms = componentForms(study);
+  const vary = prepared.declaration.vary;
+  const motion = motionOf(event.codimension, event.semisimple);
+  const unfolds = event.dimension === 0 || vary.length === 0 ? undefined : versality(event, family(study));
+  const facts: VerdictFacts | null =
+    event.dimension === 0
+      ? null
+      : {
+          parameters,
+          vary,
+          order: action.group.order,
+          kernel: event.kernel,
+          sizes: event.sizes,
+          codimension: event.codimension,
+          codimensionWithoutSymmetry: event.codimensionWithoutSymmetry,
+          motion,
+          kernelComponents: forms
+            .filter((f) => f.kernelMultiplicity > 0)
+            .map(({ component: c, kernelMultiplicity }) => ({
+              label: c.label,
+              multiplicity: kernelMultiplicity,
+              dimension: c.irreducible.dimension,
+              carriesForm: c.carriesForm,
+              trivial: c.irreducible.index === 0,
+              type: c.irreducible.type,
+            })),
+          versality: unfolds,
+        };
+  const counted = new Map(forms.map((f) => [f.component.label, f.inertia]));
+  return {
+    ...head('codim', prepared, groupSummary(action, prepared)),
+    components: componentSummaries(components).map((c) => ({ ...c, inertia: counted.get(c.label)! })),
+    inertia: inertiaOf(study.forms, action.field),
+    neutral: { dimension: 0 },
+    zero:
+      facts === null
+        ? null
+        : zeroSummary(
+            study,
+            facts.kernelComponents.map((k) => k.label),
+            motion,
+          ),
+    collisions: [],
+    verdict: verdict(facts, parameters),
+  };
+
+  function zeroSummary(s: LinearStudy, labels: readonly string[], m: ReturnType<typeof motionOf>): ZeroSummary {
+    const active = event.blocks
+      .map((b, i) => ({ b, labels: s.blockComponents[i]!.map((c) => c.label) }))
+      .filter(({ b }) => b.kernel.basis.cols > 0);
+    return {
+      dimension: event.dimension,
+      kernel: event.kernel,
+      blocks: event.sizes,
+      semisimple: event.semisimple,
+      codimension: event.codimension,
+      codimensionWithoutSymmetry: event.codimensionWithoutSymmetry,
+      motion: m,
+      subgroups: subgroupSummaries(action, symplectic, event),
+      components: labels,
+      signs: active.flatMap(({ b, labels: l }) =>
+        b.signed.map((x) => ({
+          component: l.join(' + '),
+          size: x.size,
+          count: x.count * b.block.copies,
+          positive: x.positive * b.block.copies,
+          negative: x.negative * b.block.copies,
+        })),
+      ),
+      routes: active.map(({ b, labels: l }) => ({
+        components: l,
+        class: b.block.symmetryClass,
+        partition: b.partition,
+        formula: b.formula,
+        rank: b.rank.codimension,
+      })),
+    };
+  }
+}
+
+/** The same event in the class of every subgroup up to conjugacy, by order. */
+function subgroupSummaries(action: Action, symplectic: SymplecticPart, event: ZeroEvent): SubgroupSummary[] {
+  const characters = eventCharacters(
+    action,
+    symplectic.part,
+    event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })),
+  );
+  const words = elementWords(action);
+  return subgroupCodimensions(action, subgroupsOf(action), characters).map((x) => ({
+    order: x.order,
+    reversing: x.reversing,
+    conjugates: x.conjugates,
+    codimension: x.codimension,
+    motion: motionOf(x.codimension, event.semisimple),
+    generators: x.generators.map(words),
+  }));
+}
+
+/** All classes of subgroups, or only 1 and Γ where there are too many. */
+function subgroupsOf(action: Action): SubgroupClass[] {
+  const { group } = action;
+  const whole: SubgroupClass = {
+    order: group.order,
+    elements: Int32Array.from({ length: group.order }, (_, i) => i),
+    generators: [...new Set(group.generators)],
+    conjugates: 1,
+  };
+  const trivial: SubgroupClass = { order: 1, elements: Int32Array.of(0), generators: [], conjugates: 1 };
+  if (group.order === 1) return [trivial];
+  if (group.order > SUBGROUP_ORDER_LIMIT) return [trivial, whole];
+  try {
+    return subgroupClasses(group);
+  } catch (error) {
+    if (!(error instanceof LimitError)) throw error;
+    return [trivial, whole];
+  }
+}
+
+/** An element as a word in the generators, rightmost first to act. */
+function elementWords(action: Action): (element: number) => string {
+  const { group } = action;
+  return (element) => {
+    const letters: string[] = [];
+    for (let i = element; i !== 0; i = group.parent[i]!) letters.push(action.generators[group.via[i]!]!.name);
+    const out: string[] = [];
+    for (let i = 0; i < letters.length; ) {
+      let j = i;
+      while (j < letters.length && letters[j] === letters[i]) j++;
+      out.push(j - i > 1 ? `${letters[i]}^${j - i}` : letters[i]!);
+      i = j;
+    }
+    return out.length === 0 ? '1' : out.join(' ');
+  };
+}

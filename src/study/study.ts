@@ -1,0 +1,38 @@
+/** The commands as functions: a declaration in, a result and its status out. */
+import { UsageError } from '../errors/index.ts';
+import type { Declaration } from '../model/declaration/index.ts';
+import type { OutcomeStatus, StudyCommand, StudyOptions } from './outcome.ts';
+import { isExact, prepare } from './prepare.ts';
+import type { StudyResult } from './result.ts';
+
+export interface Answer {
+  readonly result: StudyResult;
+  readonly status: OutcomeStatus;
+  readonly text?: string;
+  /** Stage results that a report is made of. */
+  readonly stages?: readonly StudyResult[];
+  readonly notes: readonly string[];
+}
+
+export const VERDICT_STATUS: Readonly<Record<string, OutcomeStatus>> = { generic: 0, 'no event': 0, 'not generic': 1, undecided: 3 };
+
+/** Answers a command. Throws the typed errors of the library for wrong input. */
+export async function study(command: StudyCommand, declaration: Declaration, options: StudyOptions = {}): Promise<Answer> {
+  const prepared = prepare(declaration);
+  const parameters = options.parameters ?? declaration.parameterCount;
+  if (!isExact(prepared)) throw new UsageError(`floating models: ${prepared.because}`);
+  switch (command) {
+    case 'check': {
+      const { checkResult } = await import('./check.ts');
+      const result = checkResult(prepared);
+      return { result, status: result.equilibrium.holds && result.symmetry.holds ? 0 : 1, notes: [] };
+    }
+    case 'codim': {
+      const { codimResult, linearStudy } = await import('./codim.ts');
+      const result = codimResult(linearStudy(prepared), parameters);
+      return { result, status: VERDICT_STATUS[result.verdict.answer]!, notes: [] };
+    }
+    default:
+      throw new UsageError(`the command ${command} is not there`);
+  }
+}
