@@ -7,7 +7,6 @@ import { type Algebraic, type FieldDemand, RealField } from '../field/index.ts';
 import { type CharacterTable, characterTable, type FiniteGroup, type RealIrreducible, realIrreducibles, subgroup } from '../group/index.ts';
 import type { SparseMatrix } from '../linear/index.ts';
 import { type Action, assembleAction } from './action.ts';
-import { leastConductor } from './subspace-search.ts';
 
 /** A subgroup of Γ with its own numbering. */
 export interface RestrictedGroup {
@@ -91,8 +90,7 @@ export function characterDemand(action: Action, part: RestrictedGroup): FieldDem
   const cosines: number[] = [];
   part.irreducibles.forEach((k, i) => {
     if (m[i] === 0) return;
-    const values = k.character;
-    cosines.push(leastConductor(field.conductor, (u) => values.every((v) => field.equal(field.galois(u, v), v)), field.units));
+    cosines.push(field.leastConductor(k.character));
   });
   return { cosines };
 }

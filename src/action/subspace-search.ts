@@ -4,7 +4,6 @@
  * best possible is β(K), the dimension of the commuting algebra. Working on eV instead of V is the Morita
  * equivalence between the block of the group algebra and its corner (common practice: symmetry-adapted bases).
  */
-import { divisors } from '../field/index.ts';
 import type { FiniteGroup } from '../group/index.ts';
 
 /** A subgroup with a real linear character. */
@@ -121,10 +120,4 @@ export function findCutters(group: FiniteGroup, irreducibles: readonly SearchedI
     for (const y of representatives.slice(1, SECOND_GENERATORS)) consider([x, y]);
   }
   return best.map((b) => b!.cutter);
-}
-
-/** Smallest d dividing n with all the given elements in Q(zeta_d), by testing automorphisms fixed on it. */
-export function leastConductor(n: number, fixed: (unit: number) => boolean, units: readonly number[]): number {
-  for (const d of divisors(n)) if (units.every((k) => (k - 1) % d !== 0 || fixed(k))) return d;
-  return n;
 }

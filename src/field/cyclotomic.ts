@@ -2,9 +2,9 @@
  * Cyclotomic fields Q(zeta_N), the home of characters. Basis 1, zeta, …, zeta^{phi(N)-1}.
  * Embedding: zeta = exp(2 pi i/N).
  */
-import { cyclotomicPolynomial, gcdInt } from './arithmetic.ts';
+import { cyclotomicPolynomial, divisors, factorize, gcdInt } from './arithmetic.ts';
 import { AbelianField, type Algebraic } from './number-field.ts';
-import { ratioToNumber } from './rational.ts';
+import { type Rational, rational, ratioToNumber } from './rational.ts';
 
 const cache = new Map<number, CyclotomicField>();
 
@@ -96,6 +96,35 @@ export class CyclotomicField extends AbelianField {
       for (let i = 0; i < m; i++) if (row[i] !== 0) out[i] = out[i]! + x * BigInt(row[i]!);
     }
     return out;
+  }
+
+  /** Smallest d dividing N such that all the given elements lie in Q(zeta_d). */
+  leastConductor(elements: readonly Algebraic[]): number {
+    const n = this.conductor;
+    return divisors(n).find((d) => this.units.every((k) => (k - 1) % d !== 0 || elements.every((a) => this.equal(this.galois(k, a), a)))) ?? n;
+  }
+
+  /**
+   * The mean of zeta_N^k over the automorphisms that fix Q(zeta_d), d dividing N: weight * zeta_order^power, order dividing d.
+   * With M the order of zeta_N^k and p^a the part of a prime p in M: nothing is left if p divides both d and M/gcd(M, d), or if
+   * p does not divide d and a > 1; a prime p with a = 1 that does not divide d gives the factor -1/(p - 1).
+   */
+  meanOfRoot(k: number, d: number): { order: number; power: number; weight: Rational } | undefined {
+    const n = this.conductor;
+    const j = ((k % n) + n) % n;
+    const m = n / gcdInt(j, n);
+    const t = j / (n / m);
+    const inside = gcdInt(m, d);
+    const outside = m / inside;
+    if (gcdInt(outside, d) !== 1) return undefined;
+    let weight = 1n;
+    for (const [p, e] of factorize(outside)) {
+      if (e > 1) return undefined;
+      weight *= BigInt(1 - p);
+    }
+    let power = 0;
+    while (inside > 1 && (power * outside - t) % inside !== 0) power++;
+    return { order: inside, power, weight: rational(1n, weight) };
   }
 
   /** zeta -> zeta^k, gcd(k, N) = 1. */

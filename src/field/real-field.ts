@@ -241,13 +241,16 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
   /** The real element of a cyclotomic field, or undefined if it is not real or not in here. */
   fromCyclotomic(from: CyclotomicField, a: Algebraic): Algebraic | undefined {
     if (!from.equal(a, from.conj(a))) return undefined;
-    // a = (a + conj a)/2 = sum of c_k cos(2 pi k/n)
+    // a = (a + conj a)/2 = sum of c_k cos(2 pi k/n), each term replaced by its mean in the least field that holds a
+    const d = from.leastConductor([a]);
     let out = this.zero;
     for (let k = 0; k < a.c.length; k++) {
       if (a.c[k] === 0n) continue;
-      const cosine = this.cos(k, from.conductor);
+      const mean = from.meanOfRoot(k, d);
+      if (mean === undefined) continue;
+      const cosine = this.cos(mean.power, mean.order);
       if (cosine === undefined) return undefined;
-      out = this.add(out, this.mul(this.fromInteger(a.c[k]!), cosine));
+      out = this.add(out, this.mul(this.fromRational(a.c[k]! * mean.weight.n, mean.weight.d), cosine));
     }
     return this.mul(out, this.fromRational(1n, a.d));
   }
