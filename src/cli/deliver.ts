@@ -20,7 +20,13 @@ async function document(outcome: Outcome, format: DocumentFormat, invocation: In
       next: `see symcodim ${invocation.command} --help`,
     });
   }
-  return line(await make({ fragment: invocation.output.fragment }));
+  const text = await make({ fragment: invocation.output.fragment });
+  if (text !== null) return line(text);
+  throw new UsageError(`this result holds nothing for --${format}`, {
+    key: `--${format}`,
+    expected: 'a command whose result has a picture',
+    next: 'try sweep, branches or report',
+  });
 }
 
 /** Everything is made before anything is written, and files are written before standard output. */
@@ -34,7 +40,7 @@ export async function deliver(outcome: Outcome, invocation: Invocation, world: W
     else contents.push({ path, text });
   }
   if (standard === undefined && !output.quiet) {
-    if (command !== 'report') standard = line(wrapText(outcome.text, world.width));
+    if (command !== 'report') standard = line(wrapText(await outcome.text(world.width), world.width));
     else if (contents.length === 0) standard = await document(outcome, 'markdown', invocation);
   }
   await writeFiles(contents);

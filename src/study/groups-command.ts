@@ -15,7 +15,7 @@ const WIDTH = 100;
 export function groupsOutcome(name: string | undefined, orderLimit?: number): Outcome {
   if (name === undefined) {
     const groups = listCatalogue();
-    return { result: { schema: 'symcodim/1', command: 'groups', groups }, status: 0, text: catalogueText(groups), documents: {} };
+    return { result: { schema: 'symcodim/1', command: 'groups', groups }, status: 0, text: () => catalogueText(groups), documents: {} };
   }
   const declared = loadCatalogueGroup(name);
   const summary = summariseGroup(declared, orderLimit);
@@ -36,7 +36,7 @@ export function groupsOutcome(name: string | undefined, orderLimit?: number): Ou
     defaultAction,
     actions,
   };
-  return { result: { schema: 'symcodim/1', command: 'groups', group }, status: 0, text: groupText(declared, summary), documents: {} };
+  return { result: { schema: 'symcodim/1', command: 'groups', group }, status: 0, text: () => groupText(declared, summary), documents: {} };
 }
 
 function catalogueText(groups: readonly CatalogueEntry[]): string {

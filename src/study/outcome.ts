@@ -20,14 +20,16 @@ export interface ResultObject {
 /** The kinds of documents that can be written. */
 export type DocumentFormat = 'latex' | 'html' | 'markdown' | 'svg';
 
-/** A document made on demand; `fragment` leaves the preamble off (LaTeX only). */
-export type DocumentMaker = (options: { readonly fragment: boolean }) => string | Promise<string>;
+/** A document made on demand, or null where the result holds nothing for it; `fragment` leaves the preamble off (LaTeX only). */
+export type DocumentMaker = (options: { readonly fragment: boolean }) => string | null | Promise<string | null>;
+
+export type TextMaker = (width?: number) => string | Promise<string>;
 
 export interface Outcome {
   readonly result: ResultObject;
   readonly status: OutcomeStatus;
-  /** For a terminal; ends without a line break; no line needs to be wrapped by hand. */
-  readonly text: string;
+  /** For a terminal of that width, or of any; ends without a line break. Made on demand, as documents are. */
+  readonly text: TextMaker;
   /** The formats this command can write; a format left out cannot be made of this result. */
   readonly documents: Readonly<Partial<Record<DocumentFormat, DocumentMaker>>>;
   /** Remarks for standard error, one sentence each, such as the term that made an answer floating. */

@@ -8,10 +8,11 @@ import { ClosedPipe, type World } from '../../src/cli/world.ts';
 import { InputError, UndecidedError } from '../../src/errors/index.ts';
 import type { Outcome } from '../../src/study/outcome.ts';
 
+const text = 'not generic: two parameters are needed, and only one may be tuned here';
 const outcome: Outcome = {
   result: { schema: 'symcodim/1', command: 'codim', verdict: { answer: 'not generic' } },
   status: 1,
-  text: 'not generic: two parameters are needed, and only one may be tuned here',
+  text: () => text,
   documents: { latex: ({ fragment }) => (fragment ? 'FRAGMENT' : 'DOCUMENT'), markdown: async () => '# Report' },
   notes: ['exp(1) made the answer floating'],
 };
@@ -50,7 +51,7 @@ describe('program', () => {
   it('prints the text, tells the remarks and hands the status on', async () => {
     expect(await run(['codim', 'm.yaml'])).toEqual({
       status: 1,
-      out: `${outcome.text}\n`,
+      out: `${text}\n`,
       messages: 'symcodim: exp(1) made the answer floating\n',
     });
   });
@@ -89,6 +90,12 @@ describe('program', () => {
     expect(messages).toContain('codim cannot write --svg');
     expect(existsSync(file)).toBe(false);
     rmSync(folder, { recursive: true });
+  });
+
+  it('says where there is no picture', async () => {
+    const seen = await run(['codim', 'm.yaml', '--svg', '-'], async () => ({ ...outcome, documents: { svg: () => null } }));
+    expect([seen.status, seen.out]).toEqual([2, '']);
+    expect(seen.messages).toContain('holds nothing for --svg');
   });
 
   it('wraps to the terminal', async () => {

@@ -98,7 +98,7 @@ describe('one group', () => {
     const { text, result, status } = groupsOutcome('dihedral:5');
     expect(status).toBe(0);
     for (const piece of ['order 10', 'plane, 2 coordinates', 'r: (1 2 3 4 5)', 's: (2 5)(3 4)', 'χ4', 'a = (-1 + sqrt(5))/2'])
-      expect(text).toContain(piece);
+      expect(text()).toContain(piece);
     expect(result).toMatchObject({ command: 'groups', group: { name: 'dihedral:5', order: 10, defaultAction: 'plane' } });
   });
 
