@@ -339,11 +339,21 @@ export class ExactConstants implements Constants<Value> {
     if (r.d > ANGLE_LIMIT) return this.#turnAtom(v);
     const n = Number(2n * r.d);
     const k = Number(((r.n % (2n * r.d)) + 2n * r.d) % (2n * r.d));
-    const c = this.#field.fromConstant(cosine(this.numbers, k, n));
-    const s = this.#field.fromConstant(sine(this.numbers, k, n));
-    if (this.#field.isZero(rest)) return { cos: c, sin: s };
-    const w = this.#turnAtom(rest);
     const f = this.#field;
+    const { numbers } = this;
+    // only what is asked for may ask for a larger field
+    if (f.isZero(rest))
+      return {
+        get cos() {
+          return f.fromConstant(cosine(numbers, k, n));
+        },
+        get sin() {
+          return f.fromConstant(sine(numbers, k, n));
+        },
+      };
+    const c = f.fromConstant(cosine(numbers, k, n));
+    const s = f.fromConstant(sine(numbers, k, n));
+    const w = this.#turnAtom(rest);
     return { cos: f.sub(f.mul(c, w.cos), f.mul(s, w.sin)), sin: f.add(f.mul(s, w.cos), f.mul(c, w.sin)) };
   }
   #turnAtom(w: Value): { cos: Value; sin: Value } {
