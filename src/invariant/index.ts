@@ -1,0 +1,11 @@
+/** Rings of invariants of finite groups: Molien series, generators, equivariants, relations, rewriting. */
+export * from './degrees.ts';
+export * from './dimensions.ts';
+export * from './generators.ts';
+export * from './letters.ts';
+export * from './linear-action.ts';
+export * from './molien.ts';
+export * from './parameters.ts';
+export * from './primitive.ts';
+export { type ComplexCoordinate, complexCoordinates, describeElement, type Readable } from './readable.ts';
+export * from './reynolds.ts';
