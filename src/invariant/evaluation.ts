@@ -65,6 +65,10 @@ export class Span {
   get rank(): number {
     return this.#pivots.length;
   }
+  /** Column of the leading entry of each row. */
+  get pivots(): readonly number[] {
+    return this.#pivots;
+  }
   /** Adds a vector (its first `width` entries); true if it was independent of the others. */
   add(v: Int32Array): boolean {
     const p = this.#p;

@@ -71,7 +71,6 @@ export function bySimplicity(list: readonly BasisElement[]): BasisElement[] {
     }))
     .sort((x, y) => x.terms - y.terms || x.imaginary - y.imaginary || x.digits - y.digits)
     .map(({ b }) => b);
-}) => b);
 }
 
 export const keyOf = (degrees: readonly number[]): string => degrees.join(',');
