@@ -19,7 +19,9 @@ const flags = (name: CommandName): string[] =>
 /** What bash offers for a value or an argument. */
 function bashOffer(completion: Completion | undefined, choices: readonly string[] | undefined, groups: readonly string[]): string {
   if (choices !== undefined) return `COMPREPLY=($(compgen -W '${choices.join(' ')}' -- "$word"))`;
-  if (completion === 'group') return `COMPREPLY=($(compgen -W '${groups.join(' ')}' -- "$word"))`;
+  // After the beginning of a family, such as dihedral:, the number is typed without a blank.
+  if (completion === 'group')
+    return `COMPREPLY=($(compgen -W '${groups.join(' ')}' -- "$word")); [[ $COMPREPLY == *: ]] && compopt -o nospace 2>/dev/null`;
   if (completion === 'file') return `COMPREPLY=($(compgen -f -- "$word"))`;
   return 'COMPREPLY=()';
 }

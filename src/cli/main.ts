@@ -8,6 +8,9 @@ import { ClosedPipe, type World } from './world.ts';
 const { env } = process;
 const plain = (env.NO_COLOR ?? '') !== '' || env.TERM === 'dumb';
 
+/** Takes the line of a terminal away. */
+const CLEAR = '\r\u001b[K';
+let progressShown = false;
 let inputUsed = false;
 
 // The streams are touched only where they are used: each costs time at the start.
@@ -23,7 +26,8 @@ const world: World = {
     }),
   tell: (text) => {
     if (process.stderr.listenerCount('error') === 0) process.stderr.on('error', () => {});
-    process.stderr.write(`${text}\n`);
+    process.stderr.write(`${progressShown ? CLEAR : ''}${text}\n`);
+    progressShown = false;
   },
   input: () => {
     inputUsed = true;
@@ -39,7 +43,9 @@ const world: World = {
     return process.stderr.isTTY && !plain;
   },
   progress: (share) => {
-    if (process.stderr.isTTY) process.stderr.write(share >= 1 ? '\r\u001b[K' : `\r${Math.floor(100 * share)} %`);
+    if (!process.stderr.isTTY) return;
+    progressShown = share < 1;
+    process.stderr.write(progressShown ? `\r${Math.floor(100 * share)} %` : CLEAR);
   },
   version: () => (JSON.parse(readFileSync(new URL('../../package.json', import.meta.url), 'utf8')) as { version: string }).version,
   trace: (env.SYMCODIM_TRACE ?? '') !== '',

@@ -243,6 +243,20 @@ describe('shells and manual', () => {
     expect(offer('codim', '--neutral', '')).toEqual(['find']);
   });
 
+  it.runIf(has('fish'))('fish offers commands, options and values', () => {
+    const file = join(folder, 'completion.fish');
+    writeFileSync(file, run(['completions', 'fish']).stdout);
+    const offer = (line: string): string[] =>
+      execFileSync('fish', ['-c', `source ${file}; complete -C '${line}'`], { encoding: 'utf8' })
+        .trim()
+        .split('\n')
+        .map((entry) => entry.split('\t')[0]!);
+    expect(offer('symcodim cod')).toEqual(['codim']);
+    expect(offer('symcodim codim --hami')).toEqual(['--hamiltonian']);
+    expect(offer('symcodim codim --group icos')).toEqual(['icosahedral']);
+    expect(offer('symcodim completions b')).toEqual(['bash']);
+  });
+
   it.runIf(has('groff'))('groff sets the manual page without a warning', () => {
     const { status, stdout, stderr } = spawnSync('groff', ['-man', '-Kutf8', '-Tutf8', '-P-cbou', '-ww'], {
       encoding: 'utf8',
