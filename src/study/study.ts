@@ -18,6 +18,13 @@ export const VERDICT_STATUS: Readonly<Record<string, OutcomeStatus>> = { generic
 
 /** Answers a command. Throws the typed errors of the library for wrong input. */
 export async function study(command: StudyCommand, declaration: Declaration, options: StudyOptions = {}): Promise<Answer> {
+  switch (command) {
+    // these keep parameters as symbols, or need no Hamiltonian
+    case 'invariants': {
+      const { invariantsResult } = await import('./invariants.ts');
+      return { result: invariantsResult(declaration, options.degree ?? declaration.degree), status: 0, notes: [] };
+    }
+  }
   const prepared = prepare(declaration);
   const parameters = options.parameters ?? declaration.parameterCount;
   if (!isExact(prepared)) throw new UsageError(`floating models: ${prepared.because}`);
