@@ -22,6 +22,7 @@ import type { Algebraic, RealField } from '../field/index.ts';
 import { type SubgroupClass, subgroupClasses } from '../group/index.ts';
 import { above, dense, fromColumns, identity, image, inertia, kernel, type Matrix, sub } from '../linear/index.ts';
 import { cubicAlong } from '../model/local.ts';
+import { linearCertificate } from './certificate.ts';
 import { actionOf, type Prepared, requireHolds } from './prepare.ts';
 import type { CodimResult, InertiaSummary, SubgroupSummary, ZeroSummary } from './result.ts';
 import { componentSummaries, groupSummary, head } from './summary.ts';
@@ -116,10 +117,10 @@ export interface ComponentForms {
   readonly inertia: InertiaSummary;
 }
 
-export function componentForms(study: LinearStudy): ComponentForms[] {
-  const { action, components, prepared } = study;
+export function componentForms(study: LinearStudy, blocks = adaptedBlocks(study.action, study.components)): ComponentForms[] {
+  const { action, prepared } = study;
   const hessian = embedSparse(prepared.local.hessian, prepared.field, action.field);
-  return adaptedBlocks(action, components).map((b) => {
+  return blocks.map((b) => {
     const i = inertia(restrictForm(b.basis, hessian), action.field);
     const copies = b.component.irreducible.dimension / b.cut;
     return {
@@ -133,7 +134,8 @@ export function componentForms(study: LinearStudy): ComponentForms[] {
 /** The result of `codim`. */
 export function codimResult(study: LinearStudy, parameters: number): CodimResult {
   const { prepared, action, components, event, symplectic } = study;
-  const forms = componentForms(study);
+  const blocks = adaptedBlocks(action, components);
+  const forms = componentForms(study, blocks);
   const vary = prepared.declaration.vary;
   const motion = motionOf(event.codimension, event.semisimple);
   const unfolds = event.dimension === 0 || vary.length === 0 ? undefined : versality(event, family(study));
@@ -177,6 +179,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
           ),
     collisions: [],
     verdict: verdict(facts, parameters),
+    certificate: { linear: linearCertificate(study, blocks) },
   };
 
   function zeroSummary(s: LinearStudy, labels: readonly string[], m: ReturnType<typeof motionOf>): ZeroSummary {

@@ -157,6 +157,8 @@ export interface StudyResult {
   readonly equilibrium: { readonly holds: boolean; readonly gradient: Value; readonly point?: Readonly<Record<string, Value>> };
   readonly symmetry: { readonly holds: boolean; readonly generators: readonly GeneratorSummary[] };
   readonly caution?: string;
+  /** What `verify` needs; see certificate.ts. */
+  readonly certificate?: object;
 }
 
 export interface CodimResult extends StudyResult {
