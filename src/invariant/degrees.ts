@@ -6,8 +6,8 @@
 import { divisors } from '../field/index.ts';
 import type { GradedDimensions } from './dimensions.ts';
 
-/** Nodes of the search before it gives up. */
-const NODES_MOST = 60_000;
+/** Nodes of the search, weighted by the factors chosen, before it gives up. */
+const NODES_MOST = 400_000;
 
 /** orders[m] = largest multiplicity of a primitive m-th root of unity as an eigenvalue of one element. */
 export function poleOrders(dimensions: GradedDimensions): Map<number, number> {
@@ -47,7 +47,7 @@ export function denominatorDegrees(n: number, orders: ReadonlyMap<number, number
     const slots = n - chosen.length;
     for (const [m, e] of needs) if (e - chosen.filter((d) => d % m === 0).length > slots) return false;
     if (slots === 0) return rest === 0 && partial(chosen.reduce((s, d) => s + d - 1, 0)).every((c) => c >= 0);
-    if (++nodes > NODES_MOST) return false;
+    if ((nodes += chosen.length + 1) > NODES_MOST) return false;
     const most = Math.floor(rest / slots);
     if (most < least) return false;
     const current = partial(most);

@@ -2,7 +2,7 @@
  * Molien series M(t) = |Γ|⁻¹ Σ ψ̄(g)/det(1 - tρ(g)) as a rational function with a denominator of degrees, and its
  * expansion; ψ = 1 counts invariants, ψ = the character of a second action counts equivariants.
  */
-import { ShapeError } from '../errors/index.ts';
+import { LimitError, ShapeError } from '../errors/index.ts';
 import { denominatorDegrees, poleOrders } from './degrees.ts';
 import { GradedDimensions, type Twist } from './dimensions.ts';
 import { dualAction, type LinearAction, sumOfActions } from './linear-action.ts';
@@ -17,6 +17,9 @@ export interface MolienSeries {
   readonly text: string;
   readonly latex: string;
 }
+
+/** Highest degree of a numerator. */
+export const NUMERATOR_MOST = 400;
 
 export interface MolienOptions {
   /** Highest degree of the expansion; 12 by default. */
@@ -49,6 +52,10 @@ export function molien(action: LinearAction, options: MolienOptions = {}): Molie
     count = (d) => twisted.dimension([d]);
   }
   const top = degrees.reduce((s, d) => s + d - 1, 0);
+  if (top > NUMERATOR_MOST)
+    throw new LimitError(`the numerator of the Molien series would have degree ${top}; the limit is ${NUMERATOR_MOST}`, {
+      next: 'ask for the invariants of a component, not of the whole space',
+    });
   const numerator = Array.from({ length: top + 1 }, (_, d) => count(d));
   for (const e of degrees) for (let i = top; i >= e; i--) numerator[i] = numerator[i]! - numerator[i - e]!;
   while (numerator.length > 1 && numerator.at(-1) === 0) numerator.pop();
@@ -77,7 +84,7 @@ function writeFraction(numerator: readonly number[], degrees: readonly number[])
   const text = groups.map(({ d, e }) => `(1 - t${d === 1 ? '' : `^${d}`})${e === 1 ? '' : `^${e}`}`).join('');
   const latex = groups.map(({ d, e }) => `(1 - t${d === 1 ? '' : `^{${d}}`})${e === 1 ? '' : `^{${e}}`}`).join('');
   const top = sum((d) => (d === 1 ? 't' : `t^${d}`));
-  const bottom = groups.length === 1 && groups[0]!.e === 1 ? text : `(${text})`;
+  const bottom = groups.length === 1 ? text : `(${text})`;
   return {
     text: text === '' ? top : `${terms.length > 1 ? `(${top})` : top}/${bottom}`,
     latex: latex === '' ? sum((d) => (d === 1 ? 't' : `t^{${d}}`)) : `\\frac{${sum((d) => (d === 1 ? 't' : `t^{${d}}`))}}{${latex}}`,
