@@ -1,6 +1,7 @@
 /** The commands as functions: a declaration in, a result and its status out. */
 import { UsageError } from '../errors/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
+import { certified } from './certificate.ts';
 import type { OutcomeStatus, StudyCommand, StudyOptions } from './outcome.ts';
 import { isExact, prepare } from './prepare.ts';
 import type { StudyResult } from './result.ts';
@@ -16,14 +17,23 @@ export interface Answer {
 
 export const VERDICT_STATUS: Readonly<Record<string, OutcomeStatus>> = { generic: 0, 'no event': 0, 'not generic': 1, undecided: 3 };
 
-/** Answers a command. Throws the typed errors of the library for wrong input. */
+/** Answers a command, with a certificate for `verify`. Throws the typed errors of the library for wrong input. */
 export async function study(command: StudyCommand, declaration: Declaration, options: StudyOptions = {}): Promise<Answer> {
+  const answer = await answerOf(command, declaration, options);
+  return { ...answer, result: certified(answer.result, declaration, options) };
+}
+
+async function answerOf(command: StudyCommand, declaration: Declaration, options: StudyOptions): Promise<Answer> {
   switch (command) {
     // these keep parameters as symbols, or need no Hamiltonian
     case 'invariants': {
       const { invariantsResult } = await import('./invariants.ts');
-      return { result: invariantsResult(declaration, options.degree ?? declaration.degree), status: 0, notes: [] };
+      return { result: invariantsResult(declaration, declaration.degree), status: 0, notes: [] };
     }
+  }
+  if (command === 'report') {
+    const { reportAnswer } = await import('./report.ts');
+    return reportAnswer(answerOf, declaration, options);
   }
   const prepared = prepare(declaration);
   const parameters = options.parameters ?? declaration.parameterCount;
