@@ -8,3 +8,4 @@ export * from './multiplicity-space.ts';
 export * from './orbit.ts';
 export * from './subspace-search.ts';
 export * from './symmetry-class.ts';
+export * from './point-labels.ts';
