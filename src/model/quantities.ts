@@ -17,6 +17,7 @@ import {
   withField,
 } from './expression/index.ts';
 import { type ModelGenerator, modelGenerators } from './generators.ts';
+import { declaredFields, type VectorField } from './neutral.ts';
 import { numericValue } from './numeric-value.ts';
 
 /** The exact part of a model. */
@@ -35,6 +36,8 @@ export interface Quantities {
   readonly point: readonly Algebraic[];
   readonly pointExpressions: ReadonlyMap<string, Expression>;
   readonly generators: readonly ModelGenerator[];
+  /** Declared continuous symmetries. */
+  readonly neutral: readonly VectorField[];
   /** The first value that has no exact form, if any: then the model is floating and `values`, `point` hold rational stand-ins. */
   readonly inexact?: string;
 }
@@ -85,6 +88,7 @@ export function readQuantities(declaration: Declaration): Quantities {
       point,
       form: symplecticForm(declaration, f, values, parse),
       generators: modelGenerators(declaration, f, values, parse),
+      neutral: declaredFields(declaration, f, values, parse),
       inexact,
     };
   });

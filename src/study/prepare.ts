@@ -13,6 +13,7 @@ import { type LocalExpansion, localExpansion } from '../model/local.ts';
 import { polynomialDegree } from '../model/polynomial-energy.ts';
 import { type Quantities, readQuantities } from '../model/quantities.ts';
 import type { Polynomial, PolynomialRing } from '../polynomial/index.ts';
+import { type NeutralSymmetry, neutralSymmetry } from './neutral.ts';
 
 /** Degree to which invariance of an H that is no polynomial is checked. */
 export const INVARIANCE_DEGREE = 4;
@@ -40,6 +41,8 @@ export interface Prepared {
   readonly invarianceDegree: number | 'all';
   readonly equilibriumHolds: boolean;
   readonly symmetryHolds: boolean;
+  /** Continuous symmetries, declared or found. */
+  readonly neutral?: NeutralSymmetry;
 }
 
 /** A model that is not exact, and why. */
@@ -102,6 +105,7 @@ export function prepare(declaration: Declaration): Prepared | NotExact {
       ...(reason === undefined ? {} : { reason: reason.text }),
     };
   });
+  const neutral = neutralSymmetry(declaration, quantities, hamiltonian, field, form, point, generators);
   return {
     declaration,
     quantities,
@@ -113,6 +117,7 @@ export function prepare(declaration: Declaration): Prepared | NotExact {
     invarianceDegree: series.degree,
     equilibriumHolds: local.gradient.every((x) => field.isZero(x)),
     symmetryHolds: generators.every((g) => g.reason === undefined),
+    ...(neutral === undefined ? {} : { neutral }),
   };
 }
 
