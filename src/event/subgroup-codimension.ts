@@ -28,11 +28,14 @@ export interface SubgroupCodimension {
   readonly generators: readonly number[];
 }
 
+/** What the characters need of a block of the flow. */
+export type EventBlock = Pick<FlowBlock, 'irreducible' | 'exchanged' | 'cut'>;
+
 /** The characters of the M_j from the blocks of the flow; counts[b][j] blocks of size j on the multiplicity space of block b. */
 export function eventCharacters(
   action: Action,
   part: RestrictedGroup,
-  blocks: readonly { readonly block: FlowBlock; readonly counts: readonly number[] }[],
+  blocks: readonly { readonly block: EventBlock; readonly counts: readonly number[] }[],
 ): EventCharacter[] {
   const sizes = Math.max(0, ...blocks.map((b) => b.counts.length - 1));
   const t = action.signs.indexOf(-1);

@@ -4,7 +4,6 @@ import {
   adaptedBlocks,
   type Component,
   type Components,
-  componentsOf,
   componentsOfBlock,
   cutterMatrix,
   embedSparse,
@@ -15,7 +14,8 @@ import {
   tidy,
 } from '../action/index.ts';
 import { LimitError } from '../errors/index.ts';
-import { eventCharacters, subgroupCodimensions } from '../event/subgroup-codimension.ts';
+import { type EventBlock, eventCharacters, subgroupCodimensions } from '../event/subgroup-codimension.ts';
+import { freeUnfoldingForms, quadraticText, unfoldingForms } from '../event/unfolding.ts';
 import { type Family, versality } from '../event/versality.ts';
 import { type BlockForms, blockForms, motionOf, type ZeroEvent, zeroEvent } from '../event/zero-event.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
@@ -23,6 +23,7 @@ import { type SubgroupClass, subgroupClasses } from '../group/index.ts';
 import { above, dense, fromColumns, identity, image, inertia, kernel, type Matrix, sub } from '../linear/index.ts';
 import { cubicAlong } from '../model/local.ts';
 import { linearCertificate } from './certificate.ts';
+import { labelledComponents } from './labels.ts';
 import { actionOf, type Prepared, requireHolds } from './prepare.ts';
 import type { CodimResult, InertiaSummary, SubgroupSummary, ZeroSummary } from './result.ts';
 import { componentSummaries, groupSummary, head } from './summary.ts';
@@ -30,6 +31,12 @@ import { type VerdictFacts, verdict } from './verdict.ts';
 
 /** Subgroups of larger groups are not enumerated. */
 export const SUBGROUP_ORDER_LIMIT = 2000;
+
+/** Unfoldings are written out up to this many terms, on phase spaces up to this dimension. */
+export const UNFOLDING_TERMS = 24;
+export const UNFOLDING_DIMENSION = 40;
+/** A term with a longer text is not readable in these coordinates; then none is written. */
+export const UNFOLDING_LENGTH = 600;
 
 /** The linear analysis of one exact model: what codim, report and verify share. */
 export interface LinearStudy {
@@ -47,7 +54,7 @@ export interface LinearStudy {
 export function linearStudy(prepared: Prepared): LinearStudy {
   requireHolds(prepared);
   const action = actionOf(prepared);
-  const components = componentsOf(action);
+  const components = labelledComponents(prepared.declaration, action);
   const symplectic = symplecticPart(action);
   const flow = flowBlocks(action, symplectic);
   const forms = blockForms(flow, embedSparse(prepared.local.hessian, prepared.field, action.field), action.form);
@@ -194,7 +201,12 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
       codimension: event.codimension,
       codimensionWithoutSymmetry: event.codimensionWithoutSymmetry,
       motion: m,
-      subgroups: subgroupSummaries(action, symplectic, event),
+      subgroups: subgroupSummaries(
+        action,
+        symplectic.part,
+        event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })),
+        event.semisimple,
+      ),
       components: labels,
       signs: active.flatMap(({ b, labels: l }) =>
         b.signed.map((x) => ({
@@ -205,6 +217,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
           negative: x.negative * b.block.copies,
         })),
       ),
+      ...unfoldings(s),
       routes: active.map(({ b, labels: l }) => ({
         components: l,
         class: b.block.symmetryClass,
@@ -216,20 +229,43 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
   }
 }
 
-/** The same event in the class of every subgroup up to conjugacy, by order. */
-function subgroupSummaries(action: Action, symplectic: SymplecticPart, event: ZeroEvent): SubgroupSummary[] {
-  const characters = eventCharacters(
-    action,
-    symplectic.part,
-    event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })),
-  );
+/** Normal spaces as quadratic Hamiltonians, with and without the symmetry, where they are small enough to be written out. */
+function unfoldings(study: LinearStudy): { unfolding?: readonly string[]; unfoldingWithoutSymmetry?: readonly string[] } {
+  const { action, event, prepared } = study;
+  const { names } = prepared.quantities;
+  const write = (forms: readonly Matrix<Algebraic>[]) => forms.map((q) => quadraticText(q, names, action.field));
+  if (event.codimension > UNFOLDING_TERMS || action.dimension > UNFOLDING_DIMENSION) return {};
+  const own = unfoldingForms(event, action);
+  const free = freeUnfoldingForms(event, action, dense(embedSparse(prepared.local.hessian, prepared.field, action.field)));
+  const readable = (forms: readonly Matrix<Algebraic>[] | undefined) => {
+    const texts = forms === undefined ? [] : write(forms);
+    return texts.length > 0 && texts.every((t) => t.length <= UNFOLDING_LENGTH) ? texts : undefined;
+  };
+  const [unfolding, unfoldingWithoutSymmetry] = [readable(own), readable(free)];
+  return {
+    ...(unfolding === undefined ? {} : { unfolding }),
+    ...(unfoldingWithoutSymmetry === undefined ? {} : { unfoldingWithoutSymmetry }),
+  };
+}
+
+/**
+ * The same event in the class of every subgroup up to conjugacy, by order; counts[j] blocks of size j on the multiplicity space
+ * of each block of the flow.
+ */
+export function subgroupSummaries(
+  action: Action,
+  part: SymplecticPart['part'],
+  blocks: readonly { readonly block: EventBlock; readonly counts: readonly number[] }[],
+  semisimple: boolean,
+): SubgroupSummary[] {
+  const characters = eventCharacters(action, part, blocks);
   const words = elementWords(action);
   return subgroupCodimensions(action, subgroupsOf(action), characters).map((x) => ({
     order: x.order,
     reversing: x.reversing,
     conjugates: x.conjugates,
     codimension: x.codimension,
-    motion: motionOf(x.codimension, event.semisimple),
+    motion: motionOf(x.codimension, semisimple),
     generators: x.generators.map(words),
   }));
 }

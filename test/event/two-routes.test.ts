@@ -3,12 +3,12 @@
  * against brute force: the rank of the adjoint map on the whole generalised kernel with the generators as they are.
  */
 import { describe, expect, it } from 'vitest';
+import { coordinateMap, embedSparse, flowBlocks, symplecticPart } from '../../src/action/index.ts';
 import { adjointRank } from '../../src/event/adjoint-rank.ts';
 import { zeroChain } from '../../src/event/chain.ts';
 import { generalisedKernel, poisson } from '../../src/event/generalised-kernel.ts';
 import { codimensionUnder, eventCharacters } from '../../src/event/subgroup-codimension.ts';
 import { blockForms, zeroEvent } from '../../src/event/zero-event.ts';
-import { coordinateMap, embedSparse, flowBlocks, symplecticPart } from '../../src/action/index.ts';
 import { congruence, inverse, multiply, sparse } from '../../src/linear/index.ts';
 import { action } from '../support/actions.ts';
 import { randomModel } from '../support/random-models.ts';
@@ -41,12 +41,29 @@ describe(`two routes to the codimension, ${MODELS} random models, seed ${SEED}`,
       const operators = model.generators.map((g) => ({
         matrix: coordinates(multiply(g, e)),
         inverse: coordinates(multiply(inverse(g), e)),
-        sign: field.equal(congruence(g, w).data.find((x) => !field.isZero(x))!, w.data[congruence(g, w).data.findIndex((x) => !field.isZero(x))]!) ? (1 as const) : (-1 as const),
+        sign: field.equal(
+          congruence(g, w).data.find((x) => !field.isZero(x))!,
+          w.data[congruence(g, w).data.findIndex((x) => !field.isZero(x))]!,
+        )
+          ? (1 as const)
+          : (-1 as const),
       }));
       expect(adjointRank(restricted, operators, field.reduction()).codimension, where).toBe(event.codimension);
-      if (event.dimension <= 12) expect(adjointRank(restricted, [], field.reduction()).codimension, where).toBe(event.codimensionWithoutSymmetry);
-      const characters = eventCharacters(act, part.part, event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })));
-      expect(codimensionUnder(act, Array.from({ length: act.group.order }, (_, k) => k), characters), where).toBe(event.codimension);
+      if (event.dimension <= 12)
+        expect(adjointRank(restricted, [], field.reduction()).codimension, where).toBe(event.codimensionWithoutSymmetry);
+      const characters = eventCharacters(
+        act,
+        part.part,
+        event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })),
+      );
+      expect(
+        codimensionUnder(
+          act,
+          Array.from({ length: act.group.order }, (_, k) => k),
+          characters,
+        ),
+        where,
+      ).toBe(event.codimension);
       expect(codimensionUnder(act, [0], characters), where).toBe(event.codimensionWithoutSymmetry);
     }
     expect(seen.events).toBeGreaterThan(MODELS / 4);
