@@ -1,177 +1,342 @@
 /**
  * Invariant forms of given degrees for any exact matrices: the kernel of all ρ(g) - 1, g a generator, found modulo
- * primes under every embedding of the field, reconstructed, and checked exactly. Monomials that the generators
- * never mix are kept apart, so each elimination is small.
+ * primes under every embedding of the field and reconstructed. Monomials that the generators never mix are kept
+ * apart, so each elimination is small.
+ *
+ * The result is checked exactly: the coordinates of ρ(g)f - f over the integral basis are, up to a common
+ * denominator, integers below a bound that is computed; they vanish if they do modulo primes whose product exceeds
+ * twice the bound.
  */
 import { LimitError } from '../errors/index.ts';
-import { type Algebraic, PrimeField } from '../field/index.ts';
+import { type Algebraic, gcd, mulAddMod } from '../field/index.ts';
 import { modularKernel } from '../linear/index.ts';
-import { chineseRemainder, type Monomial, type Polynomial, PolynomialRing, reconstructRational } from '../polynomial/index.ts';
+import { chineseRemainder, type Monomial, type Polynomial, type PolynomialRing, reconstructRational } from '../polynomial/index.ts';
 import { CommonReduction } from './common-reduction.ts';
 import { Embeddings } from './embeddings.ts';
 import { gradedMonomials } from './graded-monomials.ts';
 import type { LinearAction } from './linear-action.ts';
+import { kroneckerRow, MonomialLayers, type SparseRow, SymmetricPowers } from './symmetric-powers.ts';
 
 /** Most monomials of one multidegree, and most of them in one elimination. */
 export const MONOMIALS_MOST = 20_000;
 export const MIXED_MOST = 1_500;
 const PRIMES_MOST = 40;
 
-interface Image {
-  /** Per mixed set of monomials: the free ones and the kernel, one row each. */
-  readonly free: readonly (readonly number[])[];
+interface Kernel {
+  /** Per mixed set of monomials the leading ones of its kernel. */
+  readonly leads: readonly (readonly number[])[];
+  /** One row for each form, entries by monomial. */
   readonly rows: readonly Int32Array[];
 }
 
-/** A basis, each with coefficient 1 at a leading monomial that no other contains. Throws LimitError where it is too large. */
-export function fixedForms(action: LinearAction, ring: PolynomialRing<Algebraic>, degrees: readonly number[]): Polynomial<Algebraic>[] {
-  const monomials = gradedMonomials(action.blocks, degrees);
-  if (monomials.length > MONOMIALS_MOST)
-    throw new LimitError(`${monomials.length} monomials of degrees ${degrees.join(', ')}; the limit is ${MONOMIALS_MOST}`, {
-      next: 'ask for a lower degree',
-    });
-  const { field } = action;
-  let previous: { values: bigint[][][]; modulus: bigint; shape: string } | undefined;
-  for (let index = 0; index < PRIMES_MOST; index++) {
-    const embeddings = new Embeddings(field, CommonReduction.of(field, 1, index));
-    const { p } = embeddings.reduction;
-    const images = distinctImages(action, embeddings, (k) => kernelImage(action, embeddings, k, monomials));
-    const shape = JSON.stringify(images[0]!.free);
-    if (images.some((x) => JSON.stringify(x.free) !== shape) || (previous !== undefined && previous.shape !== shape)) continue;
-    const values = images[0]!.rows.map((row, r) => Array.from(row, (_, j) => embeddings.coordinates(images.map((x) => x.rows[r]![j]!))));
-    if (previous === undefined) previous = { values: values.map((r) => r.map((c) => c.map(BigInt))), modulus: BigInt(p), shape };
-    else {
-      const old = previous;
-      previous = {
-        values: values.map((r, a) => r.map((c, b) => c.map((x, i) => chineseRemainder(old.values[a]![b]![i]!, old.modulus, x, p)))),
-        modulus: old.modulus * BigInt(p),
-        shape,
-      };
-    }
-    const forms = rebuild(ring, field, monomials, previous.values, previous.modulus);
-    if (forms?.every((f) => action.generatorMatrices.every((g) => ring.equal(ring.linearSubstitution(f, g), f)))) return forms;
+/** The generators of an action modulo one prime, one copy for each distinct embedding of the field. */
+interface Images {
+  readonly embeddings: Embeddings;
+  /** Number of the copy that embedding k uses. */
+  readonly copy: readonly number[];
+  /** powers[copy][generator][block] */
+  readonly powers: readonly (readonly (readonly SymmetricPowers[])[])[];
+}
+
+export class FixedForms {
+  readonly #action: LinearAction;
+  readonly #ring: PolynomialRing<Algebraic>;
+  readonly #layers: readonly MonomialLayers[];
+  readonly #images: Images[] = [];
+
+  constructor(action: LinearAction, ring: PolynomialRing<Algebraic>) {
+    this.#action = action;
+    this.#ring = ring;
+    this.#layers = action.blocks.map((b) => new MonomialLayers(b.length));
   }
-  throw new LimitError(`the invariants of degrees ${degrees.join(', ')} have coefficients too large to reconstruct`, {
-    next: 'ask for a lower degree',
-  });
-}
 
-/** Embeddings that agree on the generators give the same kernel. */
-function distinctImages(action: LinearAction, embeddings: Embeddings, make: (k: number) => Image): Image[] {
-  const known = new Map<string, Image>();
-  return Array.from({ length: embeddings.count }, (_, k) => {
-    const key = action.generatorMatrices
-      .map((m) => m.data.map((x) => (m.field.isZero(x) ? 0 : embeddings.apply(k, x))).join(','))
-      .join(';');
-    let image = known.get(key);
-    if (image === undefined) known.set(key, (image = make(k)));
-    return image;
-  });
-}
-
-function kernelImage(action: LinearAction, embeddings: Embeddings, k: number, monomials: readonly Monomial[]): Image {
-  const { p } = embeddings.reduction;
-  const ring = new PolynomialRing<number>(new PrimeField(p), action.names);
-  const place = new Map(monomials.map((m, i) => [m, i] as const));
-  const root = Array.from(monomials.keys());
-  const find = (i: number): number => {
-    while (root[i] !== i) i = root[i] = root[root[i]!]!;
-    return i;
-  };
-  const columns = action.generatorMatrices.map((g) => {
-    const n = action.dimension;
-    const forms = Array.from({ length: n }, (_, i) =>
-      ring.linearForm(
-        Array.from({ length: n }, (_, j) => (g.field.isZero(g.data[i * n + j]!) ? 0 : embeddings.apply(k, g.data[i * n + j]!))),
-      ),
-    );
-    const cache = new Map<Monomial, Polynomial<number>>([['', ring.one]]);
-    const image = (m: Monomial): Polynomial<number> => {
-      let out = cache.get(m);
-      if (out === undefined) cache.set(m, (out = ring.mul(image(m.slice(0, -1)), forms[m.charCodeAt(m.length - 1)]!)));
-      return out;
-    };
-    return monomials.map((m, i) => {
-      const q = image(m);
-      for (const other of q.monomials) {
-        const [a, b] = [find(i), find(place.get(other)!)];
-        root[Math.max(a, b)] = Math.min(a, b);
-      }
-      return q;
-    });
-  });
-  const sets = new Map<number, number[]>();
-  monomials.forEach((_, i) => {
-    const r = find(i);
-    const list = sets.get(r);
-    if (list === undefined) sets.set(r, [i]);
-    else list.push(i);
-  });
-  const free: number[][] = [];
-  const rows: Int32Array[] = [];
-  for (const set of sets.values()) {
-    const size = set.length;
-    if (size > MIXED_MOST)
-      throw new LimitError(`the action mixes ${size} monomials of one degree; the limit is ${MIXED_MOST}`, {
+  /** A basis, each with coefficient 1 at a leading monomial that no other contains. Throws LimitError where it is too large. */
+  basis(degrees: readonly number[]): Polynomial<Algebraic>[] {
+    const { blocks } = this.#action;
+    const monomials = gradedMonomials(blocks, degrees);
+    if (monomials.length > MONOMIALS_MOST)
+      throw new LimitError(`${monomials.length} monomials of degrees ${degrees.join(', ')}; the limit is ${MONOMIALS_MOST}`, {
         next: 'ask for a lower degree',
       });
-    // columns from the last monomial to the first, so that the first ones are free and lead
-    const column = new Map(set.map((i, c) => [monomials[i]!, size - 1 - c] as const));
-    const data = new Int32Array(columns.length * size * size);
-    columns.forEach((images, g) => {
-      for (const i of set) {
-        const c = column.get(monomials[i]!)!;
-        const q = images[i]!;
-        q.monomials.forEach((m, t) => {
-          data[(g * size + column.get(m)!) * size + c] = q.coefficients[t]!;
-        });
-        const diagonal = (g * size + c) * size + c;
-        data[diagonal] = data[diagonal] === 0 ? p - 1 : data[diagonal]! - 1;
-      }
-    });
-    const kernel = modularKernel({ p, rows: columns.length * size, cols: size, data });
-    const leads: number[] = [];
-    for (let r = kernel.rows - 1; r >= 0; r--) {
-      const row = new Int32Array(monomials.length);
-      let lead = -1;
-      for (let c = size - 1; c >= 0; c--) {
-        const x = kernel.data[r * size + c]!;
-        if (x === 0) continue;
-        if (lead < 0) lead = set[size - 1 - c]!;
-        row[set[size - 1 - c]!] = x;
-      }
-      leads.push(lead);
-      rows.push(row);
+    let previous: { values: bigint[][][]; modulus: bigint; shape: string } | undefined;
+    for (let index = 0; index < PRIMES_MOST; index++) {
+      const images = this.#image(index);
+      const { embeddings } = images;
+      const { p } = embeddings.reduction;
+      const kernels = images.powers.map((powers) => this.#kernel(degrees, powers, p));
+      const shape = JSON.stringify(kernels[0]!.leads);
+      if (kernels.some((x) => JSON.stringify(x.leads) !== shape) || (previous !== undefined && previous.shape !== shape)) continue;
+      const values = kernels[0]!.rows.map((row, r) =>
+        Array.from(row, (_, j) => {
+          const own = images.copy.map((c) => kernels[c]!.rows[r]![j]!);
+          return own.every((x) => x === 0) ? own : embeddings.coordinates(own);
+        }),
+      );
+      const old = previous;
+      previous =
+        old === undefined
+          ? { values: values.map((r) => r.map((c) => c.map(BigInt))), modulus: BigInt(p), shape }
+          : {
+              values: values.map((r, a) => r.map((c, b) => c.map((x, i) => chineseRemainder(old.values[a]![b]![i]!, old.modulus, x, p)))),
+              modulus: old.modulus * BigInt(p),
+              shape,
+            };
+      const forms = this.#rebuild(monomials, previous.values, previous.modulus);
+      if (forms !== undefined && this.#holds(degrees, monomials, forms)) return forms;
     }
-    free.push(leads);
+    throw new LimitError(`the invariants of degrees ${degrees.join(', ')} have coefficients too large to reconstruct`, {
+      next: 'ask for a lower degree',
+    });
   }
-  return { free, rows };
-}
 
-function rebuild(
-  ring: PolynomialRing<Algebraic>,
-  field: LinearAction['field'],
-  monomials: readonly Monomial[],
-  values: readonly (readonly (readonly bigint[])[])[],
-  modulus: bigint,
-): Polynomial<Algebraic>[] | undefined {
-  const out: Polynomial<Algebraic>[] = [];
-  for (const row of values) {
-    const terms: Array<[Monomial, Algebraic]> = [];
-    for (let j = 0; j < row.length; j++) {
-      if (row[j]!.every((x) => x === 0n)) continue;
-      const parts = row[j]!.map((x) => reconstructRational(x, modulus));
-      if (parts.some((r) => r === undefined)) return undefined;
-      const d = parts.reduce((m, r) => m * r!.d, 1n);
-      terms.push([
-        monomials[j]!,
-        field.element(
+  #image(index: number): Images {
+    while (this.#images.length <= index) {
+      const action = this.#action;
+      const embeddings = new Embeddings(action.field, CommonReduction.of(action.field, 1, this.#images.length));
+      const { p } = embeddings.reduction;
+      const known = new Map<string, number>();
+      const powers: SymmetricPowers[][][] = [];
+      const copy = Array.from({ length: embeddings.count }, (_, k) => {
+        const matrices = action.generatorMatrices.map((m) =>
+          Int32Array.from(m.data, (x) => (m.field.isZero(x) ? 0 : embeddings.apply(k, x))),
+        );
+        const key = matrices.join(';');
+        let c = known.get(key);
+        if (c === undefined) {
+          c = powers.length;
+          known.set(key, c);
+          powers.push(
+            matrices.map((m) =>
+              action.blocks.map((block, b) => {
+                const own = new Int32Array(block.length ** 2);
+                block.forEach((i, r) => {
+                  block.forEach((j, s) => {
+                    own[r * block.length + s] = m[i * action.dimension + j]!;
+                  });
+                });
+                return new SymmetricPowers(this.#layers[b]!, own, p);
+              }),
+            ),
+          );
+        }
+        return c;
+      });
+      this.#images.push({ embeddings, copy, powers });
+    }
+    return this.#images[index]!;
+  }
+
+  /** Rows of one generator on the monomials of these degrees. */
+  #rows(degrees: readonly number[], powers: readonly SymmetricPowers[], p: number): readonly SparseRow[] {
+    let rows: readonly SparseRow[] | undefined;
+    degrees.forEach((d, b) => {
+      if (d === 0) return;
+      const own = powers[b]!.rows(d);
+      rows = rows === undefined ? own : rows.flatMap((x) => own.map((y) => kroneckerRow(x, y, own.length, p)));
+    });
+    return rows ?? [{ index: Int32Array.of(0), value: Int32Array.of(1) }];
+  }
+
+  #kernel(degrees: readonly number[], powers: readonly (readonly SymmetricPowers[])[], p: number): Kernel {
+    const generators = powers.map((g) => this.#rows(degrees, g, p));
+    const count = generators[0]?.length ?? gradedMonomials(this.#action.blocks, degrees).length;
+    const root = Int32Array.from({ length: count }, (_, i) => i);
+    const find = (i: number): number => {
+      while (root[i] !== i) i = root[i] = root[root[i]!]!;
+      return i;
+    };
+    for (const rows of generators)
+      rows.forEach((row, i) => {
+        for (const j of row.index) {
+          const [a, b] = [find(i), find(j)];
+          root[Math.max(a, b)] = Math.min(a, b);
+        }
+      });
+    const sets = new Map<number, number[]>();
+    for (let i = 0; i < count; i++) {
+      const r = find(i);
+      const list = sets.get(r);
+      if (list === undefined) sets.set(r, [i]);
+      else list.push(i);
+    }
+    const leads: number[][] = [];
+    const out: Int32Array[] = [];
+    const simple = generators.filter((g) => isSigned(g, p));
+    const other = generators.filter((g) => !simple.includes(g));
+    // one combination with random weights: for positive weights Σ w_g (ρ(g) - 1) has the common kernel (triangle
+    // inequality), so all weights but those on a hypersurface give it
+    const weights = other.map((_, g) => (Math.imul(g + 1, 0x9e3779b1) >>> 2) % p);
+    const signOf = new Int8Array(count);
+    for (const set of sets.values()) {
+      const orbits = signedOrbits(set, simple, signOf);
+      const size = orbits.length;
+      if (size > MIXED_MOST)
+        throw new LimitError(`the action mixes ${size} monomials of one degree; the limit is ${MIXED_MOST}`, {
+          next: 'ask for a lower degree',
+        });
+      // columns from the last orbit to the first, so that the first ones are free and lead
+      const place = new Map(set.map((m, r) => [m, r] as const));
+      const data = new Int32Array(other.length === 0 ? 0 : set.length * size);
+      other.forEach((rows, g) => {
+        const w = weights[g]!;
+        orbits.forEach((orbit, o) => {
+          const c = size - 1 - o;
+          for (const m of orbit) {
+            const x = signOf[m] === 1 ? w : p - w;
+            const row = rows[m]!;
+            for (let t = 0; t < row.index.length; t++) {
+              const at = place.get(row.index[t]!)! * size + c;
+              data[at] = mulAddMod(data[at]!, row.value[t]!, x, p);
+            }
+            const at = place.get(m)! * size + c;
+            data[at] = mulAddMod(data[at]!, p - 1, x, p);
+          }
+        });
+      });
+      const kernel = modularKernel({ p, rows: other.length === 0 ? 0 : set.length, cols: size, data });
+      const own: number[] = [];
+      for (let r = kernel.rows - 1; r >= 0; r--) {
+        const row = new Int32Array(count);
+        let lead = -1;
+        for (let c = size - 1; c >= 0; c--) {
+          const x = kernel.data[r * size + c]!;
+          if (x === 0) continue;
+          const orbit = orbits[size - 1 - c]!;
+          if (lead < 0) lead = orbit[0]!;
+          for (const m of orbit) row[m] = signOf[m] === 1 ? x : p - x;
+        }
+        own.push(lead);
+        out.push(row);
+      }
+      leads.push(own);
+    }
+    return { leads, rows: out };
+  }
+
+  #rebuild(
+    monomials: readonly Monomial[],
+    values: readonly (readonly (readonly bigint[])[])[],
+    modulus: bigint,
+  ): Polynomial<Algebraic>[] | undefined {
+    const out: Polynomial<Algebraic>[] = [];
+    for (const row of values) {
+      const terms: Array<[Monomial, Algebraic]> = [];
+      for (let j = 0; j < row.length; j++) {
+        if (row[j]!.every((x) => x === 0n)) continue;
+        const parts = row[j]!.map((x) => reconstructRational(x, modulus));
+        if (parts.some((r) => r === undefined)) return undefined;
+        const d = parts.reduce((m, r) => m * r!.d, 1n);
+        const c = this.#action.field.element(
           parts.map((r) => (r!.n * d) / r!.d),
           d,
-        ),
-      ]);
+        );
+        terms.push([monomials[j]!, c]);
+      }
+      out.push(this.#ring.fromTerms(terms));
     }
-    out.push(ring.fromTerms(terms));
+    return out;
+  }
+
+  /** The exact check. */
+  #holds(degrees: readonly number[], monomials: readonly Monomial[], forms: readonly Polynomial<Algebraic>[]): boolean {
+    const bound = this.#bound(
+      degrees.reduce((s, d) => s + d, 0),
+      forms,
+    );
+    const place = new Map(monomials.map((m, i) => [m, i] as const));
+    let modulus = 1n;
+    for (let index = 0; modulus <= 2n * bound; index++) {
+      if (index >= PRIMES_MOST) return false;
+      const { embeddings, copy, powers } = this.#image(index);
+      const { p } = embeddings.reduction;
+      const rows = powers.map((generators) => generators.map((g) => this.#rows(degrees, g, p)));
+      for (let k = 0; k < embeddings.count; k++)
+        for (const form of forms) {
+          const coefficients = form.coefficients.map((c) => embeddings.apply(k, c));
+          for (const g of rows[copy[k]!]!) {
+            const sum = new Int32Array(monomials.length);
+            form.monomials.forEach((m, t) => {
+              const i = place.get(m)!;
+              const row = g[i]!;
+              for (let a = 0; a < row.index.length; a++)
+                sum[row.index[a]!] = mulAddMod(sum[row.index[a]!]!, row.value[a]!, coefficients[t]!, p);
+              sum[i] = mulAddMod(sum[i]!, p - 1, coefficients[t]!, p);
+            });
+            if (sum.some((x) => x !== 0)) return false;
+          }
+        }
+      modulus *= BigInt(p);
+    }
+    return true;
+  }
+
+  /**
+   * A bound of the coordinates of ρ(g)f - f times a common denominator. With |x| the sum of the absolute coordinates and
+   * K the largest |b_i b_j| over the basis, |x y| <= K |x| |y|.
+   */
+  #bound(degree: number, forms: readonly Polynomial<Algebraic>[]): bigint {
+    const { field, generatorMatrices, dimension } = this.#action;
+    const n = field.degree;
+    const size = (x: Algebraic) => x.c.reduce((s, y) => s + (y < 0n ? -y : y), 0n);
+    const unit = (j: number): Algebraic => ({ c: Array.from({ length: n }, (_, i) => (i === j ? 1n : 0n)), d: 1n });
+    let K = 1n;
+    for (let i = 0; i < n; i++)
+      for (let j = i; j < n; j++) {
+        const s = size(field.mul(unit(i), unit(j)));
+        if (s > K) K = s;
+      }
+    let most = 1n;
+    for (const m of generatorMatrices) {
+      const d = m.data.reduce((l, x) => (l * x.d) / gcd(l, x.d), 1n);
+      if (d > most) most = d;
+      for (let i = 0; i < dimension; i++) {
+        let s = 0n;
+        for (let j = 0; j < dimension; j++) {
+          const x = m.data[i * dimension + j]!;
+          s += size(x) * (d / x.d);
+        }
+        if (s > most) most = s;
+      }
+    }
+    let largest = 1n;
+    for (const f of forms) {
+      const d = f.coefficients.reduce((l, x) => (l * x.d) / gcd(l, x.d), 1n);
+      const s = f.coefficients.reduce((t, x) => t + size(x) * (d / x.d), 0n);
+      if (s > largest) largest = s;
+    }
+    return 2n * largest * (K * most) ** BigInt(degree);
+  }
+}
+
+/** True if every row has a single entry 1 or -1. */
+function isSigned(rows: readonly SparseRow[], p: number): boolean {
+  return rows.every((r) => r.index.length === 1 && (r.value[0] === 1 || r.value[0] === p - 1));
+}
+
+/**
+ * Orbits of monomials under signed permutations that carry an invariant, in the order of their first members; signs
+ * are relative to these. Other monomials get no orbit.
+ */
+function signedOrbits(set: readonly number[], generators: readonly (readonly SparseRow[])[], signOf: Int8Array): number[][] {
+  for (const m of set) signOf[m] = 0;
+  const out: number[][] = [];
+  for (const start of set) {
+    if (signOf[start] !== 0) continue;
+    signOf[start] = 1;
+    const orbit = [start];
+    let consistent = true;
+    for (const m of orbit)
+      for (const g of generators) {
+        const { index, value } = g[m]!;
+        const sign = (value[0] === 1 ? signOf[m]! : -signOf[m]!) as 1 | -1;
+        const next = index[0]!;
+        if (signOf[next] === 0) {
+          signOf[next] = sign;
+          orbit.push(next);
+        } else if (signOf[next] !== sign) consistent = false;
+      }
+    if (!consistent) continue;
+    out.push(orbit.sort((a, b) => a - b));
   }
   return out;
 }

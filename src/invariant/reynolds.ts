@@ -9,7 +9,7 @@ import { RealField } from '../field/index.ts';
 import { mapMatrix } from '../linear/index.ts';
 import { type Polynomial, PolynomialRing } from '../polynomial/index.ts';
 import { GradedDimensions } from './dimensions.ts';
-import { fixedForms } from './fixed-forms.ts';
+import { FixedForms } from './fixed-forms.ts';
 import { compositions } from './graded-monomials.ts';
 import { findLetters, type Letters } from './letters.ts';
 import type { LinearAction } from './linear-action.ts';
@@ -28,17 +28,18 @@ export class InvariantSpaces {
   readonly dimensions: GradedDimensions;
   readonly letters: Letters | undefined;
   readonly #expander: OrbitSumExpander | undefined;
+  readonly #fixed: FixedForms;
   constructor(action: LinearAction) {
     this.action = action;
     this.ring = new PolynomialRing<Algebraic>(action.field, action.names);
     this.dimensions = new GradedDimensions(action);
     this.letters = findLetters(action);
+    this.#fixed = new FixedForms(action, this.ring);
     this.#expander = this.letters === undefined ? undefined : new OrbitSumExpander(this.ring, this.letters);
   }
   /** Basis of the invariants with these degrees in the blocks, coefficients primitive where they are rational. */
   basis(degrees: readonly number[]): BasisElement[] {
-    const out =
-      this.#orbitBasis(degrees) ?? fixedForms(this.action, this.ring, degrees).map((polynomial) => ({ polynomial, orbit: undefined }));
+    const out = this.#orbitBasis(degrees) ?? this.#fixed.basis(degrees).map((polynomial) => ({ polynomial, orbit: undefined }));
     const scaled = out.map((b) => ({ polynomial: primitive(this.ring, b.polynomial), orbit: b.orbit }));
     const expected = this.dimensions.dimension(degrees);
     if (scaled.length !== expected)
