@@ -26,7 +26,7 @@ export function modelSummary(p: Prepared | NotExact): ModelSummary {
   };
 }
 
-export function generatorSummaries(p: Prepared): GeneratorSummary[] {
+export function generatorSummaries(p: Pick<Prepared, 'generators'>): GeneratorSummary[] {
   return p.generators.map((g) => ({
     name: g.name,
     reversing: g.sign === -1,
@@ -36,7 +36,7 @@ export function generatorSummaries(p: Prepared): GeneratorSummary[] {
   }));
 }
 
-export function groupSummary(action: Action, p: Prepared): StudyResult['group'] {
+export function groupSummary(action: Action, p: Pick<Prepared, 'generators' | 'declaration'>): StudyResult['group'] {
   let reversing = 0;
   for (const s of action.signs) if (s === -1) reversing++;
   const named = p.declaration.groups.map((g) => g.group);
