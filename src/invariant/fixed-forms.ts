@@ -18,7 +18,7 @@ import type { LinearAction } from './linear-action.ts';
 import { kroneckerRow, MonomialLayers, type SparseRow, SymmetricPowers } from './symmetric-powers.ts';
 
 /** Most monomials of one multidegree, and most of them in one elimination. */
-export const MONOMIALS_MOST = 20_000;
+export const MONOMIALS_MOST = 8_000;
 export const MIXED_MOST = 1_500;
 const PRIMES_MOST = 40;
 
@@ -131,6 +131,11 @@ export class FixedForms {
     let rows: readonly SparseRow[] | undefined;
     degrees.forEach((d, b) => {
       if (d === 0) return;
+      const size = this.#layers[b]!.layer(d).size;
+      if (size > MONOMIALS_MOST / 4 && !powers[b]!.monomial)
+        throw new LimitError(`forms of degree ${d} have ${size} monomials; the limit is ${MONOMIALS_MOST / 4}`, {
+          next: 'ask for a lower degree',
+        });
       const own = powers[b]!.rows(d);
       rows = rows === undefined ? own : rows.flatMap((x) => own.map((y) => kroneckerRow(x, y, own.length, p)));
     });

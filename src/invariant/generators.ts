@@ -9,8 +9,10 @@
  *   - Hironaka decomposition: the ring is free over the polynomials in a system of parameters (M. Hochster and
  *     J. Eagon 1971), and products of generators are found that are a basis, their degrees rebuilding Molien's series.
  */
+import { LimitError } from '../errors/index.ts';
 import type { Algebraic } from '../field/index.ts';
 import type { Polynomial } from '../polynomial/index.ts';
+import { binomial } from './dimensions.ts';
 import { Sampler, SPARE_POINTS, Span } from './evaluation.ts';
 import { compositions } from './graded-monomials.ts';
 import type { LinearAction } from './linear-action.ts';
@@ -54,6 +56,9 @@ export interface GeneratorOptions {
 export const WORK_MOST = 4e8;
 /** Degree looked at where no proof is within reach and none was asked for. */
 export const FALLBACK_DEGREE = 4;
+/** Higher degrees are looked at all the same up to this one while the forms have at most so many monomials. */
+const FALLBACK_DEGREE_MOST = 12;
+const FALLBACK_MONOMIALS = 1_000;
 /** Below this Noether's bound is reached at once, without looking for parameters. */
 const NOETHER_AT_ONCE = 5e4;
 /** Largest dimension of a multidegree, and most multidegrees, that are worth a try. */
@@ -79,8 +84,16 @@ export function minimalGenerators(action: LinearAction, options: GeneratorOption
       spaces,
       pieces.reduce((m, x) => Math.max(m, x.dimension), 1),
     );
-    for (const piece of pieces) search.addPiece(piece);
-    const found = search.generators;
+    for (const piece of pieces) {
+      try {
+        search.addPiece(piece);
+      } catch (error) {
+        if (!(error instanceof LimitError)) throw error;
+        limit = total(piece.degrees) - 1;
+        break;
+      }
+    }
+    const found = search.generators.filter((g) => total(g.degrees) <= limit);
     if (order <= limit)
       return result(found, true, `every degree up to the order ${order} of the group was looked at (Noether's bound)`, Infinity);
     const degrees = found.map((g) => total(g.degrees));
@@ -210,7 +223,12 @@ function piecesUpTo(spaces: InvariantSpaces, limit: number, work: number): Piece
 }
 const cost = (pieces: readonly Piece[]): number => pieces.reduce((s, x) => s + x.dimension ** 3, 0);
 
+/** The highest degree worth a look where there is no proof: few monomials, and FALLBACK_DEGREE at least if it can be afforded. */
 function affordable(spaces: InvariantSpaces, work: number): number {
-  for (let d = FALLBACK_DEGREE; d > 1; d--) if (piecesUpTo(spaces, d, work) !== undefined) return d;
+  const n = spaces.action.dimension;
+  for (let d = FALLBACK_DEGREE_MOST; d > 1; d--) {
+    if (d > FALLBACK_DEGREE && binomial(n + d - 1, d) > BigInt(FALLBACK_MONOMIALS)) continue;
+    if (piecesUpTo(spaces, d, work) !== undefined) return d;
+  }
   return 1;
 }

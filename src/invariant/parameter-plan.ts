@@ -1,7 +1,10 @@
 /** A system of parameters made block by block from generators of the blocks, and the numerator that goes with it. */
 import type { Algebraic } from '../field/index.ts';
 import type { Polynomial } from '../polynomial/index.ts';
+import { denominatorDegrees, poleOrders } from './degrees.ts';
+import { binomial } from './dimensions.ts';
 import type { Sampler } from './evaluation.ts';
+import { MIXED_MOST } from './fixed-forms.ts';
 import { restrictToCoordinates } from './linear-action.ts';
 import { areIndependent, isParameterSystem, subsets } from './parameters.ts';
 import { PieceSearch } from './piece-search.ts';
@@ -52,6 +55,11 @@ function blockParameters(
   const n = action.dimension;
   const order = action.group.order / dimensions.kernelOrder;
   const variables = Array.from({ length: n }, (_, i) => i);
+  if (spaces.letters === undefined) {
+    // the forms to be found have at least these degrees
+    const least = Math.max(0, ...denominatorDegrees(n, poleOrders(dimensions), (d) => dimensions.dimension([d])));
+    if (binomial(n + least - 1, least) > BigInt(MIXED_MOST)) return undefined;
+  }
   const search = new PieceSearch(spaces);
   const most = Math.min(order, PARAMETER_DEGREE_MOST);
   for (let d = 1; d <= most; d++) {

@@ -78,6 +78,10 @@ export class SymmetricPowers {
     });
     this.#rows = [[{ index: Int32Array.of(0), value: Int32Array.of(1) }]];
   }
+  /** True if the matrix has a single entry in each row. */
+  get monomial(): boolean {
+    return this.#forms.every((f) => f.index.length === 1);
+  }
   /** Rows of the d-th power. */
   rows(d: number): readonly SparseRow[] {
     const { n } = this.#layers;
