@@ -141,7 +141,10 @@ function weightProjections(
 const TURNS = [4, 6, 8, 10, 12, 16, 20, 24];
 
 /** exp(2πξ/(ck)) over a field that holds it, k > 2 max m; undefined where no field of square roots does. */
-export function finiteTurn(f: PeriodicField, field: RealField): { field: RealField; matrix: SparseMatrix<Algebraic>; order: number } | undefined {
+export function finiteTurn(
+  f: PeriodicField,
+  field: RealField,
+): { field: RealField; matrix: SparseMatrix<Algebraic>; order: number } | undefined {
   const order = TURNS.find((t) => t > 2 * f.weights.at(-1)!);
   if (order === undefined) return undefined;
   let large = RealField.join(field, RealField.of({ cosines: [order * 4] }));

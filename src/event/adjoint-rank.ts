@@ -66,24 +66,23 @@ export interface AdjointImage {
   readonly image: ModularMatrix;
 }
 
-export function adjointImage(l: Matrix<Algebraic>, operators: readonly ClassOperator[], reduction: Reduction): AdjointImage {
+/** `fields` are infinitesimal symmetries ξ that fix the equilibrium: ξᵀX + Xξ = 0 for the class and for 𝔤₀. */
+export function adjointImage(
+  l: Matrix<Algebraic>,
+  operators: readonly ClassOperator[],
+  reduction: Reduction,
+  fields: readonly Matrix<Algebraic>[] = [],
+): AdjointImage {
   const n = l.rows;
   const p = reduction.p;
   const unknowns = (n * (n + 1)) / 2;
   if (n === 0) return { dimensionOfClass: 0, dimensionOfGroup: 0, image: { p, rows: 0, cols: 0, data: new Int32Array(0) } };
   const reduced = operators.map((o) => ({ h: reduceMatrix(o.matrix, reduction), k: reduceMatrix(o.inverse, reduction), sign: o.sign }));
-  const group = invariantForms(
-    n,
-    reduced.map(({ h, k, sign }) => ({ h, k, s: sign })),
-    p,
-  );
+  const continuous = fields.map((m) => reduceMatrix(m, reduction)).map((m) => ({ h: m, k: m, s: -1 as const }));
+  const group = invariantForms(n, [...reduced.map(({ h, k, sign }) => ({ h, k, s: sign })), ...continuous], p);
   const dimensionOfClass = operators.every((o) => o.sign === 1)
     ? group.rows
-    : invariantForms(
-        n,
-        reduced.map(({ h, k }) => ({ h, k, s: 1 })),
-        p,
-      ).rows;
+    : invariantForms(n, [...reduced.map(({ h, k }) => ({ h, k, s: 1 as const })), ...continuous], p).rows;
   const lm = reduceMatrix(l, reduction);
   const images = new Int32Array(group.rows * unknowns);
   for (let r = 0; r < group.rows; r++) {
@@ -99,8 +98,13 @@ export function adjointImage(l: Matrix<Algebraic>, operators: readonly ClassOper
 }
 
 /** Codimension of the orbit of L in the class given by the operators (none: no symmetry). L is n x n. */
-export function adjointRank(l: Matrix<Algebraic>, operators: readonly ClassOperator[], reduction: Reduction): AdjointRank {
-  const { dimensionOfClass, dimensionOfGroup, image } = adjointImage(l, operators, reduction);
+export function adjointRank(
+  l: Matrix<Algebraic>,
+  operators: readonly ClassOperator[],
+  reduction: Reduction,
+  fields: readonly Matrix<Algebraic>[] = [],
+): AdjointRank {
+  const { dimensionOfClass, dimensionOfGroup, image } = adjointImage(l, operators, reduction, fields);
   return { dimensionOfClass, dimensionOfGroup, codimension: dimensionOfClass - modularRank(image) };
 }
 

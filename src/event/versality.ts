@@ -7,6 +7,7 @@
  */
 import type { Algebraic, RealField } from '../field/index.ts';
 import {
+  add,
   beside,
   fromColumns,
   kernel,
@@ -15,11 +16,14 @@ import {
   multiply,
   rank,
   type SparseMatrix,
+  scale,
   sparseApply,
   sparseTimes,
   transpose,
+  zeroMatrix,
 } from '../linear/index.ts';
-import { adjointImage, formCoordinates } from './adjoint-rank.ts';
+import { adjointImage, type ClassOperator, formCoordinates } from './adjoint-rank.ts';
+import { type SliceFamily, sliceDerivative } from './slice-family.ts';
 import type { ZeroEvent } from './zero-event.ts';
 
 /** What versality needs to know of the family; derivatives by each varied parameter. */
@@ -34,6 +38,23 @@ export interface Family {
   readonly fixed: Matrix<Algebraic>;
   /** x'(μ) of the declared equilibrium for each varied parameter. */
   readonly branch: readonly (readonly Algebraic[])[];
+  /** Continuous symmetries that move the equilibrium; `fixed` then lies in the slice. */
+  readonly slice?: SliceFamily;
+}
+
+/** A part of E₀ that carries its own normal space: a basis in V, L on it, and the symmetry as seen there. */
+export interface EventPiece {
+  readonly basis: Matrix<Algebraic>;
+  readonly l: Matrix<Algebraic>;
+  readonly operators: readonly ClassOperator[];
+  readonly fields?: readonly Matrix<Algebraic>[];
+}
+
+/** The pieces of an event block by block of the flow. */
+export function eventPieces(event: ZeroEvent): EventPiece[] {
+  return event.blocks
+    .filter((b) => b.kernel.basis.cols > 0)
+    .map((b) => ({ basis: multiply(b.block.basis, b.kernel.basis), l: b.event.l, operators: b.event.operators }));
 }
 
 export interface Versality {
@@ -47,7 +68,7 @@ export interface Versality {
   readonly onto: boolean;
 }
 
-export function versality(event: ZeroEvent, family: Family): Versality {
+export function versality(event: ZeroEvent, family: Family, pieces: readonly EventPiece[] = eventPieces(event)): Versality {
   const { field, fixed } = family;
   const k = family.hessianBy.length;
   const f = fixed.cols;
@@ -90,27 +111,25 @@ export function versality(event: ZeroEvent, family: Family): Versality {
       }
     }
   }
-  const spanned = spanInNormalSpace(event, family, tangents, field);
+  const spanned = spanInNormalSpace(pieces, family, tangents, field);
   const versal = (onto || alongBranch) && spanned === event.codimension;
   return { versal, alongBranch: alongBranch && versal, spanned, codimension: event.codimension, onto };
 }
 
 function spanInNormalSpace(
-  event: ZeroEvent,
+  pieces: readonly EventPiece[],
   family: Family,
   tangents: readonly { readonly x: readonly Algebraic[]; readonly mu: readonly Algebraic[] }[],
   field: RealField,
 ): number {
-  const active = event.blocks.filter((b) => b.kernel.basis.cols > 0);
-  if (active.length === 0) return 0;
+  if (pieces.length === 0) return 0;
   const reduction = field.reduction();
-  const spaces = active.map((b) => multiply(b.block.basis, b.kernel.basis));
-  const widths = active.map((b) => (b.kernel.basis.cols * (b.kernel.basis.cols + 1)) / 2);
+  const widths = pieces.map((b) => (b.basis.cols * (b.basis.cols + 1)) / 2);
   const total = widths.reduce((a, b) => a + b, 0);
   const rows: Int32Array[] = [];
   let offset = 0;
-  active.forEach((b, i) => {
-    const { image } = adjointImage(b.event.l, b.event.operators, reduction);
+  pieces.forEach((b, i) => {
+    const { image } = adjointImage(b.l, b.operators, reduction, b.fields);
     for (let r = 0; r < image.rows; r++) {
       const row = new Int32Array(total);
       row.set(image.data.subarray(r * image.cols, (r + 1) * image.cols), offset);
@@ -127,21 +146,35 @@ function spanInNormalSpace(
   };
   const base = stack(rows);
   for (const { x, mu } of tangents) {
-    const cubic = x.every((v) => field.isZero(v)) ? undefined : family.cubicAlong(x);
+    const derivative = formDerivative(family, x, mu);
     const row = new Int32Array(total);
     let at = 0;
-    spaces.forEach((e, i) => {
-      let form: Matrix<Algebraic> | undefined = cubic === undefined ? undefined : multiply(transpose(e), sparseTimes(cubic, e));
-      mu.forEach((m, j) => {
-        if (field.isZero(m)) return;
-        const part = multiply(transpose(e), sparseTimes(family.hessianBy[j]!, e));
-        const scaled = part.data.map((v) => field.mul(m, v));
-        form = form === undefined ? { ...part, data: scaled } : { ...part, data: form.data.map((v, q) => field.add(v, scaled[q]!)) };
-      });
-      if (form !== undefined) row.set(formCoordinates(form, reduction), at);
+    pieces.forEach(({ basis }, i) => {
+      row.set(formCoordinates(derivative(basis), reduction), at);
       at += widths[i]!;
     });
     rows.push(row);
   }
   return stack(rows) - base;
+}
+
+/** The change of the form on the columns of a basis along a tangent (x', μ') of the family. */
+function formDerivative(family: Family, x: readonly Algebraic[], mu: readonly Algebraic[]): (e: Matrix<Algebraic>) => Matrix<Algebraic> {
+  const { field } = family;
+  const cubic = x.every((v) => field.isZero(v)) ? undefined : family.cubicAlong(x);
+  const change = (e: Matrix<Algebraic>): Matrix<Algebraic> => {
+    let out = cubic === undefined ? zeroMatrix<Algebraic>(field, e.rows, e.cols) : sparseTimes(cubic, e);
+    mu.forEach((m, j) => {
+      if (!field.isZero(m)) out = add(out, scale(sparseTimes(family.hessianBy[j]!, e), m));
+    });
+    return out;
+  };
+  if (family.slice === undefined) return (e) => multiply(transpose(e), change(e));
+  const residual = sparseApply(family.hessian, x);
+  mu.forEach((m, j) => {
+    family.gradientBy[j]!.forEach((g, i) => {
+      residual[i] = field.add(residual[i]!, field.mul(m, g));
+    });
+  });
+  return sliceDerivative(field, family.slice, family.hessian, x, residual, change);
 }

@@ -5,7 +5,19 @@
  * affine fields tried; else translations, and rotations of all pairs and triples of coordinates together.
  */
 import type { Algebraic, RealField } from '../field/index.ts';
-import { build, columns, dense, echelon, inverse, kernel, type Matrix, type SparseMatrix, sparse, sparseFromMaps, transpose } from '../linear/index.ts';
+import {
+  build,
+  columns,
+  dense,
+  echelon,
+  inverse,
+  kernel,
+  type Matrix,
+  type SparseMatrix,
+  sparse,
+  sparseFromMaps,
+  transpose,
+} from '../linear/index.ts';
 import type { Declaration } from './declaration/declaration.ts';
 import { type Expression, exactValue } from './expression/index.ts';
 import { atPoint, breaksForm, derivativeAlong, type EnergySeries, type VectorField } from './neutral.ts';
@@ -20,7 +32,12 @@ interface Frame {
   readonly half: number;
 }
 
-const none = (f: Frame) => sparseFromMaps(f.field, f.dimension, Array.from({ length: f.dimension }, () => new Map<number, Algebraic>()));
+const none = (f: Frame) =>
+  sparseFromMaps(
+    f.field,
+    f.dimension,
+    Array.from({ length: f.dimension }, () => new Map<number, Algebraic>()),
+  );
 const zeros = (f: Frame) => new Array<Algebraic>(f.dimension).fill(f.field.zero);
 
 /** The unit translations. */
@@ -63,7 +80,13 @@ function rotations(f: Frame): VectorField[] {
   }
   const phase = (i: number): readonly [number, number] => [i, i + half];
   if (half <= 60) for (let i = 0; i < half; i++) out.push(turning(f, [phase(i)]));
-  else out.push(turning(f, Array.from({ length: half }, (_, i) => phase(i))));
+  else
+    out.push(
+      turning(
+        f,
+        Array.from({ length: half }, (_, i) => phase(i)),
+      ),
+    );
   return out.filter((x) => breaksForm(x.linear, f.form) === undefined);
 }
 
@@ -150,7 +173,9 @@ export function findFields(search: SymmetrySearch): VectorField[] {
     const positions = [...energy.points].map(([label, texts]) =>
       texts.map((t, i) => exactValue(search.parse(t, `network.points.${label}[${i + 1}]`), search.values, field)),
     );
-    return unchanged(f, rigidMotions(f, positions, energy.dimension), series, point).filter((x) => x.constant.some((v) => !field.isZero(v)));
+    return unchanged(f, rigidMotions(f, positions, energy.dimension), series, point).filter((x) =>
+      x.constant.some((v) => !field.isZero(v)),
+    );
   }
   const nonlinear = series.polynomial.monomials.some((m) => [...m].filter((c) => c.charCodeAt(0) < f.dimension).length > 2);
   const linear = nonlinear && f.dimension <= ALL_FIELDS_LIMIT ? linearFields(f) : rotations(f);

@@ -54,7 +54,11 @@ export function declaredFields(
 }
 
 /** ξ(x₀ + y) = value + linear·y. */
-export function atPoint(field: RealField, xi: VectorField, point: readonly Algebraic[]): { linear: SparseMatrix<Algebraic>; value: Algebraic[] } {
+export function atPoint(
+  field: RealField,
+  xi: VectorField,
+  point: readonly Algebraic[],
+): { linear: SparseMatrix<Algebraic>; value: Algebraic[] } {
   return { linear: xi.linear, value: sparseApply(xi.linear, point).map((x, i) => field.add(x, xi.constant[i]!)) };
 }
 
@@ -150,13 +154,16 @@ export function requireSymmetry(
   const ring = series.ring;
   const off = breaksForm(xi.linear, form);
   if (off !== undefined)
-    throw new InputError(`the field ${xi.where} does not preserve the symplectic form: AᵀW + WA has an entry for ${names[off[0]]} and ${names[off[1]]}`, {
-      file,
-      key: xi.where,
-      value: fieldText(xi, names, ring.field as RealField),
-      expected: 'a field whose linear part A satisfies AᵀW + WA = 0',
-      next: 'list the components of the momenta, or leave all of them out',
-    });
+    throw new InputError(
+      `the field ${xi.where} does not preserve the symplectic form: AᵀW + WA has an entry for ${names[off[0]]} and ${names[off[1]]}`,
+      {
+        file,
+        key: xi.where,
+        value: fieldText(xi, names, ring.field as RealField),
+        expected: 'a field whose linear part A satisfies AᵀW + WA = 0',
+        next: 'list the components of the momenta, or leave all of them out',
+      },
+    );
   const change = derivativeAlong(series, atPoint(ring.field as RealField, xi, point));
   if (ring.isZero(change)) return;
   const first = { ...change, monomials: change.monomials.slice(0, 1), coefficients: change.coefficients.slice(0, 1) };
@@ -185,7 +192,12 @@ export function fieldText(xi: VectorField, names: readonly string[], field: Real
       const written = field.format(size);
       const wrapped = body !== undefined && / [+-] /.test(written) ? `(${written})` : written;
       const text = body === undefined ? wrapped : field.equal(size, field.one) ? body : `${wrapped}*${body}`;
-      out += out === '' ? (negative ? `-${body === undefined && / [+-] /.test(text) ? `(${text})` : text}` : text) : `${negative ? ' - ' : ' + '}${text}`;
+      out +=
+        out === ''
+          ? negative
+            ? `-${body === undefined && / [+-] /.test(text) ? `(${text})` : text}`
+            : text
+          : `${negative ? ' - ' : ' + '}${text}`;
     };
     for (const [c, body] of terms) put(c, body);
     if (!field.isZero(xi.constant[i]!)) put(xi.constant[i]!, undefined);

@@ -10,6 +10,7 @@ import {
   flowBlocks,
   restrictForm,
   type SymplecticPart,
+  sliceAdaptedBlocks,
   symplecticPart,
   tidy,
 } from '../action/index.ts';
@@ -24,6 +25,7 @@ import { above, dense, fromColumns, identity, image, inertia, kernel, type Matri
 import { cubicAlong } from '../model/local.ts';
 import { linearCertificate } from './certificate.ts';
 import { labelledComponents } from './labels.ts';
+import { type SliceStudy, sliceComponents, sliceFixed, sliceStudy, sliceSubgroups, wholePiece, withContinuous } from './neutral-slice.ts';
 import { actionOf, type Prepared, requireHolds } from './prepare.ts';
 import type { CodimResult, InertiaSummary, SubgroupSummary, ZeroSummary } from './result.ts';
 import { componentSummaries, groupSummary, head } from './summary.ts';
@@ -48,19 +50,26 @@ export interface LinearStudy {
   /** Components of Γ in each flow block. */
   readonly blockComponents: readonly (readonly Component[])[];
   readonly event: ZeroEvent;
+  /** The symplectic slice, where the model has continuous symmetries; `forms` and `event` are then those of the slice. */
+  readonly slicing?: SliceStudy;
 }
 
 /** Runs the linear analysis. Throws the errors of `check` where the model is not what it claims. */
 export function linearStudy(prepared: Prepared): LinearStudy {
   requireHolds(prepared);
-  const action = actionOf(prepared);
+  const given = actionOf(prepared);
+  const slicing = sliceStudy(prepared, given);
+  const action = slicing?.action ?? given;
   const components = labelledComponents(prepared.declaration, action);
   const symplectic = symplecticPart(action);
-  const flow = flowBlocks(action, symplectic);
-  const forms = blockForms(flow, embedSparse(prepared.local.hessian, prepared.field, action.field), action.form);
-  const event = zeroEvent(forms, action.field);
-  const blockComponents = flow.map((b) => componentsOfBlock(action, components, symplectic.part, b.irreducible));
-  return { prepared, action, components, symplectic, forms, blockComponents, event };
+  const flow = slicing?.blocks ?? flowBlocks(action, symplectic);
+  const hessian = embedSparse(prepared.local.hessian, prepared.field, action.field);
+  const forms = blockForms(flow, hessian, action.form);
+  const event = slicing === undefined ? zeroEvent(forms, action.field) : withContinuous(slicing, zeroEvent(forms, action.field), hessian);
+  const blockComponents = flow.map((b) =>
+    slicing === undefined ? componentsOfBlock(action, components, symplectic.part, b.irreducible) : sliceComponents(slicing, components, b),
+  );
+  return { prepared, action, components, symplectic, forms, blockComponents, event, ...(slicing === undefined ? {} : { slicing }) };
 }
 
 /** Inertia of S on the whole space, block by block. */
@@ -112,8 +121,9 @@ function family(study: LinearStudy): Family {
       const lifted = { ...local, field: to, higher: { ...local.higher, coefficients: local.higher.coefficients.map(move) } };
       return cubicAlong(lifted, back);
     },
-    fixed: fixedSpace(action, components),
+    fixed: study.slicing === undefined ? fixedSpace(action, components) : sliceFixed(study.slicing, fixedSpace(action, components)),
     branch: local.pointBy.map((x) => x.map(move)),
+    ...(study.slicing === undefined ? {} : { slice: { ...study.slicing.slice, form: action.form } }),
   };
 }
 
@@ -142,10 +152,14 @@ export function componentForms(study: LinearStudy, blocks = adaptedBlocks(study.
 export function codimResult(study: LinearStudy, parameters: number): CodimResult {
   const { prepared, action, components, event, symplectic } = study;
   const blocks = adaptedBlocks(action, components);
-  const forms = componentForms(study, blocks);
+  const { slicing } = study;
+  const forms = componentForms(study, slicing === undefined ? blocks : sliceAdaptedBlocks(slicing.slice, blocks));
   const vary = prepared.declaration.vary;
   const motion = motionOf(event.codimension, event.semisimple);
-  const unfolds = event.dimension === 0 || vary.length === 0 ? undefined : versality(event, family(study));
+  const unfolds =
+    event.dimension === 0 || vary.length === 0
+      ? undefined
+      : versality(event, family(study), slicing === undefined ? undefined : wholePiece(slicing, hessianOf(study)));
   const facts: VerdictFacts | null =
     event.dimension === 0
       ? null
@@ -153,6 +167,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
           parameters,
           vary,
           order: action.group.order,
+          continuous: (slicing?.slice.isotropy.length ?? 0) > 0,
           kernel: event.kernel,
           sizes: event.sizes,
           codimension: event.codimension,
@@ -175,7 +190,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
     ...head('codim', prepared, groupSummary(action, prepared)),
     components: componentSummaries(components).map((c) => ({ ...c, inertia: counted.get(c.label)! })),
     inertia: inertiaOf(study.forms, action.field),
-    neutral: { dimension: 0 },
+    neutral: slicing === undefined ? { dimension: 0 } : { dimension: slicing.slice.neutral, directions: slicing.directions },
     zero:
       facts === null
         ? null
@@ -185,7 +200,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
             motion,
           ),
     collisions: [],
-    verdict: verdict(facts, parameters),
+    verdict: verdict(facts, parameters, slicing?.slice.neutral),
     certificate: { linear: linearCertificate(study, blocks) },
   };
 
@@ -201,12 +216,15 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
       codimension: event.codimension,
       codimensionWithoutSymmetry: event.codimensionWithoutSymmetry,
       motion: m,
-      subgroups: subgroupSummaries(
-        action,
-        symplectic.part,
-        event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })),
-        event.semisimple,
-      ),
+      subgroups:
+        s.slicing === undefined || s.slicing.slice.isotropy.length === 0
+          ? subgroupSummaries(
+              action,
+              symplectic.part,
+              event.blocks.map((b) => ({ block: b.block, counts: b.kernel.blocks })),
+              event.semisimple,
+            )
+          : continuousSubgroups(s, s.slicing),
       components: labels,
       signs: active.flatMap(({ b, labels: l }) =>
         b.signed.map((x) => ({
@@ -218,7 +236,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
         })),
       ),
       ...unfoldings(s),
-      routes: active.map(({ b, labels: l }) => ({
+      routes: (s.slicing?.complete === false ? [] : active).map(({ b, labels: l }) => ({
         components: l,
         class: b.block.symmetryClass,
         partition: b.partition,
@@ -235,8 +253,13 @@ function unfoldings(study: LinearStudy): { unfolding?: readonly string[]; unfold
   const { names } = prepared.quantities;
   const write = (forms: readonly Matrix<Algebraic>[]) => forms.map((q) => quadraticText(q, names, action.field));
   if (event.codimension > UNFOLDING_TERMS || action.dimension > UNFOLDING_DIMENSION) return {};
-  const own = unfoldingForms(event, action);
-  const free = freeUnfoldingForms(event, action, dense(embedSparse(prepared.local.hessian, prepared.field, action.field)));
+  const { slicing } = study;
+  if (slicing?.complete === false) return {};
+  const own = unfoldingForms(event, slicing?.wide ?? action);
+  const free =
+    slicing !== undefined
+      ? undefined
+      : freeUnfoldingForms(event, action, dense(embedSparse(prepared.local.hessian, prepared.field, action.field)));
   const readable = (forms: readonly Matrix<Algebraic>[] | undefined) => {
     const texts = forms === undefined ? [] : write(forms);
     return texts.length > 0 && texts.every((t) => t.length <= UNFOLDING_LENGTH) ? texts : undefined;
@@ -269,6 +292,24 @@ export function subgroupSummaries(
     generators: x.generators.map(words),
   }));
 }
+
+/** The same where continuous symmetries fix the equilibrium: they are kept under every subgroup. */
+function continuousSubgroups(study: LinearStudy, slicing: SliceStudy): SubgroupSummary[] {
+  const { action, event } = study;
+  const classes = subgroupsOf(action);
+  const words = elementWords(action);
+  const codimensions = sliceSubgroups(slicing, event, classes, hessianOf(study));
+  return classes.map((h, i) => ({
+    order: h.order,
+    reversing: h.elements.reduce((n, e) => n + (action.signs[e] === -1 ? 1 : 0), 0),
+    conjugates: h.conjugates,
+    codimension: codimensions[i]!,
+    motion: motionOf(codimensions[i]!, event.semisimple),
+    generators: h.generators.map(words),
+  }));
+}
+
+const hessianOf = ({ prepared, action }: LinearStudy) => embedSparse(prepared.local.hessian, prepared.field, action.field);
 
 /** All classes of subgroups, or only 1 and Γ where there are too many. */
 function subgroupsOf(action: Action): SubgroupClass[] {

@@ -117,4 +117,3 @@ function closedUnder(field: RealField, fields: readonly AffineField[], generator
     });
   return out;
 }
-

@@ -6,6 +6,8 @@ export interface VerdictFacts {
   readonly parameters: number;
   readonly vary: readonly string[];
   readonly order: number;
+  /** Continuous symmetries fix the equilibrium. */
+  readonly continuous?: boolean;
   readonly kernel: number;
   readonly sizes: readonly number[];
   readonly codimension: number;
@@ -29,23 +31,31 @@ function kernelWords(facts: VerdictFacts): string {
   return facts.kernelComponents.map((k) => (k.multiplicity === 1 ? k.label : `${k.multiplicity} ${k.label}`)).join(' + ');
 }
 
-export function verdict(facts: VerdictFacts | null, parameters: number): VerdictSummary {
+/** `neutral` is the dimension of the part that continuous symmetries force and that is set aside. */
+export function verdict(facts: VerdictFacts | null, parameters: number, neutral = 0): VerdictSummary {
   if (facts === null)
     return {
       answer: 'no event',
       parameters,
       versal: null,
-      because: 'The Hessian is nonsingular: no eigenvalue of the linearised flow is zero.',
+      because:
+        neutral === 0
+          ? 'The Hessian is nonsingular: no eigenvalue of the linearised flow is zero.'
+          : `Apart from the neutral directions (${neutral} of them, forced by continuous symmetries) the Hessian is nonsingular: no other eigenvalue of the linearised flow is zero.`,
     };
   const generic = facts.codimension <= parameters;
-  const symmetric = facts.order > 1;
+  const symmetric = facts.order > 1 || facts.continuous === true;
   const lines: string[] = [];
   const only = facts.kernelComponents.length === 1 && facts.kernelComponents[0]!.multiplicity === 1;
   const count =
     facts.kernel === 1
       ? 'the simple zero'
       : `the ${facts.kernel === 2 ? 'double' : facts.kernel === 3 ? 'triple' : `${facts.kernel}-fold`} zero`;
-  if (generic && facts.codimension === 1) {
+  if (generic && facts.codimension === 1 && facts.continuous === true && !only)
+    lines.push(
+      `The event has codimension 1 in the class of the finite and continuous symmetries (${facts.codimensionWithoutSymmetry} without symmetry); the pair ${facts.motion}.`,
+    );
+  else if (generic && facts.codimension === 1) {
     const how =
       facts.motion === 'passes'
         ? 'carries an invariant symplectic form, so the eigenvalues pass through zero and stay imaginary'
@@ -76,7 +86,7 @@ export function verdict(facts: VerdictFacts | null, parameters: number): Verdict
       `The event has codimension ${facts.codimension}, more than the ${plural(parameters, 'parameter')} of the study: ${why.join('; ')}.`,
     );
     lines.push(
-      'It is an accident of these values, the sign of an error, or of a symmetry that was not declared (symcodim check --find looks for one).',
+      'It is not generic under the declared symmetry: more than that symmetry ties these modes. A special form of the interaction may do so, a symmetry that was not declared (symcodim check --find looks for one), an accident of these values, or an error.',
     );
   }
   const v = facts.versality;
