@@ -221,9 +221,10 @@ export function floatingVersality(study: FloatingStudy, spaces: readonly EventSp
   const k = by.length;
   const tangents: { x: Float64Array; mu: Float64Array }[] = [];
   let onto = true;
-  if (f === 0)
-    by.forEach((_, j) => tangents.push({ x: new Float64Array(n), mu: Float64Array.from({ length: k }, (_, i) => (i === j ? 1 : 0)) }));
-  else {
+  if (f === 0) {
+    const unit = (j: number) => Float64Array.from({ length: k }, (_, i) => (i === j ? 1 : 0));
+    tangents.push(...by.map((_, j) => ({ x: new Float64Array(n), mu: unit(j) })));
+  } else {
     const s = numberCongruence(fixed, hessian);
     const system = numberBuild(f, f + k, (i, j) => {
       if (j < f) return s.data[i * f + j]!;

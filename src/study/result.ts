@@ -152,9 +152,17 @@ export interface StudyResult {
   readonly arithmetic: 'exact' | 'floating';
   /** The term that made the answer floating. */
   readonly floatingBecause?: string;
+  /** What floating decisions were made at. */
+  readonly tolerance?: number;
   readonly field?: string;
   readonly group: { readonly order: number; readonly reversing: number; readonly generators?: readonly string[]; readonly name?: string };
-  readonly equilibrium: { readonly holds: boolean; readonly gradient: Value; readonly point?: Readonly<Record<string, Value>> };
+  readonly equilibrium: {
+    readonly holds: boolean;
+    readonly gradient: Value;
+    readonly point?: Readonly<Record<string, Value>>;
+    /** Newton's method on a floating model: how far the declared point was moved. */
+    readonly polished?: { readonly step: number; readonly iterations: number; readonly gradientBefore: number };
+  };
   readonly symmetry: { readonly holds: boolean; readonly generators: readonly GeneratorSummary[] };
   readonly caution?: string;
   /** What `verify` needs; see certificate.ts. */

@@ -37,7 +37,10 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
   }
   const prepared = prepare(declaration);
   const parameters = options.parameters ?? declaration.parameterCount;
-  if (!isExact(prepared)) throw new UsageError(`floating models: ${prepared.because}`);
+  if (!isExact(prepared)) {
+    const { floatingAnswer } = await import('./floating.ts');
+    return floatingAnswer(command, prepared, parameters);
+  }
   switch (command) {
     case 'check': {
       const { checkResult } = await import('./check.ts');
@@ -48,6 +51,10 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       const { codimResult, linearStudy } = await import('./codim.ts');
       const result = codimResult(linearStudy(prepared), parameters);
       return { result, status: VERDICT_STATUS[result.verdict.answer]!, notes: [] };
+    }
+    case 'reduce': {
+      const [{ linearStudy }, { reduceResult }] = await Promise.all([import('./codim.ts'), import('./reduce.ts')]);
+      return { result: reduceResult(linearStudy(prepared), parameters, declaration.degree), status: 0, notes: [] };
     }
     default:
       throw new UsageError(`the command ${command} is not there`);
