@@ -15,7 +15,8 @@ import { CommonReduction } from './common-reduction.ts';
 import { Embeddings } from './embeddings.ts';
 import { gradedMonomials } from './graded-monomials.ts';
 import type { LinearAction } from './linear-action.ts';
-import { kroneckerRow, MonomialLayers, type SparseRow, SymmetricPowers } from './symmetric-powers.ts';
+import type { MonomialLayers } from './monomial-layers.ts';
+import { kroneckerRow, type SparseRow, SymmetricPowers } from './symmetric-powers.ts';
 
 /** Most monomials of one multidegree, and most of them in one elimination. */
 export const MONOMIALS_MOST = 8_000;
@@ -44,16 +45,17 @@ export class FixedForms {
   readonly #layers: readonly MonomialLayers[];
   readonly #images: Images[] = [];
 
-  constructor(action: LinearAction, ring: PolynomialRing<Algebraic>) {
+  /** `layers` number the monomials of each block. */
+  constructor(action: LinearAction, ring: PolynomialRing<Algebraic>, layers: readonly MonomialLayers[]) {
     this.#action = action;
     this.#ring = ring;
-    this.#layers = action.blocks.map((b) => new MonomialLayers(b.length));
+    this.#layers = layers;
   }
 
   /** A basis, each with coefficient 1 at a leading monomial that no other contains. Throws LimitError where it is too large. */
   basis(degrees: readonly number[]): Polynomial<Algebraic>[] {
     const { blocks } = this.#action;
-    const monomials = gradedMonomials(blocks, degrees);
+    const monomials = gradedMonomials(this.#layers, blocks, degrees);
     if (monomials.length > MONOMIALS_MOST)
       throw new LimitError(`${monomials.length} monomials of degrees ${degrees.join(', ')}; the limit is ${MONOMIALS_MOST}`, {
         next: 'ask for a lower degree',
@@ -144,7 +146,7 @@ export class FixedForms {
 
   #kernel(degrees: readonly number[], powers: readonly (readonly SymmetricPowers[])[], p: number): Kernel {
     const generators = powers.map((g) => this.#rows(degrees, g, p));
-    const count = generators[0]?.length ?? gradedMonomials(this.#action.blocks, degrees).length;
+    const count = generators[0]?.length ?? gradedMonomials(this.#layers, this.#action.blocks, degrees).length;
     const root = Int32Array.from({ length: count }, (_, i) => i);
     const find = (i: number): number => {
       while (root[i] !== i) i = root[i] = root[root[i]!]!;

@@ -1,20 +1,20 @@
 /** Monomials with given degrees in the blocks, and the lists of such degrees. */
-import { type Monomial, monomialsOfDegree, multiplyMonomials } from '../polynomial/index.ts';
+import { type Monomial, multiplyMonomials, UNIT } from '../polynomial/index.ts';
+import type { MonomialLayers } from './monomial-layers.ts';
 
-/** All monomials with these degrees in these blocks of variables. */
-export function gradedMonomials(blocks: readonly (readonly number[])[], degrees: readonly number[]): Monomial[] {
-  let list: Monomial[] = [''];
+/** All monomials with these degrees in these blocks of variables: the last block runs fastest. */
+export function gradedMonomials(
+  layers: readonly MonomialLayers[],
+  blocks: readonly (readonly number[])[],
+  degrees: readonly number[],
+): Monomial[] {
+  let list: readonly Monomial[] | undefined;
   blocks.forEach((block, b) => {
     if (degrees[b] === 0) return;
-    const own = monomialsOfDegree(block.length, degrees[b]!).map((m) => {
-      let out = '';
-      for (let i = 0; i < m.length; i++) out += String.fromCharCode(block[m.charCodeAt(i)]!);
-      return out;
-    });
-    list =
-      list.length === 1 ? own.map((m) => multiplyMonomials(list[0]!, m)) : list.flatMap((x) => own.map((y) => multiplyMonomials(x, y)));
+    const own = layers[b]!.names(degrees[b]!, block);
+    list = list === undefined ? own : list.flatMap((x) => own.map((y) => multiplyMonomials(x, y)));
   });
-  return list;
+  return list === undefined ? [UNIT] : [...list];
 }
 
 /** All lists of `parts` non-negative integers with a given sum, the first ones largest first. */

@@ -6,7 +6,6 @@
  */
 import { type Algebraic, lcmInt, RealField } from '../field/index.ts';
 import { at, type Matrix } from '../linear/index.ts';
-import type { Monomial } from '../polynomial/index.ts';
 import type { LinearAction, ScalarField } from './linear-action.ts';
 
 export interface LetterMap {
@@ -149,27 +148,4 @@ function planeRow(
   if (phase === undefined) return undefined;
   if (f.equal(u, f.neg(beta)) && f.equal(v, alpha)) return { image: c, phase };
   return f.equal(u, beta) && f.equal(v, f.neg(alpha)) ? { image: d, phase } : undefined;
-}
-
-/** A monomial in letters composed with a generator: its image and phase. */
-export function applyLetters(m: Monomial, g: LetterMap, order: number): { image: Monomial; phase: number } {
-  const n = m.length;
-  const codes = new Array<number>(n);
-  let phase = 0;
-  for (let i = 0; i < n; i++) {
-    const k = m.charCodeAt(i);
-    phase += g.phase[k]!;
-    const c = g.image[k]!;
-    let j = i;
-    for (; j > 0 && codes[j - 1]! > c; j--) codes[j] = codes[j - 1]!;
-    codes[j] = c;
-  }
-  return { image: String.fromCharCode(...codes), phase: phase % order };
-}
-
-/** The complex conjugate of a monomial in letters. */
-export function conjugateMonomial(m: Monomial, conjugate: readonly number[]): Monomial {
-  const codes: number[] = [];
-  for (let i = 0; i < m.length; i++) codes.push(conjugate[m.charCodeAt(i)]!);
-  return String.fromCharCode(...codes.sort((a, b) => a - b));
 }

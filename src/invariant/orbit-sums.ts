@@ -2,7 +2,9 @@
 import { type Algebraic, RealField } from '../field/index.ts';
 import { factorsOf, type Monomial, type Polynomial, type PolynomialRing } from '../polynomial/index.ts';
 import { gradedMonomials } from './graded-monomials.ts';
-import { applyLetters, conjugateMonomial, type Letters } from './letters.ts';
+import type { LetterMap, Letters } from './letters.ts';
+import type { LinearAction } from './linear-action.ts';
+import type { MonomialLayers } from './monomial-layers.ts';
 
 /** The sum of exp(2 pi i phase/order) times monomials in letters, or its real or imaginary part. */
 export interface OrbitSum {
@@ -11,52 +13,130 @@ export interface OrbitSum {
   readonly phases: readonly number[];
 }
 
-/** All orbit sums with these degrees in the blocks: a basis of the invariants. */
-export function orbitSums(letters: Letters, blocks: readonly (readonly number[])[], degrees: readonly number[], real: boolean): OrbitSum[] {
-  const seen = new Set<Monomial>();
-  const out: OrbitSum[] = [];
-  const { order } = letters;
-  for (const start of gradedMonomials(blocks, degrees)) {
-    if (seen.has(start)) continue;
-    const phase = new Map<Monomial, number>([[start, 0]]);
-    const queue = [start];
-    let consistent = true;
-    for (let i = 0; i < queue.length; i++) {
-      const m = queue[i]!;
-      const own = phase.get(m)!;
-      for (const g of letters.generators) {
-        // f∘g = f: the coefficient at the image is that at m times the phase
-        const { image, phase: p } = applyLetters(m, g, order);
-        const now = (own + p) % order;
-        const known = phase.get(image);
-        if (known === undefined) {
-          phase.set(image, now);
-          queue.push(image);
-        } else if (known !== now) consistent = false;
-      }
-    }
-    for (const m of queue) seen.add(m);
-    if (!real || letters.planes.length === 0) {
-      if (consistent) out.push({ part: 'all', monomials: queue, phases: queue.map((m) => phase.get(m)!) });
-      continue;
-    }
-    const mirror = conjugateMonomial(start, letters.conjugate);
-    const k = phase.get(mirror);
-    if (k === undefined) for (const m of queue) seen.add(conjugateMonomial(m, letters.conjugate));
-    if (!consistent) continue;
-    if (k === undefined) {
-      const phases = queue.map((m) => phase.get(m)!);
-      out.push({ part: 'real', monomials: queue, phases }, { part: 'imaginary', monomials: queue, phases });
-      continue;
-    }
-    // the conjugate of the sum f is exp(-2 pi i k/order) f, so exp(-pi i k/order) f is real; k is even
-    const kept = queue.filter((m) => {
-      const c = conjugateMonomial(m, letters.conjugate);
-      return m <= c || !phase.has(c);
-    });
-    out.push({ part: 'real', monomials: kept, phases: kept.map((m) => (phase.get(m)! - k / 2 + order) % order) });
+/** A letter map on the monomials of one degree in one block, by number. */
+interface Image {
+  readonly image: Int32Array;
+  readonly phase: Int32Array;
+}
+
+export class OrbitSums {
+  readonly #letters: Letters;
+  readonly #blocks: readonly (readonly number[])[];
+  readonly #layers: readonly MonomialLayers[];
+  readonly #real: boolean;
+  /** The generators, then complex conjugation. */
+  readonly #maps: readonly LetterMap[];
+  /** images[map][block][degree] */
+  readonly #images: readonly (readonly Image[][])[];
+
+  constructor(letters: Letters, action: LinearAction, layers: readonly MonomialLayers[]) {
+    this.#letters = letters;
+    this.#blocks = action.blocks;
+    this.#layers = layers;
+    this.#real = action.field instanceof RealField && letters.planes.length > 0;
+    this.#maps = [...letters.generators, { image: letters.conjugate, phase: letters.conjugate.map(() => 0) }];
+    this.#images = this.#maps.map(() => action.blocks.map(() => [{ image: new Int32Array(1), phase: new Int32Array(1) }]));
   }
-  return out;
+
+  #image(map: number, block: number, degree: number): Image {
+    const known = this.#images[map]![block]!;
+    const { image: letter, phase: turn } = this.#maps[map]!;
+    const variables = this.#blocks[block]!;
+    const layers = this.#layers[block]!;
+    const { order } = this.#letters;
+    const { n } = layers;
+    const local = variables.map((v) => variables.indexOf(letter[v]!));
+    while (known.length <= degree) {
+      const k = known.length;
+      const { size, parent, last } = layers.layer(k);
+      const times = layers.times(k - 1);
+      const below = known[k - 1]!;
+      const image = new Int32Array(size);
+      const phase = new Int32Array(size);
+      for (let i = 0; i < size; i++) {
+        const from = parent[i]!;
+        const v = last[i]!;
+        image[i] = times[below.image[from]! * n + local[v]!]!;
+        phase[i] = (below.phase[from]! + turn[variables[v]!]!) % order;
+      }
+      known.push({ image, phase });
+    }
+    return known[degree]!;
+  }
+  /** The map on the monomials of these degrees, numbered with the last block running fastest. */
+  #combined(map: number, degrees: readonly number[]): Image {
+    const { order } = this.#letters;
+    let image: Int32Array = new Int32Array(1);
+    let phase: Int32Array = new Int32Array(1);
+    degrees.forEach((d, b) => {
+      if (d === 0) return;
+      const own = this.#image(map, b, d);
+      const width = own.image.length;
+      const nextImage = new Int32Array(image.length * width);
+      const nextPhase = new Int32Array(image.length * width);
+      for (let i = 0; i < image.length; i++)
+        for (let j = 0; j < width; j++) {
+          nextImage[i * width + j] = image[i]! * width + own.image[j]!;
+          nextPhase[i * width + j] = (phase[i]! + own.phase[j]!) % order;
+        }
+      image = nextImage;
+      phase = nextPhase;
+    });
+    return { image, phase };
+  }
+
+  /** All orbit sums with these degrees in the blocks: a basis of the invariants. */
+  of(degrees: readonly number[]): OrbitSum[] {
+    const { order } = this.#letters;
+    const names = gradedMonomials(this.#layers, this.#blocks, degrees);
+    const generators = this.#letters.generators.map((_, g) => this.#combined(g, degrees));
+    const conjugate = this.#real ? this.#combined(this.#maps.length - 1, degrees).image : undefined;
+    const phase = new Int32Array(names.length).fill(-1);
+    const orbitOf = new Int32Array(names.length).fill(-1);
+    const skipped = new Uint8Array(names.length);
+    const out: OrbitSum[] = [];
+    const sum = (part: OrbitSum['part'], list: readonly number[], turn = 0): OrbitSum => ({
+      part,
+      monomials: list.map((m) => names[m]!),
+      phases: list.map((m) => (phase[m]! - turn + order) % order),
+    });
+    for (let start = 0; start < names.length; start++) {
+      if (phase[start] !== -1) continue;
+      phase[start] = 0;
+      orbitOf[start] = start;
+      const orbit = [start];
+      let consistent = true;
+      for (let i = 0; i < orbit.length; i++) {
+        const m = orbit[i]!;
+        // f∘g = f: the coefficient at the image is that at m times the phase
+        for (const g of generators) {
+          const next = g.image[m]!;
+          const now = (phase[m]! + g.phase[m]!) % order;
+          if (phase[next] === -1) {
+            phase[next] = now;
+            orbitOf[next] = start;
+            orbit.push(next);
+          } else if (phase[next] !== now) consistent = false;
+        }
+      }
+      if (!consistent || skipped[start] === 1) continue;
+      orbit.sort((a, b) => a - b);
+      if (conjugate === undefined) {
+        out.push(sum('all', orbit));
+        continue;
+      }
+      const mirror = conjugate[start]!;
+      if (orbitOf[mirror] !== start) {
+        for (const m of orbit) skipped[conjugate[m]!] = 1;
+        out.push(sum('real', orbit), sum('imaginary', orbit));
+        continue;
+      }
+      // the conjugate of the sum f is exp(-2 pi i k/order) f, so exp(-pi i k/order) f is real; k is even
+      const kept = orbit.filter((m) => m <= conjugate[m]!);
+      out.push(sum('real', kept, phase[mirror]! / 2));
+    }
+    return out;
+  }
 }
 
 /** Writes orbit sums in real coordinates (in the coordinates themselves over a cyclotomic field). */

@@ -9,8 +9,8 @@ import { type Polynomial, PolynomialRing } from '../polynomial/index.ts';
 import { CommonReduction } from './common-reduction.ts';
 import { binomial } from './dimensions.ts';
 import { Span } from './evaluation.ts';
-import { gradedMonomials } from './graded-monomials.ts';
 import type { LinearAction } from './linear-action.ts';
+import { MonomialLayers } from './monomial-layers.ts';
 
 /** Largest number of monomials in Macaulay's criterion. */
 export const MACAULAY_MOST = 500;
@@ -22,9 +22,10 @@ export function isParameterSystem(action: LinearAction, variables: readonly numb
   const degrees = forms.map((f) => f.monomials.at(-1)!.length);
   const top = degrees.reduce((s, d) => s + d - 1, 1);
   if (binomial(top + n - 1, n - 1) > BigInt(MACAULAY_MOST)) return false;
+  const layers = new MonomialLayers(n);
   const reduction = CommonReduction.of(action.field);
   const { p } = reduction;
-  const columns = gradedMonomials([variables], [top]);
+  const columns = layers.names(top, variables);
   const place = new Map(columns.map((m, i) => [m, i] as const));
   const ring = new PolynomialRing<number>(new PrimeField(p), action.names);
   const span = new Span(p, columns.length, columns.length);
@@ -34,7 +35,7 @@ export function isParameterSystem(action: LinearAction, variables: readonly numb
       (c) => c,
       ring,
     );
-    for (const m of gradedMonomials([variables], [top - degrees[k]!])) {
+    for (const m of layers.names(top - degrees[k]!, variables)) {
       const row = new Int32Array(columns.length);
       const q = ring.mul(ring.term(m, 1), f);
       q.monomials.forEach((x, i) => {

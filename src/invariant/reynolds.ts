@@ -5,7 +5,6 @@
  */
 import { LimitError } from '../errors/index.ts';
 import type { Algebraic } from '../field/index.ts';
-import { RealField } from '../field/index.ts';
 import { mapMatrix } from '../linear/index.ts';
 import { type Polynomial, PolynomialRing } from '../polynomial/index.ts';
 import { GradedDimensions } from './dimensions.ts';
@@ -13,7 +12,8 @@ import { FixedForms } from './fixed-forms.ts';
 import { compositions } from './graded-monomials.ts';
 import { findLetters, type Letters } from './letters.ts';
 import type { LinearAction } from './linear-action.ts';
-import { type OrbitSum, OrbitSumExpander, orbitSums } from './orbit-sums.ts';
+import { MonomialLayers } from './monomial-layers.ts';
+import { type OrbitSum, OrbitSumExpander, OrbitSums } from './orbit-sums.ts';
 import { primitive } from './primitive.ts';
 
 export interface BasisElement {
@@ -29,12 +29,16 @@ export class InvariantSpaces {
   readonly letters: Letters | undefined;
   readonly #expander: OrbitSumExpander | undefined;
   readonly #fixed: FixedForms;
+  readonly #layers: readonly MonomialLayers[];
+  readonly #orbits: OrbitSums | undefined;
   constructor(action: LinearAction) {
     this.action = action;
     this.ring = new PolynomialRing<Algebraic>(action.field, action.names);
     this.dimensions = new GradedDimensions(action);
     this.letters = findLetters(action);
-    this.#fixed = new FixedForms(action, this.ring);
+    this.#layers = action.blocks.map((b) => new MonomialLayers(b.length));
+    this.#fixed = new FixedForms(action, this.ring, this.#layers);
+    this.#orbits = this.letters === undefined ? undefined : new OrbitSums(this.letters, action, this.#layers);
     this.#expander = this.letters === undefined ? undefined : new OrbitSumExpander(this.ring, this.letters);
   }
   /** Basis of the invariants with these degrees in the blocks, coefficients primitive where they are rational. */
@@ -47,9 +51,9 @@ export class InvariantSpaces {
     return scaled;
   }
   #orbitBasis(degrees: readonly number[]): BasisElement[] | undefined {
-    if (this.letters === undefined || this.#expander === undefined) return undefined;
+    if (this.#orbits === undefined || this.#expander === undefined) return undefined;
     const out: BasisElement[] = [];
-    for (const orbit of orbitSums(this.letters, this.action.blocks, degrees, this.action.field instanceof RealField)) {
+    for (const orbit of this.#orbits.of(degrees)) {
       const polynomial = this.#expander.expand(orbit);
       if (polynomial === undefined) return undefined;
       out.push({ polynomial, orbit });

@@ -3,61 +3,12 @@
  * m(gx). Built degree by degree, by one linear form at a time.
  */
 import { mulAddMod, mulMod } from '../field/index.ts';
-import { monomialsOfDegree } from '../polynomial/index.ts';
+import type { MonomialLayers } from './monomial-layers.ts';
 
 /** Columns in no order, values nonzero. */
 export interface SparseRow {
   readonly index: Int32Array;
   readonly value: Int32Array;
-}
-
-/** Monomials of one degree in n variables, numbered, and how they arise from the degree below. */
-interface Layer {
-  readonly size: number;
-  /** Monomial = monomial `parent` of the layer below times variable `last`. */
-  readonly parent: Int32Array;
-  readonly last: Int32Array;
-  /** times[i * n + v]: number in the next layer of monomial i times variable v. */
-  times: Int32Array | undefined;
-}
-
-/** The numbering of the monomials in n variables, by degree, in lexicographic order. */
-export class MonomialLayers {
-  readonly n: number;
-  readonly #layers: Layer[];
-  readonly #names: string[][] = [['']];
-  constructor(n: number) {
-    this.n = n;
-    this.#layers = [{ size: 1, parent: new Int32Array(1), last: new Int32Array(1), times: undefined }];
-  }
-  layer(d: number): Layer {
-    while (this.#layers.length <= d) {
-      const k = this.#layers.length;
-      const names = monomialsOfDegree(this.n, k);
-      const place = new Map(names.map((m, i) => [m, i] as const));
-      const below = this.#names[k - 1]!;
-      const times = new Int32Array(below.length * this.n);
-      const parent = new Int32Array(names.length);
-      const last = new Int32Array(names.length);
-      below.forEach((m, i) => {
-        for (let v = 0; v < this.n; v++) {
-          const c = String.fromCharCode(v);
-          let at = m.length;
-          while (at > 0 && m.charCodeAt(at - 1) > v) at--;
-          const j = place.get(m.slice(0, at) + c + m.slice(at))!;
-          times[i * this.n + v] = j;
-          if (at === m.length) {
-            parent[j] = i;
-            last[j] = v;
-          }
-        }
-      });
-      this.#layers[k - 1]!.times = times;
-      this.#layers.push({ size: names.length, parent, last, times: undefined });
-      this.#names.push(names);
-    }
-    return this.#layers[d]!;
-  }
 }
 
 /** The symmetric powers of one n x n matrix over GF(p). */
@@ -89,7 +40,7 @@ export class SymmetricPowers {
     while (this.#rows.length <= d) {
       const k = this.#rows.length;
       const layer = this.#layers.layer(k);
-      const times = this.#layers.layer(k - 1).times!;
+      const times = this.#layers.times(k - 1);
       const below = this.#rows[k - 1]!;
       const sum = new Int32Array(layer.size);
       const rows: SparseRow[] = [];

@@ -11,6 +11,7 @@ import {
   minimalGenerators,
   molien,
 } from '../../src/invariant/index.ts';
+import { MonomialLayers } from '../../src/invariant/monomial-layers.ts';
 import { build, modularRank } from '../../src/linear/index.ts';
 import { reduceMatrix } from '../../src/polynomial/index.ts';
 import {
@@ -215,7 +216,11 @@ describe('two routes to a basis: orbit sums and kernels span the same space', ()
     const spaces = new InvariantSpaces(action);
     expect(spaces.letters).toBeDefined();
     const first = spaces.basis(degrees).map((b) => b.polynomial);
-    const second = new FixedForms(action, spaces.ring).basis(degrees);
+    const second = new FixedForms(
+      action,
+      spaces.ring,
+      action.blocks.map((b) => new MonomialLayers(b.length)),
+    ).basis(degrees);
     expect(second.length).toBe(first.length);
     const both = [...first, ...second];
     const monomials = [...new Set(both.flatMap((p) => p.monomials))];
