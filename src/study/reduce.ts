@@ -1,0 +1,138 @@
+/** `reduce`: the reduced Hamiltonian on the kernel in its invariants, its germ and its dynamics. */
+import type { Algebraic } from '../field/index.ts';
+import { rewriteInInvariants } from '../invariant/index.ts';
+import { at, column, inverse as invert, transpose } from '../linear/index.ts';
+import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
+import type { LinearStudy } from './codim.ts';
+import { type Reduction, reductionOf } from './reduction.ts';
+import type { StudyResult } from './result.ts';
+import { groupSummary, head, linearText } from './summary.ts';
+
+export interface ReducedSummary {
+  readonly leadingDegree: number | null;
+  /** h in the invariants, with the unfolding by the varied parameters. */
+  readonly expression: string;
+  readonly codimension: number | null;
+  readonly moduli: number | null;
+  readonly stratumCodimension: number | null;
+  readonly unfolding: readonly string[];
+  readonly determinedAt: number | null;
+  /** Degree to which h was computed. */
+  readonly degree: number;
+  readonly coordinates: readonly { readonly name: string; readonly vector: string }[];
+  readonly invariants: readonly { readonly name: string; readonly polynomial: string }[];
+  readonly conditions?: readonly string[];
+  readonly moduliTerms?: readonly string[];
+  readonly because: string;
+  /** h in the coordinates of the kernel, at the event. */
+  readonly polynomial: string;
+  /** Kinetic part where the pair splits; Poisson brackets of the kernel where it passes. */
+  readonly kinetic?: string;
+  readonly brackets?: readonly string[];
+  /** Whether codimension does not exceed the number of parameters of the study. */
+  readonly generic: boolean | null;
+}
+
+export interface ReduceResult extends StudyResult {
+  readonly reduced: ReducedSummary;
+}
+
+/** Throws UsageError where nothing is at zero. */
+export function reduceResult(study: LinearStudy, parameters: number, degree?: number): ReduceResult {
+  const reduction = reductionOf(study, degree);
+  return {
+    ...head('reduce', study.prepared, groupSummary(study.action, study.prepared)),
+    reduced: reducedSummary(study, reduction, parameters),
+  };
+}
+
+/** The reduced Hamiltonian as a polynomial in the kernel coordinates over the parameters, shown as (mu - mu0). */
+function overParameters(reduction: Reduction): {
+  ring: PolynomialRing<RationalFunction<Algebraic>>;
+  h: Polynomial<RationalFunction<Algebraic>>;
+  symbols: RationalFunctionField<Algebraic>;
+} {
+  const { field, reduced, parameters } = reduction;
+  const shown = parameters.map(({ name, value }) => {
+    if (field.isZero(value)) return name;
+    const text = field.format(field.sign(value) < 0 ? field.neg(value) : value);
+    return `(${name} ${field.sign(value) < 0 ? '+' : '-'} ${/ [+-] /.test(text) ? `(${text})` : text})`;
+  });
+  const symbols = new RationalFunctionField<Algebraic>(new PolynomialRing(field, shown));
+  const k = reduction.ring.variables.length;
+  const ring = new PolynomialRing<RationalFunction<Algebraic>>(symbols, reduction.ring.variables);
+  const terms = reduced.h.monomials.map((m, i): [number[], RationalFunction<Algebraic>] => {
+    const exponents = new Array<number>(k).fill(0);
+    let c = symbols.fromConstant(reduced.h.coefficients[i]!);
+    for (const [v, e] of factorsOf(m)) {
+      if (v < k) exponents[v] = e;
+      else for (let j = 0; j < e; j++) c = symbols.mul(c, symbols.symbol(v - k));
+    }
+    return [exponents, c];
+  });
+  return { ring, h: ring.fromTerms(terms), symbols };
+}
+
+export function reducedSummary(study: LinearStudy, reduction: Reduction, parameters: number): ReducedSummary {
+  const { analysis, generators, space, field, ring, germ } = reduction;
+  const { ring: wide, h, symbols } = overParameters(reduction);
+  const rewritten = rewriteInInvariants(h, wide, generators, (a) => symbols.fromConstant(a));
+  const names = study.prepared.quantities.names;
+  const motion = dynamics(study, reduction);
+  const used = new Set(rewritten.expression.monomials.flatMap((m) => factorsOf(m).map(([v]) => v)));
+  return {
+    leadingDegree: analysis.leadingDegree,
+    expression: rewritten.ring.format(rewritten.expression),
+    codimension: analysis.codimension,
+    moduli: analysis.moduli,
+    stratumCodimension: analysis.stratumCodimension,
+    unfolding: analysis.unfolding,
+    determinedAt: analysis.determinedAt,
+    degree: reduction.degree,
+    coordinates: reduction.ring.variables.map((name, j) => ({ name, vector: linearText(column(space.basis, j), names, field) })),
+    invariants: generators.generators
+      .filter((g, i) => used.has(i) || analysis.unfolding.some((u) => new RegExp(`\\b${g.name}\\b`).test(u)))
+      .map((g) => ({ name: g.name, polynomial: generators.spaces.ring.format(g.polynomial) })),
+    ...(analysis.conditions === null || analysis.conditions.length === 0 ? {} : { conditions: analysis.conditions }),
+    ...(analysis.moduliTerms.length === 0 ? {} : { moduliTerms: analysis.moduliTerms }),
+    because: analysis.because,
+    polynomial: ring.format(germ),
+    ...motion,
+    generic: analysis.stratumCodimension === null ? null : analysis.stratumCodimension <= parameters,
+  };
+}
+
+/** ½ε|y|² beside h where the kernel is isotropic and the blocks have size 2; the brackets of u where ω|K is nondegenerate. */
+function dynamics(study: LinearStudy, reduction: Reduction): { kinetic?: string; brackets?: readonly string[] } {
+  const { form, field, ring } = reduction;
+  const { event } = study;
+  const k = ring.variables.length;
+  if (form.data.every((x) => field.isZero(x))) {
+    if (event.sizes.some((s) => s !== 2)) return {};
+    const signs = event.blocks.flatMap((b) =>
+      b.signed.map((s) => ({ positive: s.positive * b.block.copies, negative: s.negative * b.block.copies })),
+    );
+    const positive = signs.reduce((s, x) => s + x.positive, 0);
+    const negative = signs.reduce((s, x) => s + x.negative, 0);
+    const sum = (from: number, to: number) => Array.from({ length: to - from }, (_, i) => `y${from + i + 1}^2`).join(' + ');
+    if (negative === 0) return { kinetic: `(${sum(0, positive)})/2` };
+    if (positive === 0) return { kinetic: `-(${sum(0, negative)})/2` };
+    return { kinetic: `(${sum(0, positive)})/2 - (${sum(positive, positive + negative)})/2` };
+  }
+  const brackets: string[] = [];
+  try {
+    const inverse = invertForm(reduction);
+    for (let i = 0; i < k; i++)
+      for (let j = i + 1; j < k; j++) {
+        const x = at(inverse, i, j);
+        if (!field.isZero(x)) brackets.push(`{${ring.variables[i]}, ${ring.variables[j]}} = ${field.format(x)}`);
+      }
+  } catch (error) {
+    if (!(error instanceof RangeError)) throw error;
+    return {};
+  }
+  return { brackets };
+}
+
+/** J = W^{-T} on the kernel: {u_i, u_j} = J_ij. */
+const invertForm = (reduction: Reduction) => transpose(invert(reduction.form));
