@@ -93,48 +93,57 @@ export class OrbitSums {
     const conjugate = this.#real ? this.#combined(this.#maps.length - 1, degrees).image : undefined;
     const phase = new Int32Array(names.length).fill(-1);
     const orbitOf = new Int32Array(names.length).fill(-1);
-    const skipped = new Uint8Array(names.length);
+    const queue = new Int32Array(names.length);
+    const orbits: Array<{ start: number; consistent: boolean; members: number[] }> = [];
+    for (let start = 0, tail = 0; start < names.length; start++) {
+      if (phase[start] !== -1) continue;
+      let consistent = true;
+      let head = tail;
+      queue[tail++] = start;
+      phase[start] = 0;
+      orbitOf[start] = orbits.length;
+      for (; head < tail; head++) {
+        const m = queue[head]!;
+        const own = phase[m]!;
+        // f∘g = f: the coefficient at the image is that at m times the phase
+        for (let g = 0; g < generators.length; g++) {
+          const { image, phase: turn } = generators[g]!;
+          const next = image[m]!;
+          let now = own + turn[m]!;
+          if (now >= order) now -= order;
+          if (phase[next] === -1) {
+            phase[next] = now;
+            orbitOf[next] = orbits.length;
+            queue[tail++] = next;
+          } else if (phase[next] !== now) consistent = false;
+        }
+      }
+      orbits.push({ start, consistent, members: [] });
+    }
+    for (let m = 0; m < names.length; m++) orbits[orbitOf[m]!]!.members.push(m);
     const out: OrbitSum[] = [];
     const sum = (part: OrbitSum['part'], list: readonly number[], turn = 0): OrbitSum => ({
       part,
       monomials: list.map((m) => names[m]!),
       phases: list.map((m) => (phase[m]! - turn + order) % order),
     });
-    for (let start = 0; start < names.length; start++) {
-      if (phase[start] !== -1) continue;
-      phase[start] = 0;
-      orbitOf[start] = start;
-      const orbit = [start];
-      let consistent = true;
-      for (let i = 0; i < orbit.length; i++) {
-        const m = orbit[i]!;
-        // f∘g = f: the coefficient at the image is that at m times the phase
-        for (const g of generators) {
-          const next = g.image[m]!;
-          const now = (phase[m]! + g.phase[m]!) % order;
-          if (phase[next] === -1) {
-            phase[next] = now;
-            orbitOf[next] = start;
-            orbit.push(next);
-          } else if (phase[next] !== now) consistent = false;
-        }
-      }
-      if (!consistent || skipped[start] === 1) continue;
-      orbit.sort((a, b) => a - b);
+    orbits.forEach(({ start, consistent, members }, o) => {
+      if (!consistent) return;
       if (conjugate === undefined) {
-        out.push(sum('all', orbit));
-        continue;
+        out.push(sum('all', members));
+        return;
       }
       const mirror = conjugate[start]!;
-      if (orbitOf[mirror] !== start) {
-        for (const m of orbit) skipped[conjugate[m]!] = 1;
-        out.push(sum('real', orbit), sum('imaginary', orbit));
-        continue;
+      const other = orbitOf[mirror]!;
+      if (other !== o) {
+        // of two conjugate orbits the first gives both parts
+        if (other > o) out.push(sum('real', members), sum('imaginary', members));
+        return;
       }
       // the conjugate of the sum f is exp(-2 pi i k/order) f, so exp(-pi i k/order) f is real; k is even
-      const kept = orbit.filter((m) => m <= conjugate[m]!);
+      const kept = members.filter((m) => m <= conjugate[m]!);
       out.push(sum('real', kept, phase[mirror]! / 2));
-    }
+    });
     return out;
   }
 }
@@ -170,8 +179,13 @@ export class OrbitSumExpander {
       );
     }
     const signs = sum.phases.every((k) => k === 0 || 2 * k === order);
-    if (this.#letters.planes.length === 0)
-      return ring.fromTerms(sum.monomials.map((m, i) => [m, sum.phases[i] === 0 ? field.one : field.neg(field.one)] as const));
+    if (this.#letters.planes.length === 0) {
+      const minus = field.neg(field.one);
+      const coefficients = sum.phases.map((k) => (k === 0 ? field.one : minus));
+      const { monomials } = sum;
+      const ordered = monomials.every((m, i) => i === 0 || monomials[i - 1]! < m);
+      return ordered ? { monomials, coefficients } : ring.fromTerms(monomials.map((m, i) => [m, coefficients[i]!] as const));
+    }
     const parts: Polynomial<Algebraic>[] = [];
     for (let i = 0; i < sum.monomials.length; i++) {
       const { re, im } = this.#monomial(sum.monomials[i]!);

@@ -5,6 +5,7 @@ import type { Polynomial, PolynomialRing } from '../polynomial/index.ts';
 /** Times the rational number that makes all coordinates integers without common factor, the first coefficient positive. */
 export function primitive(ring: PolynomialRing<Algebraic>, a: Polynomial<Algebraic>): Polynomial<Algebraic> {
   if (a.coefficients.length === 0 || !(ring.field instanceof AbelianField)) return a;
+  if (a.coefficients[0] === ring.field.one && a.coefficients.every((c) => c.d === 1n)) return a;
   let d = 1n;
   for (const c of a.coefficients) if (c.d !== 1n) d *= c.d / gcd(d, c.d);
   let g = 0n;
