@@ -21,7 +21,8 @@ import { type Family, versality } from '../event/versality.ts';
 import { type BlockForms, blockForms, motionOf, type ZeroEvent, zeroEvent } from '../event/zero-event.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
 import { type SubgroupClass, subgroupClasses } from '../group/index.ts';
-import { above, dense, fromColumns, identity, image, inertia, kernel, type Matrix, sub } from '../linear/index.ts';
+import { above, add, dense, fromColumns, identity, image, inertia, inverse, kernel, type Matrix, multiply, type SparseMatrix, scale, sparse, sub, transpose } from '../linear/index.ts';
+import { formDerivatives } from '../model/form-family.ts';
 import { cubicAlong } from '../model/local.ts';
 import { linearCertificate } from './certificate.ts';
 import { labelledComponents } from './labels.ts';
@@ -106,6 +107,24 @@ export function fixedSpace(action: Action, components: Components): Matrix<Algeb
   return kernel(stacked!);
 }
 
+/**
+ * ∂S/∂μ as it would be in coordinates that keep the form fixed: S_μ + BᵀS + SB with B = −½ W⁻¹W_μ where the form depends on
+ * the parameters.
+ */
+function canonicalDerivatives(study: LinearStudy, hessianBy: readonly SparseMatrix<Algebraic>[]): readonly SparseMatrix<Algebraic>[] {
+  const { prepared, action } = study;
+  const by = formDerivatives(prepared.declaration, prepared.quantities, prepared.field);
+  if (by === undefined) return hessianBy;
+  const f = action.field;
+  const s = dense(hessianOf(study));
+  const back = inverse(dense(action.form));
+  return hessianBy.map((m, j) => {
+    const b = scale(multiply(back, dense(embedSparse(by[j]!, prepared.field, f))), f.fromRational(-1n, 2n));
+    const sb = multiply(s, b);
+    return sparse(add(dense(m), add(sb, transpose(sb))));
+  });
+}
+
 function family(study: LinearStudy): Family {
   const { prepared, action, components } = study;
   const { local, field: from } = prepared;
@@ -114,7 +133,7 @@ function family(study: LinearStudy): Family {
   return {
     field: to,
     hessian: embedSparse(local.hessian, from, to),
-    hessianBy: local.hessianBy.map((m) => embedSparse(m, from, to)),
+    hessianBy: canonicalDerivatives(study, local.hessianBy.map((m) => embedSparse(m, from, to))),
     gradientBy: local.gradientBy.map((g) => g.map(move)),
     cubicAlong: (v) => {
       const back = v.map((x) => x);

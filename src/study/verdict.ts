@@ -66,7 +66,11 @@ export function verdict(facts: VerdictFacts | null, parameters: number, neutral 
       );
     else lines.push(`The kernel is simple and the zero block has size 2: codimension 1, met by any one-parameter family; the pair splits.`);
     if (only && facts.kernelComponents[0]!.trivial && facts.motion === 'splits')
-      lines.push('The mode has the full symmetry, so the equilibrium itself turns back at a fold.');
+      lines.push(
+        facts.versality?.onto === false
+          ? 'The mode has the full symmetry: in general the equilibrium itself would turn back at a fold; that it persists here is more than the symmetry explains.'
+          : 'The mode has the full symmetry, so the equilibrium itself turns back at a fold.',
+      );
   } else if (generic)
     lines.push(
       `The event has codimension ${facts.codimension}, no more than the ${plural(parameters, 'parameter')} of the study (${facts.codimensionWithoutSymmetry} without symmetry).`,
