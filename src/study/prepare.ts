@@ -121,7 +121,7 @@ export function prepare(declaration: Declaration): Prepared | NotExact {
   };
 }
 
-function requireNondegenerate(quantities: Quantities, declaration: Declaration): void {
+export function requireNondegenerate(quantities: Quantities, declaration: Declaration): void {
   if (declaration.form === undefined) return;
   const w = quantities.form;
   const reduction = quantities.field.reduction();

@@ -41,6 +41,8 @@ export interface ComponentSummary {
   /** Symmetry-adapted basis: columns as linear forms in the coordinates, and the blocks of S on it. */
   readonly basis?: readonly string[];
   readonly block?: readonly (readonly Value[])[];
+  /** How many spaces like that of the basis make up the component; S looks the same on each. */
+  readonly copies?: number;
 }
 
 /** One block of the flow: what `classes` of the contract lists, with the block of L. */
@@ -184,6 +186,8 @@ export interface CodimResult extends StudyResult {
 export interface ComponentsResult extends StudyResult {
   readonly components: readonly ComponentSummary[];
   readonly classes: readonly ClassSummary[];
+  /** Parameters that stay symbols in the blocks. */
+  readonly symbols?: readonly string[];
 }
 
 export interface EventSummary {

@@ -30,6 +30,14 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       const { invariantsResult } = await import('./invariants.ts');
       return { result: invariantsResult(declaration, declaration.degree), status: 0, notes: [] };
     }
+    case 'components': {
+      const { componentsResult } = await import('./components.ts');
+      return { result: await componentsResult(declaration), status: 0, notes: [] };
+    }
+    case 'events': {
+      const { eventsResult } = await import('./events.ts');
+      return { result: await eventsResult(declaration), status: 0, notes: [] };
+    }
   }
   if (command === 'report') {
     const { reportAnswer } = await import('./report.ts');

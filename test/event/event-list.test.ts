@@ -7,8 +7,8 @@ import { type BlockCapacity, blockEvents, inertiaOfBlock, zeroEvents } from '../
 import { type ClassNumber, codimensionByClass, collisionCodimension } from '../../src/event/partition-codimension.ts';
 import { type SignedType, signedPartitions } from '../../src/event/signed-partitions.ts';
 import { inertia } from '../../src/linear/index.ts';
-import { eventOf, F } from '../support/actions.ts';
-import { actionOfModel, hessianOf, MODELS, nilpotentModel } from './normal-forms.ts';
+import { eventOf } from '../support/actions.ts';
+import { actionOfModel, F, hessianOf, MODELS, nilpotentModel } from './normal-forms.ts';
 
 const capacity = (classNumber: ClassNumber, copies: number, signature: [number, number] | null = null): BlockCapacity => ({
   classNumber,

@@ -5,9 +5,9 @@
  */
 import type { ClassNumber } from '../../src/event/partition-codimension.ts';
 import type { SignedType } from '../../src/event/signed-partitions.ts';
-import type { Algebraic } from '../../src/field/index.ts';
+import { type Algebraic, RealField } from '../../src/field/index.ts';
 import { build, directSum, identity, type Matrix, multiply, scale, transpose } from '../../src/linear/index.ts';
-import { action, blocks, diag, F, kron, mat, quaternion, rotation } from '../support/actions.ts';
+import { action, blocks, diag, kron, mat, quaternion, rotation } from '../support/actions.ts';
 
 export interface ClassModel {
   /** K(g) and σ(g) of each generator. */
@@ -16,6 +16,9 @@ export interface ClassModel {
   readonly form?: Matrix<Algebraic>;
   readonly skew: boolean;
 }
+
+/** Holds the cosines and sines of multiples of 2 pi/6. */
+export const F = RealField.of({ squareRoots: [3n] });
 
 const { li, lj, ri, rj } = quaternion(F);
 const J = mat(F, [
