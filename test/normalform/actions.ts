@@ -1,6 +1,6 @@
 /** Real actions of small groups on a kernel, from matrices of generators. */
 import { groupOfMatrices } from '../../src/action/orbit.ts';
-import { type Algebraic, RealField } from '../../src/field/index.ts';
+import { type Algebraic, gcdInt, RealField } from '../../src/field/index.ts';
 import { type LinearAction, linearAction } from '../../src/invariant/linear-action.ts';
 import { build, directSum, type Matrix, sparse } from '../../src/linear/index.ts';
 import { mat, quaternion, rotation } from '../support/actions.ts';
@@ -20,7 +20,8 @@ export function onKernel(field: RealField, generators: readonly Matrix<Algebraic
 }
 export const trivial = (n: number) =>
   onKernel(Q, [], n <= 3 ? ['x', 'y', 'z'].slice(0, n) : Array.from({ length: n }, (_, i) => `x${i + 1}`));
-const fieldOf = (n: number) => RealField.of({ cosines: [n, 4 * n] });
+/** The smallest field with cos and sin of 2 pi/n = cos 2 pi (n - 4)/(4n). */
+const fieldOf = (n: number) => RealField.of({ cosines: [n, (4 * n) / gcdInt(n - 4, 4 * n)] });
 export const cyclic = (n: number) => onKernel(fieldOf(n), [rotation(fieldOf(n), 1, n)]);
 export const dihedral = (n: number) =>
   onKernel(fieldOf(n), [
