@@ -4,6 +4,7 @@
  * coordinates has accidental symmetries of every linear kind, so only for a nonlinear H of few coordinates are all
  * affine fields tried; else translations, and rotations of all pairs and triples of coordinates together.
  */
+import { fieldColumns, periodicField } from '../action/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
 import {
   build,
@@ -13,6 +14,7 @@ import {
   inverse,
   kernel,
   type Matrix,
+  rank,
   type SparseMatrix,
   sparse,
   sparseFromMaps,
@@ -97,9 +99,43 @@ function linearFields(f: Frame): VectorField[] {
   const out: VectorField[] = [];
   for (let a = 0; a < n; a++)
     for (let b = 0; b <= a; b++) {
-      const m = build(f.field as RealField, n, n, (r, c) => (c === a ? j.data[r * n + b]! : c === b ? j.data[r * n + a]! : f.field.zero));
-      out.push({ where: 'found', linear: sparse(m as Matrix<Algebraic>), constant: zeros(f) });
+      const m = build<Algebraic>(f.field, n, n, (r, c) => (c === a ? j.data[r * n + b]! : c === b ? j.data[r * n + a]! : f.field.zero));
+      out.push({ where: 'found', linear: sparse(m), constant: zeros(f) });
     }
+  return out;
+}
+
+/** Those combinations of the fields whose linear part is skew: translations and turns in the given coordinates. */
+function turns(f: Frame, fields: readonly VectorField[]): VectorField[] {
+  const place = new Map<number, number>();
+  const entries = fields.map((x) => {
+    const column = new Map<number, Algebraic>();
+    x.linear.index.forEach((cols, i) => {
+      cols.forEach((j, k) => {
+        const key = i > j ? i * f.dimension + j : j * f.dimension + i;
+        if (!place.has(key)) place.set(key, place.size);
+        const at = place.get(key)!;
+        column.set(at, f.field.add(column.get(at) ?? f.field.zero, x.linear.value[i]![k]!));
+      });
+    });
+    return column;
+  });
+  const symmetricPart = build<Algebraic>(f.field, place.size, fields.length, (i, j) => entries[j]!.get(i) ?? f.field.zero);
+  return reducedCombinations(f, fields, kernel(symmetricPart));
+}
+
+/**
+ * Products of the momenta of translations generate shears, which say nothing new: kept are translations, turns, and of
+ * the rest what is periodic.
+ */
+function withoutShears(f: Frame, fields: readonly VectorField[]): VectorField[] {
+  const shape = (x: VectorField) => ({ linear: x.linear, value: x.constant });
+  const out = turns(f, fields);
+  for (const x of fields) {
+    if (rank(fieldColumns(f.field, [...out, x].map(shape))) === out.length) continue;
+    const periodic = x.constant.every((v) => f.field.isZero(v)) && periodicField(x.linear, f.field) !== undefined;
+    if (periodic) out.push(x);
+  }
   return out;
 }
 
@@ -115,8 +151,19 @@ function unchanged(f: Frame, candidates: readonly VectorField[], series: EnergyS
     });
   });
   const k = kernel<Algebraic>({ field: f.field, rows: place.size, cols: candidates.length, data });
+  return reducedCombinations(f, candidates, k);
+}
+
+/** The combinations given by the columns of k, brought to echelon form; turns go from the first axis to the second. */
+function reducedCombinations(f: Frame, fields: readonly VectorField[], k: Matrix<Algebraic>): VectorField[] {
   const reduced = echelon(transpose(k)).matrix;
-  return columns(transpose(reduced)).map((c) => combination(f, candidates, c));
+  return columns(transpose(reduced)).map((c) => {
+    const x = combination(f, fields, c);
+    const first = x.linear.value.find((v) => v.length > 0)?.[0];
+    const backwards = first !== undefined && f.field.sign(first) > 0 && x.constant.every((v) => f.field.isZero(v));
+    const turned = c.map((v) => f.field.neg(v));
+    return backwards ? combination(f, fields, turned) : x;
+  });
 }
 
 function combination(f: Frame, fields: readonly VectorField[], c: readonly Algebraic[]): VectorField {
@@ -178,6 +225,7 @@ export function findFields(search: SymmetrySearch): VectorField[] {
     );
   }
   const nonlinear = series.polynomial.monomials.some((m) => [...m].filter((c) => c.charCodeAt(0) < f.dimension).length > 2);
-  const linear = nonlinear && f.dimension <= ALL_FIELDS_LIMIT ? linearFields(f) : rotations(f);
-  return unchanged(f, [...translations(f), ...linear], series, point);
+  const all = nonlinear && f.dimension <= ALL_FIELDS_LIMIT;
+  const found = unchanged(f, [...translations(f), ...(all ? linearFields(f) : rotations(f))], series, point);
+  return all ? withoutShears(f, found) : found;
 }
