@@ -29,6 +29,7 @@ import { labelledComponents } from './labels.ts';
 import { type SliceStudy, sliceComponents, sliceFixed, sliceStudy, sliceSubgroups, wholePiece, withContinuous } from './neutral-slice.ts';
 import { actionOf, type Prepared, requireHolds } from './prepare.ts';
 import type { CodimResult, InertiaSummary, SubgroupSummary, ZeroSummary } from './result.ts';
+import { spectrumSummary } from './spectrum.ts';
 import { componentSummaries, groupSummary, head } from './summary.ts';
 import { type VerdictFacts, verdict } from './verdict.ts';
 
@@ -218,7 +219,7 @@ export function codimResult(study: LinearStudy, parameters: number): CodimResult
             facts.kernelComponents.map((k) => k.label),
             motion,
           ),
-    collisions: [],
+    ...spectrumSummary(study, slicing?.slice.neutral),
     verdict: verdict(facts, parameters, slicing?.slice.neutral),
     certificate: { linear: linearCertificate(study, blocks) },
   };
