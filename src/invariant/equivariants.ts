@@ -6,6 +6,7 @@
  */
 import type { Algebraic } from '../field/index.ts';
 import type { Polynomial } from '../polynomial/index.ts';
+import { binomial } from './dimensions.ts';
 import { Sampler, SPARE_POINTS, Span } from './evaluation.ts';
 import type { GeneratorSet } from './generators.ts';
 import { compositions } from './graded-monomials.ts';
@@ -38,6 +39,9 @@ export interface EquivariantOptions {
 /** Degree looked at where no proof is within reach and none was asked for. */
 export const FALLBACK_DEGREE_OF_MAPS = 3;
 const DIMENSION_MOST = 600;
+/** Most multidegrees, and most multiply-adds, where no proof is asked for. */
+const PIECES_MOST = 3_000;
+const WORK_MOST_FOR_MAPS = 5e7;
 
 interface Piece {
   readonly degrees: number[];
@@ -64,8 +68,15 @@ export function equivariants(set: GeneratorSet, options: EquivariantOptions = {}
       .flatMap((y) => numeratorPieces(parameters, parts, (d) => both.dimensions.dimension([...d, ...y])).map((x) => [...x.degrees, ...y]))
       .map((degrees) => ({ degrees, dimension: both.dimensions.dimension(degrees) }));
   const within = pieces?.every((x) => x.dimension <= DIMENSION_MOST) === true;
-  const limit = within ? Infinity : wanted === Infinity ? Math.min(FALLBACK_DEGREE_OF_MAPS, set.upTo) : Math.min(wanted, set.upTo);
-  if (!within) pieces = linear.flatMap((y) => piecesUpTo(both, parts, limit, y));
+  let limit = within ? Infinity : wanted === Infinity ? Math.min(FALLBACK_DEGREE_OF_MAPS, set.upTo) : Math.min(wanted, set.upTo);
+  if (!within) {
+    while (limit > 0 && binomial(limit + parts, limit) * BigInt(duals) > BigInt(PIECES_MOST)) limit--;
+    for (;;) {
+      pieces = linear.flatMap((y) => piecesUpTo(both, parts, limit, y));
+      if (limit === 0 || pieces.reduce((s, x) => s + x.dimension ** 3, 0) <= WORK_MOST_FOR_MAPS) break;
+      limit--;
+    }
+  }
   const sorted = pieces!.sort((a, b) => total(a.degrees) - total(b.degrees));
   const found = within ? overParameters(both, set, parameters!, sorted) : byProducts(both, set, sorted);
   const { ring } = set.spaces;

@@ -228,7 +228,7 @@ function affordable(spaces: InvariantSpaces, work: number): number {
   const n = spaces.action.dimension;
   for (let d = FALLBACK_DEGREE_MOST; d > 1; d--) {
     if (d > FALLBACK_DEGREE && binomial(n + d - 1, d) > BigInt(FALLBACK_MONOMIALS)) continue;
-    if (piecesUpTo(spaces, d, work) !== undefined) return d;
+    if (piecesUpTo(spaces, d, work / 40) !== undefined) return d;
   }
   return 1;
 }

@@ -34,7 +34,10 @@ export class PieceSearch {
     const basis: Int32Array[] = [];
     this.#bases.set(keyOf(piece.degrees), basis);
     products: for (let g = 0; g < this.generators.length; g++) {
-      const rest = difference(piece.degrees, this.generators[g]!.degrees);
+      const { degrees } = this.generators[g]!;
+      // a product of several generators has a factor of at most half its degree
+      if (2 * total(degrees) > total(piece.degrees)) continue;
+      const rest = difference(piece.degrees, degrees);
       if (rest === undefined) continue;
       for (const b of this.#bases.get(keyOf(rest)) ?? []) {
         const v = this.#sampler.product(this.#values[g]!, b);
@@ -74,6 +77,8 @@ export function bySimplicity(list: readonly BasisElement[]): BasisElement[] {
 }
 
 export const keyOf = (degrees: readonly number[]): string => degrees.join(',');
+
+const total = (degrees: readonly number[]): number => degrees.reduce((s, d) => s + d, 0);
 
 /** a - b, or undefined if that is negative somewhere. */
 export function difference(a: readonly number[], b: readonly number[]): number[] | undefined {

@@ -5,6 +5,7 @@
 import type { Algebraic } from '../field/index.ts';
 import { build } from '../linear/index.ts';
 import { divideMonomials, type Monomial, type Polynomial, PolynomialRing } from '../polynomial/index.ts';
+import { binomial } from './dimensions.ts';
 import type { GeneratorSet } from './generators.ts';
 import { compositions } from './graded-monomials.ts';
 import { StandardProducts } from './normal-form.ts';
@@ -28,15 +29,37 @@ export function generatorRing(set: GeneratorSet): PolynomialRing<Algebraic> {
   );
 }
 
+/** The relations up to a degree, and that degree: lower than asked for where the work would pass WORK_MOST. */
+export interface RelationList extends ReadonlyArray<Relation> {
+  readonly upTo: number;
+}
+
+/** Most multidegrees of one degree, and most multiply-adds (products times standard products times monomials). */
+export const MULTIDEGREES_MOST = 3_000;
+export const RELATION_WORK_MOST = 2e8;
+
 /** Relations of total degree at most `degree` in the coordinates. */
-export function relations(set: GeneratorSet, degree: number): Relation[] {
+export function relations(set: GeneratorSet, degree: number): RelationList {
   const { action, ring } = set.spaces;
+  const done = (list: Relation[], upTo: number): RelationList => Object.assign(list, { upTo });
+  // n generators of a complete list are independent, for the ring has dimension n
+  if (set.complete && set.generators.length === action.dimension) return done([], degree);
   const names = generatorRing(set);
   const standard = new StandardProducts(new ProductTable(ring, set.generators));
   const leads: Monomial[] = [];
   const out: Relation[] = [];
-  for (let d = 1; d <= degree; d++)
-    for (const degrees of compositions(action.blocks.length, d)) {
+  let work = 0;
+  for (let d = 1; d <= degree; d++) {
+    const parts = action.blocks.length;
+    if (parts > 0 && binomial(d + parts - 1, d) > BigInt(MULTIDEGREES_MOST)) return done(out, d - 1);
+    const list = compositions(parts, d);
+    for (const degrees of list) {
+      const count = standard.table.of(degrees).length;
+      const dimension = set.spaces.dimensions.dimension(degrees);
+      work += count * dimension * action.blocks.reduce((m, b, i) => m * Number(binomial(b.length + degrees[i]! - 1, degrees[i]!)), 1);
+    }
+    if (work > RELATION_WORK_MOST) return done(out, d - 1);
+    for (const degrees of list) {
       const piece = standard.piece(degrees);
       const kept = new Set(piece.standard);
       const fresh = piece.products.flatMap((m, i) => (kept.has(i) || leads.some((l) => divideMonomials(m, l) !== undefined) ? [] : [m]));
@@ -57,5 +80,6 @@ export function relations(set: GeneratorSet, degree: number): Relation[] {
         out.push({ degree: total(degrees), polynomial: relation, text: names.format(relation), latex: names.latex(relation) });
       });
     }
-  return out;
+  }
+  return done(out, degree);
 }
