@@ -1,13 +1,15 @@
 /** The document of one result or of the results of several stages. */
 import type { ResultObject } from '../study/outcome.ts';
 import { type Document, type Line, linesOf, type Section } from './document.ts';
+import type { ReferenceKey } from './references.ts';
 import { classesSection, componentsSection } from './sections/components.ts';
 import { headlineOf, verdictSection } from './sections/headline.ts';
 import { hamiltonianSection, invariantsSection } from './sections/invariants.ts';
 import { modelSection, symmetrySection } from './sections/model.ts';
 import { birkhoffSection, branchesSection, reducedSection } from './sections/nonlinear.ts';
+import { collisionsSection, eventsSection, spectrumSection } from './sections/spectrum.ts';
 import { sweepSection } from './sections/sweep.ts';
-import { collisionsSection, eventsSection, spectrumSection, zeroSection } from './sections/zero.ts';
+import { zeroSection } from './sections/zero.ts';
 import { type ReportView, viewOf } from './view.ts';
 
 /** The order in which a reader wants it. */
@@ -35,7 +37,7 @@ export function compose(results: ResultObject | readonly ResultObject[]): Docume
   const sections = SECTIONS.map((make) => make(view)).filter((section) => section !== null);
   const headline = headlineOf(view);
   const lines: readonly Line[] = [...(headline?.facts.map((f) => f.line) ?? []), ...sections.flatMap((s) => s.blocks.flatMap(linesOf))];
-  const citations = new Set<string>();
+  const citations = new Set<ReferenceKey>();
   for (const line of lines)
     for (const part of line) if (typeof part !== 'string' && part.kind === 'cite') for (const key of part.keys) citations.add(key);
   return {

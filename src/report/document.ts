@@ -3,6 +3,7 @@
  * It is made once from the results and then printed as text, LaTeX, HTML or Markdown.
  */
 import type { Formula } from './mathematics/index.ts';
+import type { ReferenceKey } from './references.ts';
 import type { FigureData } from './svg/figure.ts';
 
 /** A part of a line. Plain strings are prose and are escaped by every printer. */
@@ -11,7 +12,7 @@ export type Inline =
   | { readonly kind: 'formula'; readonly formula: Formula }
   | { readonly kind: 'strong'; readonly text: string }
   | { readonly kind: 'code'; readonly text: string }
-  | { readonly kind: 'cite'; readonly keys: readonly string[] };
+  | { readonly kind: 'cite'; readonly keys: readonly ReferenceKey[] };
 export type Line = readonly Inline[];
 
 export interface Column {
@@ -59,14 +60,14 @@ export interface Document {
   readonly sections: readonly Section[];
   readonly caution: string | null;
   /** Keys of the sources cited, in the order of first citation. */
-  readonly citations: readonly string[];
+  readonly citations: readonly ReferenceKey[];
 }
 
 /** A formula in a line. */
 export const math = (formula: Formula): Inline => ({ kind: 'formula', formula });
 export const strong = (text: string): Inline => ({ kind: 'strong', text });
 export const code = (text: string): Inline => ({ kind: 'code', text });
-export const cite = (...keys: readonly string[]): Inline => ({ kind: 'cite', keys });
+export const cite = (...keys: readonly ReferenceKey[]): Inline => ({ kind: 'cite', keys });
 export const paragraph = (...line: readonly Inline[]): Block => ({ kind: 'paragraph', line });
 export const aside = (...line: readonly Inline[]): Block => ({ kind: 'paragraph', line, aside: true });
 export const column = (head: string | Line, align: Column['align'] = 'left'): Column => ({

@@ -164,3 +164,22 @@ export function latexAlgebra(text: string): string {
 }
 
 const latexSafe = (text: string): string => (/^[\w ]*$/.test(text) && !text.includes('_') ? text : `\\text{${latexText(text)}}`);
+
+/** LaTeX as the typesetters of browsers know it: signs that print needs to spell out are written themselves. */
+export function browserLatex(latex: string): string {
+  return latex
+    .replaceAll('\\allowbreak{}', '')
+    .replaceAll('\\textasciigrave{}', '\u2035')
+    .replace(/\\texttt\{\[U\+([0-9A-F]{4,6})\]\}/g, (_, code: string) => String.fromCodePoint(Number.parseInt(code, 16)));
+}
+
+const GREEK_NAMES: ReadonlyMap<string, string> = new Map(
+  GREEK_LETTERS.map((sign) => [(sign === 'π' ? '\\pi' : asciiName(sign)).slice(1), sign]),
+);
+
+/** A name of the model for a picture without LaTeX: omega_0 becomes ω₀. */
+export function symbolText(name: string): string {
+  const [, stem, digits] = /^(.*?)_?(\d*)$/u.exec(name)!;
+  const head = GREEK_NAMES.get(stem!) ?? stem!;
+  return head + [...digits!].map((d) => String.fromCodePoint(0x2080 + Number(d))).join('');
+}

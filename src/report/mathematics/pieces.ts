@@ -12,12 +12,15 @@ export interface Piece {
   readonly ems: number;
   /** A space stands before it where the line is not broken. */
   readonly gap: boolean;
+  /** The words themselves, where the piece is nothing but words. */
+  readonly words?: string;
 }
 
 /** The pieces of a formula; one where it fits as a whole. */
 export function piecesOf(tree: Tree, limit: number): readonly Piece[] {
   const whole = typeset(tree);
-  if (whole.ems <= limit) return [{ latex: whole.latex, ems: whole.ems, gap: false }];
+  if (whole.ems <= limit)
+    return [{ latex: whole.latex, ems: whole.ems, gap: false, ...(tree.kind === 'words' ? { words: tree.text } : {}) }];
   switch (tree.kind) {
     case 'sum':
       return tree.terms.flatMap((term, i) => {
@@ -61,6 +64,7 @@ function wrap(before: string, pieces: readonly Piece[], after: string): readonly
   return pieces.map((piece, i) => {
     const head = i === 0 ? before : '';
     const tail = i === last ? after : '';
+    if (head === '' && tail === '') return piece;
     return { latex: `${head}${piece.latex}${tail}`, ems: piece.ems + (head === '' ? 0 : 1) + (tail === '' ? 0 : 0.5), gap: piece.gap };
   });
 }

@@ -23,7 +23,7 @@ type Level = typeof RELATION | typeof SUM | typeof PRODUCT | typeof POWER | type
 const NARROW_SUM = 4;
 /** Words of users may be all capitals or code points. */
 const WIDE_SIGN = 0.75;
-export const SMALL = 0.75;
+export const SMALL = 0.82;
 const OPERATORS: ReadonlySet<string> = new Set(['exp', 'log', 'sin', 'cos', 'tan', 'sinh', 'cosh', 'tanh', 'arg', 'min', 'max']);
 const RELATIONS: ReadonlyMap<string, string> = new Map(
   Object.entries({
@@ -41,8 +41,23 @@ const RELATIONS: ReadonlyMap<string, string> = new Map(
 
 const set = (latex: string, ems: number, level: Level, tall = false): Set => ({ latex, ems, level, tall });
 
-/** The formula in one piece. `shallow` writes fractions with a slash, as in exponents. */
+const CACHES = [new WeakMap<Tree, Set>(), new WeakMap<Tree, Set>()] as const;
+
+/**
+ * The formula in one piece. `shallow` writes fractions with a slash, as in exponents. Trees are immutable and
+ * parts are asked for again and again while lines are broken, so each is set once.
+ */
 export function typeset(tree: Tree, shallow = false): Set {
+  const cache = CACHES[shallow ? 1 : 0];
+  let result = cache.get(tree);
+  if (result === undefined) {
+    result = setTree(tree, shallow);
+    cache.set(tree, result);
+  }
+  return result;
+}
+
+function setTree(tree: Tree, shallow: boolean): Set {
   switch (tree.kind) {
     case 'number':
       return number(tree.digits);
@@ -76,7 +91,7 @@ export function typeset(tree: Tree, shallow = false): Set {
         return set(`\\${tree.base.name}^{${exponent.latex}}${part.latex}`, part.ems + 1.7 + exponent.ems * SMALL, POWER, part.tall);
       }
       const base = bracketed(typeset(tree.base, shallow), ATOM);
-      return set(`${base.latex}^{${exponent.latex}}`, base.ems + exponent.ems * SMALL, POWER, base.tall);
+      return set(`${base.latex}^{${exponent.latex}}`, base.ems + exponent.ems * SMALL + 0.1, POWER, base.tall);
     }
     case 'call': {
       if (tree.name === 'sqrt' && tree.parts.length === 1) {
@@ -129,12 +144,19 @@ function number(digits: string): Set {
   return set(`${mantissa}\\cdot 10^{${power}}`, mantissa.length * 0.5 + 1.8 + power.length * 0.4, PRODUCT);
 }
 
+/** Italic letters: m, w, capitals of that kind and wide Greek letters against the rest. */
+function lettersEms(word: string): number {
+  if (/^(omega|psi|phi|varpi|Omega|Phi|Psi|Theta|Xi|Upsilon|Gamma|Lambda|Sigma|Delta|Pi)$/.test(word)) return 0.85;
+  if (latexSymbol(word).startsWith('\\mathit'))
+    return [...word].reduce((total, sign) => total + (/[mwMW_]/.test(sign) || sign > '\u007f' ? 1.05 : /[A-Z]/.test(sign) ? 0.85 : 0.6), 0);
+  return /^[mwMWQONGDHKUVXAY]$/.test(word) ? 1.1 : 0.68;
+}
+
 function symbolEms(name: string): number {
   const match = /^(\p{L}+?)_?(\d+)$/u.exec(name) ?? /^(\p{L}+)_(.+)$/u.exec(name);
-  if (match === null) return latexSymbol(name).startsWith('\\mathit') ? [...name].length * 0.6 : 0.65;
-  return (
-    0.65 * (match[1]!.length > 2 && latexSymbol(match[1]!).startsWith('\\mathit') ? match[1]!.length : 1) + [...match[2]!].length * 0.42
-  );
+  if (match === null) return lettersEms(name);
+  const index = /^\d+$/.test(match[2]!) ? match[2]!.length * 0.42 : lettersEms(match[2]!) * SMALL;
+  return lettersEms(match[1]!) + index + 0.05;
 }
 
 export function operator(name: string): Set {

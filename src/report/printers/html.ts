@@ -4,7 +4,7 @@
  */
 import { createHash } from 'node:crypto';
 import type { Block, Document, Headline, Inline, Line, Matrix, Section } from '../document.ts';
-import { type Formula, latexOf, latexPieces } from '../mathematics/index.ts';
+import { browserLatex, type Formula, latexOf, latexPieces } from '../mathematics/index.ts';
 import { drawFigure } from '../svg/figure.ts';
 import { escapeXml, sceneToSvg } from '../svg/scene-svg.ts';
 import { SCRIPT, STYLE } from './html-assets.ts';
@@ -23,7 +23,7 @@ async function typesetter(): Promise<Typesetter> {
     const key = `${display ? 'd' : 'i'}${latex}`;
     let mathml = cache.get(key);
     if (mathml === undefined) {
-      mathml = katex.renderToString(latex, {
+      mathml = katex.renderToString(browserLatex(latex), {
         output: 'mathml',
         displayMode: display,
         throwOnError: false,
@@ -117,7 +117,7 @@ class Writer {
         return `<div class="matrices">${block.matrices.map((m) => `<div class="display" tabindex="0">${this.matrix(m)}</div>`).join('')}</div>`;
       case 'figure': {
         const scene = await drawFigure(block.figure);
-        return `<figure>${sceneToSvg(scene, false)}<figcaption>${escapeXml(block.caption)}</figcaption></figure>`;
+        return `<figure>${await sceneToSvg(scene, false)}<figcaption>${escapeXml(block.caption)}</figcaption></figure>`;
       }
     }
   }
@@ -173,7 +173,11 @@ class Writer {
 
   private pieces(formula: Formula, limit: number): string {
     return latexPieces(formula, limit)
-      .map((piece, i) => `${i === 0 ? '' : piece.gap ? ' ' : '<wbr>'}${this.math(piece.latex, false)}`)
+      .map((piece, i) => {
+        // a sign at the beginning brings its own space
+        const before = i === 0 ? '' : piece.gap && !piece.latex.startsWith('{}') ? ' ' : '<wbr>';
+        return `${before}${piece.words === undefined ? this.math(piece.latex, false) : escapeXml(piece.words)}`;
+      })
       .join('');
   }
 }

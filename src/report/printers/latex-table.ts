@@ -49,7 +49,7 @@ export function tableLatex(table: LatexTable): string {
       [
         '\\begin{center}',
         `{\\small ${note}\\par}\\nopagebreak\\smallskip`,
-        `\\symcodimfit{\\setlength{\\tabcolsep}{${(GAP * 5).toFixed(0)}pt}\\begin{tabular}{@{}${specification.join('')}@{}}`,
+        `\\symcodimfit{\\setlength{\\extrarowheight}{1.5pt}\\setlength{\\tabcolsep}{${(GAP * 5).toFixed(0)}pt}\\begin{tabular}{@{}${specification.join('')}@{}}`,
         '\\toprule',
         `${head} \\\\`,
         '\\midrule',
@@ -92,8 +92,8 @@ function shrink(natural: readonly number[], room: number): readonly number[] | n
 /** One paragraph for each row: what leads it, then the rest with the names of the columns. */
 function records(table: LatexTable): string {
   const items = table.rows.map((row) => {
-    const cells = table.columns.slice(1).map((c, k) => `\\textit{${table.write(c.head, 20)}} ${table.write(row[k + 1]!, 24)}`);
-    return `${table.write(row[0]!, 24)}\\quad ${cells.join('; ')}\\par`;
+    const cells = table.columns.slice(1).map((c, k) => `\\textit{${table.write(c.head, 14)}} ${table.write(row[k + 1]!, 16)}`);
+    return `${table.write(row[0]!, 16)}\\quad ${cells.join('; ')}\\par`;
   });
   return [
     '{\\raggedright\\leftskip=1.5em\\parindent=-1.5em\\lineskiplimit=2pt\\lineskip=3pt',

@@ -3,10 +3,11 @@
  * long formulas are set piece by piece in ragged lines, tables are divided into pages and wide boxes are
  * measured by TeX itself and scaled where they are wider than the line.
  */
-import type { Block, Column, Document, Inline, Line, Matrix, Section } from '../document.ts';
-import { emsOf, type Formula, latexOf, latexPieces, latexText, relation } from '../mathematics/index.ts';
+import type { Block, Column, Document, Inline, Line, Section } from '../document.ts';
+import { emsOf, latexText } from '../mathematics/index.ts';
 import { drawFigure } from '../svg/figure.ts';
 import { sceneToLatex } from '../svg/scene-latex.ts';
+import { displayFormula, FRAGMENT, inlineFormula, type Layout, matrixEntries, PAGE, printable, wholeMatrix } from './latex-formula.ts';
 import { tableLatex } from './latex-table.ts';
 import { numbersOf, sourcesOf } from './lines.ts';
 
@@ -17,14 +18,6 @@ export interface LatexOptions {
   readonly figures?: boolean;
 }
 
-/** Width of the line in em of the 10 point text font, with a margin for the error of the estimate. */
-const LINE = 43;
-const DISPLAY = 38;
-const INLINE_PIECE = 22;
-const DISPLAY_PIECE = 28;
-/** Matrices with more rows than this are given by their entries. */
-const MATRIX_ROWS = 26;
-
 const PACKAGES = ['amsmath', 'amssymb', 'array', 'booktabs', 'graphicx', 'xcolor'] as const;
 /** Sets its argument, scaled down where it is wider than the line. */
 const FIT = String.raw`\providecommand{\symcodimfit}[1]{\sbox0{#1}\ifdim\wd0>\linewidth\resizebox{\linewidth}{!}{\usebox0}\else\usebox0\fi}`;
@@ -33,7 +26,7 @@ const DRAW = String.raw`\providecommand{\symcodimdraw}[1]{\ifdefined\pdfliteral\
 
 /** The document in LaTeX. */
 export async function printLatex(document: Document, options: LatexOptions = {}): Promise<string> {
-  const printer = new Printer(numbersOf(document), options.figures !== false);
+  const printer = new Printer(numbersOf(document), options.figures !== false, options.fragment === true ? FRAGMENT : PAGE);
   const body: string[] = [];
   if (document.headline !== null) body.push(printer.headline(document));
   for (const section of document.sections) body.push(await printer.section(section));
@@ -81,15 +74,17 @@ export async function printLatex(document: Document, options: LatexOptions = {})
 class Printer {
   private readonly numbers: ReadonlyMap<string, number>;
   private readonly figures: boolean;
+  private readonly layout: Layout;
 
-  constructor(numbers: ReadonlyMap<string, number>, figures: boolean) {
+  constructor(numbers: ReadonlyMap<string, number>, figures: boolean, layout: Layout) {
     this.numbers = numbers;
     this.figures = figures;
+    this.layout = layout;
   }
 
   headline(document: Document): string {
     const { answer, sentence, facts } = document.headline!;
-    const rows = facts.map((f) => `\\textbf{${latexText(f.name)}} & ${this.line(f.line, 18)} \\\\`);
+    const rows = facts.map((f) => `\\textbf{${latexText(f.name)}} & ${this.line(f.line)} \\\\`);
     const out: string[] = ['\\noindent\\rule{\\linewidth}{0.8pt}'];
     if (answer !== '') out.push(`{\\large\\textbf{${latexText(answer)}.}${sentence === '' ? '' : ` ${latexText(sentence)}`}\\par}`);
     if (rows.length > 0)
@@ -129,10 +124,10 @@ class Printer {
       case 'table':
         return this.table(block.caption, block.columns, block.rows);
       case 'display':
-        return display(block.formula);
+        return displayFormula(block.formula, this.layout);
       case 'matrices': {
-        const whole = block.matrices.filter(printable).map(({ name, rows }) => wholeMatrix(name, rows));
-        const listed = block.matrices.filter((m) => !printable(m)).map(({ name, rows }) => matrixEntries(name, rows));
+        const whole = block.matrices.filter((m) => printable(m, this.layout)).map(wholeMatrix);
+        const listed = block.matrices.filter((m) => !printable(m, this.layout)).map((m) => matrixEntries(m, this.layout));
         return [...(whole.length === 0 ? [] : [`\\begin{center}\n${whole.join('\\qquad\n')}\n\\end{center}`]), ...listed].join('\n');
       }
       case 'figure': {
@@ -146,7 +141,10 @@ class Printer {
   private facts(rows: readonly { readonly name: string; readonly line: Line }[]): string {
     return [
       '\\begin{list}{}{\\setlength{\\leftmargin}{12.5em}\\setlength{\\labelwidth}{12em}\\setlength{\\labelsep}{0.5em}\\setlength{\\itemsep}{0pt}\\setlength{\\parsep}{1pt}\\setlength{\\topsep}{2pt}\\renewcommand{\\makelabel}[1]{\\normalfont#1\\hfil}\\raggedright}',
-      ...rows.map((row) => `\\item[{\\parbox[t]{12em}{\\raggedright ${latexText(row.name)}}}] ${this.line(row.line, 18)}`),
+      ...rows.map(
+        (row) =>
+          `\\item[{\\parbox[t]{12em}{\\raggedright ${latexText(row.name)}}}] ${this.line(row.line, Math.min(18, this.layout.inlinePiece))}`,
+      ),
       '\\end{list}',
     ].join('\n');
   }
@@ -156,7 +154,7 @@ class Printer {
       caption: latexText(caption),
       columns,
       rows,
-      line: LINE,
+      line: this.layout.line,
       write: (line, limit) => this.line(line, limit),
       width: (line) => this.width(line),
     });
@@ -178,7 +176,7 @@ class Printer {
     );
   }
 
-  private line(line: Line, limit = INLINE_PIECE): string {
+  private line(line: Line, limit = this.layout.inlinePiece): string {
     return line.map((part) => this.inline(part, limit)).join('');
   }
 
@@ -195,59 +193,4 @@ class Printer {
         return `[${part.keys.flatMap((key) => this.numbers.get(key) ?? []).join(', ')}]`;
     }
   }
-}
-
-/** Pieces in a line; TeX may break between any two of them and nowhere else needs to. */
-function inlineFormula(formula: Formula, limit: number): string {
-  return latexPieces(formula, limit)
-    .map((piece, i) => `${i === 0 ? '' : piece.gap ? ' ' : '\\allowbreak{}'}$${leading(piece.latex)}$`)
-    .join('');
-}
-
-/** A sign that begins a line or follows a word space needs no further space before it, but the usual one behind it. */
-const leading = (latex: string): string => latex.replace(/^\{\}([-+])/, '{$1}\\:');
-
-/** Centred where it fits on a line; else in ragged lines that hang under its relation. */
-function display(formula: Formula): string {
-  if (emsOf(formula) <= DISPLAY) return `\\[ ${latexOf(formula)} \\]`;
-  const tree = formula.tree;
-  if (tree.kind !== 'relation')
-    return `\\begin{quote}\\raggedright\\lineskiplimit=2pt\\lineskip=4pt ${inlineFormula(formula, DISPLAY_PIECE)}\\end{quote}`;
-  const left: Formula = { text: '', tree: tree.left };
-  const right: Formula = { text: '', tree: tree.right };
-  if (emsOf(left) > 8)
-    return `\\begin{quote}\\raggedright\\lineskiplimit=2pt\\lineskip=4pt ${inlineFormula(formula, DISPLAY_PIECE)}\\end{quote}`;
-  const head = `$${latexOf(left)} ={}$`;
-  return `{\\par\\addvspace{4pt}\\lineskiplimit=2pt\\lineskip=4pt\\sbox0{${head}}\\noindent\\hangindent=\\wd0\\hangafter=1\\raggedright ${head}${inlineFormula(right, DISPLAY_PIECE)}\\par\\addvspace{4pt}}`;
-}
-
-/** True if a matrix fits, or nearly so: it is scaled a little then. */
-function printable({ name, rows }: Matrix): boolean {
-  const widths = (rows[0] ?? []).map((_, k) => Math.max(...rows.map((row) => emsOf(row[k]!))));
-  const total = widths.reduce((a, b) => a + b + 1, 0) + emsOf(name) + 2;
-  return total <= LINE * 1.5 && rows.length <= MATRIX_ROWS;
-}
-
-function wholeMatrix(name: Formula, rows: Matrix['rows']): string {
-  const body = rows.map((row) => row.map(latexOf).join(' & ')).join(' \\\\ ');
-  return `\\symcodimfit{$\\displaystyle ${latexOf(name)} = \\left(\\begin{array}{${'c'.repeat(rows[0]?.length ?? 0)}} ${body} \\end{array}\\right)$}`;
-}
-
-/** A matrix that is too wide or too high, by its entries. */
-function matrixEntries(name: Formula, rows: Matrix['rows']): string {
-  const columns = rows[0]?.length ?? 0;
-  const entries = rows.flatMap((row, i) =>
-    row.flatMap((entry, k) =>
-      entry.text === '0'
-        ? []
-        : [
-            inlineFormula(
-              relation({ text: '', tree: { kind: 'sign', latex: `(${i + 1},${k + 1})`, ems: 2.5 } }, '->', entry),
-              INLINE_PIECE,
-            ),
-          ],
-    ),
-  );
-  const zero = entries.length === 0 ? 'all vanish' : entries.join('; ');
-  return `\\begin{quote}\\raggedright $${latexOf(name)}$, ${rows.length} by ${columns}, entries different from zero: ${zero}.\\end{quote}`;
 }

@@ -1,15 +1,15 @@
 /** Lines as plain text, and the numbers of citations. */
 import type { Document, Inline, Line } from '../document.ts';
-import { referenceOf, referenceText } from '../references.ts';
+import { REFERENCES, referenceText } from '../references.ts';
 
 /** Numbers the sources of a document in the order of citation. */
 export function numbersOf(document: Document): ReadonlyMap<string, number> {
-  return new Map(document.citations.filter((key) => referenceOf(key) !== undefined).map((key, i) => [key, i + 1]));
+  return new Map(document.citations.map((key, i) => [key, i + 1]));
 }
 
 /** The list of sources, in order, in words. */
 export function sourcesOf(document: Document): readonly string[] {
-  return [...numbersOf(document).keys()].map((key) => referenceText(referenceOf(key)!));
+  return document.citations.map((key) => referenceText(REFERENCES[key]));
 }
 
 /** A part of a line without any type. */

@@ -1,6 +1,6 @@
 /** A document in GitHub flavoured Markdown with formulas between dollars. */
 import type { Block, Document, Inline, Line, Matrix } from '../document.ts';
-import { type Formula, latexOf, latexPieces } from '../mathematics/index.ts';
+import { browserLatex, type Formula, latexOf, latexPieces } from '../mathematics/index.ts';
 import { numbersOf, sourcesOf } from './lines.ts';
 
 /** Formulas wider than this, in em, are given in pieces so that lines can wrap. */
@@ -58,7 +58,10 @@ function inline(part: Inline, numbers: ReadonlyMap<string, number>, cell: boolea
   switch (part.kind) {
     case 'formula':
       return latexPieces(part.formula, PIECE)
-        .map((piece, i) => `${i > 0 && piece.gap ? ' ' : ''}$${inlineLatex(piece.latex, cell)}$`)
+        .map(
+          (piece, i) =>
+            `${i > 0 && piece.gap ? ' ' : ''}${piece.words === undefined ? `$${inlineLatex(piece.latex, cell)}$` : escapeMarkdown(piece.words)}`,
+        )
         .join('');
     case 'strong':
       return `**${escapeMarkdown(part.text)}**`;
@@ -71,7 +74,7 @@ function inline(part: Inline, numbers: ReadonlyMap<string, number>, cell: boolea
 
 /** Markdown takes a backslash before punctuation away before mathematics is read: such commands are spelt out. */
 function inlineLatex(latex: string, cell: boolean): string {
-  const spelt = latex
+  const spelt = browserLatex(latex)
     .replaceAll('\\{', '\\lbrace ')
     .replaceAll('\\}', '\\rbrace ')
     .replaceAll('\\,', '\\thinspace ')
@@ -96,5 +99,6 @@ export function escapeMarkdown(text: string): string {
     .replaceAll('&', '&amp;')
     .replaceAll('<', '&lt;')
     .replaceAll('>', '&gt;')
-    .replace(/^(\s*)([-+]|\d+\.|#{1,6})(\s)/, '$1\\$2$3');
+    .replace(/^(\s*)([-+]|#{1,6})(\s)/, '$1\\$2$3')
+    .replace(/^(\s*\d+)\.(\s)/, '$1\\.$2');
 }

@@ -19,7 +19,7 @@ export function printText(document: Document, width: number = DEFAULT): string {
   const told = new Set(document.headline?.facts.map((fact) => fact.name));
   const out: string[] = [];
   const hang = (text: string, lead: string, rest: string) => {
-    const lines = wrapWords(text, room - columns(lead));
+    const lines = wrapWords(text, room - Math.max(columns(lead), columns(rest)));
     out.push(...lines.map((line, i) => `${i === 0 ? lead : rest}${line}`.trimEnd()));
   };
   const facts = (rows: readonly { readonly name: string; readonly line: Line }[]) => {

@@ -1,5 +1,5 @@
 /** Axes with ticks at round numbers. */
-import { numberText } from '../mathematics/index.ts';
+import { numberText, symbolText } from '../mathematics/index.ts';
 import { line, rectangle, type Shape, text } from './scene.ts';
 
 export interface Axis {
@@ -34,7 +34,7 @@ async function axis(
   if (nice) scale.nice(count);
   const [a, b] = scale.domain() as [number, number];
   const ticks = scale.ticks(count).map((value) => ({ value, words: numberText(value).replace('-', '−') }));
-  return { from: a, to: b, range, scale: (value) => scale(value), ticks, name, latex };
+  return { from: a, to: b, range, scale: (value) => scale(value), ticks, name: latex === undefined ? name : symbolText(name), latex };
 }
 
 export const horizontalAxis = (
@@ -51,7 +51,7 @@ export const verticalAxis = (
   latex: string | undefined,
 ): Promise<Axis> => axis(values, range, name, latex, true, 5);
 
-/** Frame, ticks and names; the name of the vertical axis stands above it, level, to be read without turning the head. */
+/** Frame, ticks and names; the name of the vertical axis stands above the frame, level, to be read without turning the head. */
 export function drawAxes(x: Axis, y: Axis, right: number): readonly Shape[] {
   const [left, end] = x.range;
   const [bottom, top] = y.range;
@@ -83,6 +83,6 @@ export function drawAxes(x: Axis, y: Axis, right: number): readonly Shape[] {
     );
   }
   shapes.push(text(Math.min((left + end) / 2, right), bottom + 24, x.name, 'middle', 9.5, 'ink', x.latex));
-  shapes.push(text(left + 4, top + 11, y.name, 'start', 9.5, 'ink', y.latex));
+  shapes.push(text(left - 3, top - 6, y.name, 'start', 9.5, 'ink', y.latex));
   return shapes;
 }

@@ -33,7 +33,9 @@ const WORDS: Readonly<Record<BranchStability, string>> = {
 };
 const MARKERS: readonly Marker[] = ['circle', 'square', 'triangle', 'diamond', 'ring', 'cross'];
 
-export async function drawBifurcation(figure: BifurcationFigure): Promise<Scene> {
+export async function drawBifurcation(given: BifurcationFigure): Promise<Scene> {
+  const finite = (p: BranchPoint) => Number.isFinite(p.at) && Number.isFinite(p.amplitude);
+  const figure = { ...given, branches: given.branches.map((branch) => ({ ...branch, points: branch.points.filter(finite) })) };
   const all = figure.branches.flatMap((b) => b.points);
   const plot = WIDTH - 130;
   const x = await horizontalAxis(
@@ -43,7 +45,7 @@ export async function drawBifurcation(figure: BifurcationFigure): Promise<Scene>
     latexSymbol(figure.parameter),
     false,
   );
-  const y = await verticalAxis([0, ...all.map((p) => p.amplitude)], [HEIGHT - 32, 10], figure.amplitude, undefined);
+  const y = await verticalAxis([0, ...all.map((p) => p.amplitude)], [HEIGHT - 32, 20], figure.amplitude, undefined);
   const shapes: Shape[] = [...drawAxes(x, y, WIDTH)];
   const used = new Set<BranchStability>();
   figure.branches.forEach((branch, i) => {
@@ -58,9 +60,13 @@ export async function drawBifurcation(figure: BifurcationFigure): Promise<Scene>
           ),
         );
     }
-    const middle = branch.points[Math.floor(branch.points.length / 2)];
-    if (middle !== undefined)
-      shapes.push(...marker(MARKERS[i % MARKERS.length]!, x.scale(middle.at), y.scale(middle.amplitude), 3, colorOf(i), branch.name));
+    // near the ends, where branches stand apart
+    for (const p of new Set([
+      branch.points.at(Math.floor(branch.points.length * 0.12)),
+      branch.points.at(-1 - Math.floor(branch.points.length * 0.12)),
+    ]))
+      if (p !== undefined)
+        shapes.push(...marker(MARKERS[i % MARKERS.length]!, x.scale(p.at), y.scale(p.amplitude), 3, colorOf(i), branch.name));
   });
   let below = 20;
   figure.branches.forEach((branch, i) => {

@@ -17,15 +17,16 @@ const SIDE = 290;
 export async function drawChart(figure: ChartFigure): Promise<Scene> {
   const [first, second] = figure.parameters;
   const x = await horizontalAxis(figure.ranges[0], [52, 52 + SIDE], first, latexSymbol(first), false);
-  const y = await verticalAxis(figure.ranges[1], [12 + SIDE, 12], second, latexSymbol(second));
+  const y = await verticalAxis(figure.ranges[1], [22 + SIDE, 22], second, latexSymbol(second));
   const names = [...new Set(figure.curves.map((c) => c.component))];
   const shapes: Shape[] = [...drawAxes(x, y, 52 + SIDE)];
   for (const curve of figure.curves) {
+    const points = curve.points.filter(([a, b]) => Number.isFinite(a) && Number.isFinite(b));
     const i = names.indexOf(curve.component);
-    if (curve.points.length > 1)
+    if (points.length > 1)
       shapes.push(
         line(
-          curve.points.map(([a, b]) => [x.scale(a), y.scale(b)]),
+          points.map(([a, b]) => [x.scale(a), y.scale(b)]),
           { color: colorOf(i), width: 1.6, dash: dashOf(i) },
           curve.component,
         ),
@@ -47,7 +48,7 @@ export async function drawChart(figure: ChartFigure): Promise<Scene> {
   });
   return {
     width: SIDE + 170,
-    height: Math.max(SIDE + 50, 30 + 15 * names.length),
+    height: Math.max(SIDE + 60, 30 + 15 * names.length),
     description: `Zero curves in the plane of ${first} and ${second}: ${names.join(', ')}.`,
     shapes,
   };

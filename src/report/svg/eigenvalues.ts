@@ -23,8 +23,9 @@ const PLANE = 230;
 const MARKS = 9;
 
 /** Draws frequency and rate above, the complex plane below. */
-export async function drawEigenvalues(figure: EigenvalueFigure): Promise<Scene> {
-  const { line: generator } = await import('d3-shape');
+export async function drawEigenvalues(given: EigenvalueFigure): Promise<Scene> {
+  const finite = (p: Point) => Number.isFinite(p.at) && Number.isFinite(p.re) && Number.isFinite(p.im);
+  const figure = { ...given, paths: given.paths.map((path) => ({ ...path, points: path.points.filter(finite) })) };
   const all = figure.paths.flatMap((p) => p.points);
   const names = [...new Set(figure.paths.map((p) => p.component))];
   const at = await horizontalAxis(
@@ -36,7 +37,7 @@ export async function drawEigenvalues(figure: EigenvalueFigure): Promise<Scene> 
   );
   const top = Math.max(0, ...all.map((p) => Math.abs(p.im)));
   const rate = Math.max(0, ...all.map((p) => Math.abs(p.re)));
-  const up = await verticalAxis([-rate, 0, top], [HEIGHT - 32, 10], 'frequency', undefined);
+  const up = await verticalAxis([-rate, 0, top], [HEIGHT - 32, 20], 'frequency', undefined);
   const shapes: Shape[] = [...drawAxes(at, up, WIDTH)];
   for (const event of figure.events ?? [])
     if (event.at >= at.from && event.at <= at.to)
@@ -64,15 +65,7 @@ export async function drawEigenvalues(figure: EigenvalueFigure): Promise<Scene> 
   const trace = (points: readonly (readonly [number, number])[], component: string) => {
     const i = names.indexOf(component);
     // straight segments between the computed values: nothing is smoothed that was not computed
-    const path = generator<readonly [number, number]>().defined(([x, y]) => Number.isFinite(x) && Number.isFinite(y));
-    if (path([...points]) !== null && points.length > 1)
-      shapes.push(
-        line(
-          points.filter(([x, y]) => Number.isFinite(x) && Number.isFinite(y)),
-          { color: colorOf(i), width: 1.5, dash: dashOf(i) },
-          component,
-        ),
-      );
+    if (points.length > 1) shapes.push(line(points, { color: colorOf(i), width: 1.5, dash: dashOf(i) }, component));
   };
   const sorted = figure.paths.map((p) => ({ ...p, points: [...p.points].sort((a, b) => a.at - b.at) }));
   for (const path of sorted) {
@@ -92,9 +85,9 @@ export async function drawEigenvalues(figure: EigenvalueFigure): Promise<Scene> 
       ...signMarks(path, names.indexOf(path.component), (p) => [at.scale(p.at), up.scale(p.im !== 0 ? Math.abs(p.im) : -Math.abs(p.re))]),
     );
   // the complex plane, symmetric in both axes
-  const edge = 1.1 * Math.max(top, rate, Number.MIN_VALUE);
+  const edge = 1.1 * (Math.max(top, rate) || 1);
   const re = await horizontalAxis([-edge, edge], [52, 52 + PLANE], 'real part', undefined, true);
-  const im = await verticalAxis([-edge, edge], [HEIGHT + PLANE - 8, HEIGHT + 14], 'imaginary part', undefined);
+  const im = await verticalAxis([-edge, edge], [HEIGHT + PLANE - 2, HEIGHT + 20], 'imaginary part', undefined);
   shapes.push(...drawAxes(re, im, re.range[1] + 8));
   shapes.push(
     line(
@@ -120,7 +113,7 @@ export async function drawEigenvalues(figure: EigenvalueFigure): Promise<Scene> 
       [-1, -1],
     ] as const)
       trace(
-        path.points.map((p) => [re.scale(sx * Math.abs(p.re)), im.scale(sy * Math.abs(p.im))]),
+        throughZero(path.points).map((p) => [re.scale(sx * Math.abs(p.re)), im.scale(sy * Math.abs(p.im))]),
         path.component,
       );
   for (const path of sorted) {
@@ -141,13 +134,23 @@ export async function drawEigenvalues(figure: EigenvalueFigure): Promise<Scene> 
         );
   }
   shapes.push(...legend(names, figure, 52 + PLANE + 26, HEIGHT + 24));
-  const height = Math.max(HEIGHT + PLANE + 24, HEIGHT + 40 + 15 * (names.length + 3));
+  const height = Math.max(HEIGHT + PLANE + 30, HEIGHT + 40 + 15 * (names.length + 3));
   return {
     width: WIDTH,
     height,
     description: `Eigenvalues against ${figure.parameter} from ${at.from} to ${at.to}, components ${names.join(', ')}.`,
     shapes,
   };
+}
+
+/** With the origin put in where a path turns from one axis to the other between two computed values. */
+function throughZero(points: readonly Point[]): readonly { readonly re: number; readonly im: number }[] {
+  return points.flatMap((p, i) => {
+    const next = points[i + 1];
+    const turns =
+      next !== undefined && p.re * next.re === 0 && p.im * next.im === 0 && (p.re !== 0 || p.im !== 0) && (p.re !== 0) !== (next.re !== 0);
+    return turns ? [p, { re: 0, im: 0 }] : [p];
+  });
 }
 
 type Point = EigenvaluePath['points'][number];

@@ -9,6 +9,9 @@ export const escapeXml = (text: string): string =>
 
 const number = (x: number): string => String(Math.round(x * 100) / 100);
 
+/** Pixels of a screen to a point of the scene. */
+const PIXELS = 4 / 3;
+
 function paint(color: Color): string {
   if (color === 'ink') return 'currentColor';
   if (color === 'faint') return '#8a8a8a';
@@ -21,7 +24,23 @@ const strokeAttributes = (stroke: Stroke | null): string =>
     ? ''
     : ` stroke="${paint(stroke.color)}" stroke-width="${number(stroke.width)}"${stroke.dash === undefined || stroke.dash.length === 0 ? '' : ` stroke-dasharray="${stroke.dash.map(number).join(' ')}"`}`;
 
-function element(shape: Shape): string {
+type PathWriter = (points: readonly (readonly [number, number])[], closed: boolean) => string;
+
+/** Path data by the generators of d3-shape, to hundredths of a point. */
+async function pathWriter(): Promise<PathWriter> {
+  const { curveLinear, curveLinearClosed, line } = await import('d3-shape');
+  const writers = [curveLinear, curveLinearClosed].map((curve) =>
+    line<readonly [number, number]>(
+      ([x]) => x,
+      ([, y]) => y,
+    )
+      .curve(curve)
+      .digits(2),
+  );
+  return (points, closed) => writers[closed ? 1 : 0]!(points) ?? '';
+}
+
+function element(shape: Shape, write: PathWriter): string {
   if (shape.kind === 'text') {
     const anchor = shape.anchor === 'start' ? '' : ` text-anchor="${shape.anchor}"`;
     return `<text x="${number(shape.x)}" y="${number(shape.y)}" font-size="${number(shape.size)}"${anchor} fill="${paint(shape.color)}"${shape.bold === true ? ' font-weight="bold"' : ''}>${escapeXml(shape.text)}</text>`;
@@ -34,15 +53,19 @@ function element(shape: Shape): string {
       'circle',
       title,
     );
-  const d = shape.points.map(([x, y], i) => `${i === 0 ? 'M' : 'L'}${number(x)} ${number(y)}`).join('');
-  return close(`path d="${d}${shape.closed ? 'Z' : ''}"${fill}${strokeAttributes(shape.stroke)} stroke-linejoin="round"`, 'path', title);
+  return close(
+    `path d="${write(shape.points, shape.closed)}"${fill}${strokeAttributes(shape.stroke)} stroke-linejoin="round"`,
+    'path',
+    title,
+  );
 }
 
 const close = (head: string, name: string, inside: string): string => (inside === '' ? `<${head}/>` : `<${head}>${inside}</${name}>`);
 
 /** The picture. Alone it brings its own ink and paper, light and dark; inside a page it takes those of the page. */
-export function sceneToSvg(scene: Scene, alone: boolean): string {
-  const size = `viewBox="0 0 ${number(scene.width)} ${number(scene.height)}" width="${number(scene.width)}" height="${number(scene.height)}"`;
+export async function sceneToSvg(scene: Scene, alone: boolean): Promise<string> {
+  const write = await pathWriter();
+  const size = `viewBox="0 0 ${number(scene.width)} ${number(scene.height)}" width="${number(scene.width * PIXELS)}" height="${number(scene.height * PIXELS)}"`;
   const style = alone
     ? '<style>svg{color:#111;--paper:#fff;background:#fff}@media (prefers-color-scheme:dark){svg{color:#eee;--paper:#1b1b1b;background:#1b1b1b}}</style>'
     : '';
@@ -50,7 +73,7 @@ export function sceneToSvg(scene: Scene, alone: boolean): string {
   return [
     `<svg${head} ${size} role="img" aria-label="${escapeXml(scene.description)}" font-family="system-ui, sans-serif">`,
     ...(alone ? [`<title>${escapeXml(scene.description)}</title>`, style] : []),
-    ...scene.shapes.map(element),
+    ...scene.shapes.map((shape) => element(shape, write)),
     '</svg>',
   ].join('\n');
 }
