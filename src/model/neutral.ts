@@ -108,11 +108,14 @@ export function energySeries(h: Expression, quantities: Quantities, vary: readon
   for (const degree of total === undefined ? [SERIES_DEGREE, 3] : [total, 3]) {
     const t = taylor(h, { names: [...names, ...vary], point: expansion, parameters: quantities.valueExpressions, degree, field });
     if (t.kind !== 'exact' || t.field !== field) continue;
-    const gradient = names.map((_, i) => t.ring.derivative(t.polynomial, i));
+    let gradient: readonly Polynomial<Algebraic>[] | undefined;
     return {
       ring: t.ring,
       polynomial: t.polynomial,
-      gradient,
+      get gradient() {
+        gradient ??= names.map((_, i) => t.ring.derivative(t.polynomial, i));
+        return gradient;
+      },
       dimension: names.length,
       known: total !== undefined && degree >= total ? Number.POSITIVE_INFINITY : degree - 1,
     };

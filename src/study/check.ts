@@ -1,6 +1,7 @@
 /** `check`: is the point an equilibrium, is each generator (anti)symplectic, does it leave H invariant. */
 import { groupOfMatrices } from '../action/index.ts';
 import { NotAGroupError } from '../errors/index.ts';
+import type { FoundSymmetry } from './find.ts';
 import type { Prepared } from './prepare.ts';
 import type { StudyResult } from './result.ts';
 import { head } from './summary.ts';
@@ -9,6 +10,8 @@ export interface CheckResult extends StudyResult {
   /** Degree in the coordinates to which invariance was compared; 'all' for a polynomial H. */
   readonly invarianceDegree: number | 'all';
   readonly failures: readonly string[];
+  /** With --find: the symmetry that is there. */
+  readonly found?: FoundSymmetry;
 }
 
 /** The full result, also where something fails; then `group` counts the matrices alone. */

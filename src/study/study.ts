@@ -52,7 +52,9 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
   switch (command) {
     case 'check': {
       const { checkResult } = await import('./check.ts');
-      const result = checkResult(prepared);
+      const plain = checkResult(prepared);
+      const result =
+        options.find === true ? { ...plain, found: (await import('./find.ts')).findSymmetry(prepared, plain.group.order) } : plain;
       return { result, status: result.equilibrium.holds && result.symmetry.holds ? 0 : 1, notes: [] };
     }
     case 'codim': {

@@ -1,0 +1,176 @@
+/** `check --find`: the signed permutations of the coordinates that leave H invariant, against what was declared. */
+import { groupOfMatrices } from '../action/index.ts';
+import { LimitError, NotAGroupError } from '../errors/index.ts';
+import { type Algebraic, mulAddMod, type RealField } from '../field/index.ts';
+import type { SparseMatrix } from '../linear/index.ts';
+import { signedSymmetries } from '../model/find-symmetry.ts';
+import { asSignedPermutation, permutationMatrix, permutationText, structureOfPolynomial } from '../model/find-symmetry-model.ts';
+import { energySeries } from '../model/neutral.ts';
+import type { Prepared } from './prepare.ts';
+
+/** Groups are joined and compared element by element up to this order. */
+export const JOIN_LIMIT = 20_000;
+
+export interface FoundGenerator {
+  readonly name: string;
+  readonly reversing: boolean;
+  /** In the language of model files; empty where all coordinates stay (time reversal alone). */
+  readonly map: string;
+}
+
+export interface FoundSymmetry {
+  /** Order of the group of all symmetries found, declared ones that are no signed permutations joined; a text beyond 2⁵³. */
+  readonly order: number | string;
+  readonly reversing: boolean;
+  /** Order of the signed permutations alone. */
+  readonly signedOrder: number | string;
+  readonly generators: readonly FoundGenerator[];
+  readonly declaredOrder: number;
+  /** Whether the declared group lies in the one found. */
+  readonly contains: boolean;
+  /** Generators found that the declared group does not contain, by name. */
+  readonly undeclared: readonly string[];
+  /** Declared generators that are no signed permutations; they are kept and joined. */
+  readonly outside: readonly string[];
+  /** To which degree H was compared. */
+  readonly degree: number | 'all';
+  readonly words: string;
+}
+
+/** Exact models. Throws LimitError where the search is too long. */
+export function findSymmetry(p: Prepared, declaredOrder: number): FoundSymmetry {
+  const { field, form } = p;
+  const point = p.quantities.point.map((x) => field.embed(p.quantities.field, x));
+  const series = energySeries(p.hamiltonian, p.quantities, [], field);
+  if (series === undefined)
+    throw new LimitError('the Taylor series of H has coefficients outside the field of the model', {
+      expected: 'an H whose fourth derivatives are exact too',
+      next: 'compare with --floating',
+    });
+  const structure = structureOfPolynomial(series.polynomial, form, point, field);
+  const group = signedSymmetries(structure);
+  const matrices = group.generators.map((g) => permutationMatrix(g, field));
+  const n = form.rows;
+  const generators = group.generators.map(
+    (g, i): FoundGenerator => ({
+      name: `f${i + 1}`,
+      reversing: g.signs[n] === -1,
+      map: permutationText(g, p.quantities.names),
+    }),
+  );
+  const valid = p.generators.filter((g) => g.reason === undefined && g.sign !== undefined);
+  const outside = valid.filter((g) => {
+    const s = asSignedPermutation(g.matrix, field, g.sign!);
+    return s === undefined || !inKinds(structure.kinds, s.images) || !group.index.isSymmetry(s);
+  });
+  const joined = outside.length === 0 ? group.order : joinedOrder(field, n, [...matrices, ...outside.map((g) => g.matrix)], group.order);
+  const declared =
+    declaredOrder === 0
+      ? undefined
+      : orbitOf(
+          field,
+          n,
+          valid.map((g) => g.matrix),
+          declaredOrder,
+        );
+  const undeclared = declared === undefined ? generators : generators.filter((_, i) => !declared.has(matrices[i]!));
+  const contains = valid.length === p.generators.length && joined !== undefined;
+  const order = joined ?? group.order;
+  const degree = Number.isFinite(series.known) ? series.known + 1 : ('all' as const);
+  return {
+    order: readable(order),
+    reversing: generators.some((g) => g.reversing),
+    signedOrder: readable(group.order),
+    generators,
+    declaredOrder,
+    contains,
+    undeclared: undeclared.map((g) => g.name),
+    outside: outside.map((g) => g.name),
+    degree,
+    words: words(
+      order,
+      declaredOrder,
+      undeclared,
+      outside.map((g) => g.name),
+      joined === undefined,
+    ),
+  };
+}
+
+const readable = (x: bigint): number | string => (x <= BigInt(Number.MAX_SAFE_INTEGER) ? Number(x) : x.toString());
+
+/** Whether a permutation maps coordinates to coordinates where the search did. */
+function inKinds(kinds: readonly number[], images: Int32Array): boolean {
+  return kinds.every((k, i) => kinds[images[i]!] === k);
+}
+
+/** Order of the group generated, or undefined where it is infinite or too large to tell. */
+function joinedOrder(field: RealField, n: number, matrices: readonly SparseMatrix<Algebraic>[], least: bigint): bigint | undefined {
+  if (least > BigInt(JOIN_LIMIT)) return undefined;
+  try {
+    return BigInt(groupOfMatrices(field, n, matrices, JOIN_LIMIT).order);
+  } catch (error) {
+    if (!(error instanceof NotAGroupError)) throw error;
+    return undefined;
+  }
+}
+
+/**
+ * The elements of a finite matrix group as images of one random vector modulo a prime; undefined where the vector is not moved
+ * by all of them or there are too many.
+ */
+function orbitOf(
+  field: RealField,
+  n: number,
+  generators: readonly SparseMatrix<Algebraic>[],
+  order: number,
+): { has(matrix: SparseMatrix<Algebraic>): boolean } | undefined {
+  if (order > JOIN_LIMIT * 5) return undefined;
+  const reduction = field.reduction();
+  const { p } = reduction;
+  let seed = 987_654_321;
+  const start = Int32Array.from({ length: n }, () => {
+    seed = (seed * 48271) % 2147483647;
+    return seed % p;
+  });
+  const times = (m: SparseMatrix<Algebraic>, v: Int32Array) =>
+    Int32Array.from(m.index, (cols, i) => {
+      let s = 0;
+      cols.forEach((j, k) => {
+        s = mulAddMod(s, reduction.apply(m.value[i]![k]!), v[j]!, p);
+      });
+      return s;
+    });
+  const seen = new Set([start.join(' ')]);
+  const list = [start];
+  for (let i = 0; i < list.length && list.length <= order; i++)
+    for (const g of generators) {
+      const w = times(g, list[i]!);
+      const key = w.join(' ');
+      if (seen.has(key)) continue;
+      seen.add(key);
+      list.push(w);
+    }
+  return list.length === order ? { has: (m) => seen.has(times(m, start).join(' ')) } : undefined;
+}
+
+function words(
+  order: bigint,
+  declaredOrder: number,
+  undeclared: readonly FoundGenerator[],
+  outside: readonly string[],
+  unbounded: boolean,
+): string {
+  const kept =
+    outside.length === 0
+      ? ''
+      : ` ${outside.join(', ')} ${outside.length === 1 ? 'is no signed permutation and was' : 'are no signed permutations and were'} kept as declared.`;
+  if (unbounded)
+    return `The signed permutations that leave H invariant form a group of order ${order}; together with the declared generators they generate an infinite group or one of more than ${JOIN_LIMIT} elements, so H may have a continuous symmetry (--neutral find).${kept}`;
+  if (undeclared.length === 0)
+    return `The declared group of order ${declaredOrder} is all there is among signed permutations of the coordinates.${kept}`;
+  const shown = undeclared
+    .slice(0, 4)
+    .map((g) => `${g.name}: ${g.map === '' ? 'time reversal' : `{${g.map}}${g.reversing ? ' reversing time' : ''}`}`);
+  return `H is invariant under a group of order ${order}, the declared one has order ${declaredOrder}. Not declared: ${shown.join('; ')}${undeclared.length > shown.length ? `; and ${undeclared.length - shown.length} more` : ''}.${kept}`;
+}
