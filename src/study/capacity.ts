@@ -86,7 +86,8 @@ function compareSums(action: Action, blocks: readonly MeasuredBlock[]): void {
 
 /**
  * Signature (a, b) of the Hermitian form iω on the multiplicity space of a complex χ. Up to a positive factor i acts as the central
- * element Σ (g - g⁻¹) over a class on which Im χ > 0 for the constituent χ chosen; each copy of χ counts for `dim eK` real dimensions.
+ * element Σ (g - g⁻¹) over a class where χ is not real; each copy of χ counts for `dim eK` real dimensions. Of χ and its conjugate,
+ * for which a and b change places, the one with a ≥ b is meant.
  */
 function signatureOf(action: Action, symplectic: SymplecticPart, block: FlowBlock, per: 1 | 2): [number, number] {
   const { part } = symplectic;
@@ -99,14 +100,12 @@ function signatureOf(action: Action, symplectic: SymplecticPart, block: FlowBloc
   });
   if (best < 0) throw new RoutesDisagree(`class ${block.symmetryClass} with a real character`);
   const inverse = part.group.classes[best]!.inverse;
-  const positive = block.irreducible.complexValues[best]!.im > 0;
   let turned: Matrix<Algebraic> = zeroMatrix(f, basis.rows, basis.cols);
   for (let e = 0; e < part.group.order; e++) {
     const own = part.group.classOf[e]!;
     if (own !== best && own !== inverse) continue;
-    const plus = (own === best) === positive;
     const t = sparseTimes(action.matrix(part.inclusion[e]!), basis);
-    turned = { ...turned, data: turned.data.map((x, i) => (plus ? f.add(x, t.data[i]!) : f.sub(x, t.data[i]!))) };
+    turned = { ...turned, data: turned.data.map((x, i) => (own === best ? f.add(x, t.data[i]!) : f.sub(x, t.data[i]!))) };
   }
   // ω(Iu, v) is symmetric in u and v
   const form = multiply(transpose(turned), sparseTimes(action.form, basis));
@@ -114,7 +113,8 @@ function signatureOf(action: Action, symplectic: SymplecticPart, block: FlowBloc
   const width = cut * per;
   if (i.zero > 0 || i.positive % width !== 0 || i.negative % width !== 0)
     throw new RoutesDisagree(`the form iω has inertia ${i.positive}, ${i.zero}, ${i.negative} on copies of dimension ${width}`);
-  return [i.positive / width, i.negative / width];
+  const [a, b] = [i.positive / width, i.negative / width];
+  return a >= b ? [a, b] : [b, a];
 }
 
 /** ω restricted to the multiplicity space of a block. */

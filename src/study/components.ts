@@ -21,6 +21,7 @@ import {
 import type { Declaration } from '../model/declaration/index.ts';
 import { formOf, type MeasuredBlock, measuredBlocks } from './capacity.ts';
 import { labelledComponents } from './labels.ts';
+import { partnersOf } from './partners.ts';
 import { isExact, type NotExact, prepare } from './prepare.ts';
 import type { ClassSummary, ComponentSummary, ComponentsResult, StudyResult, Value } from './result.ts';
 import { CAUTION, componentSummaries, generatorSummaries, groupSummary, linearText, modelSummary } from './summary.ts';
@@ -28,6 +29,8 @@ import { embedHessian, prepareSymbolic, requireSymbolicHolds, type SymbolicModel
 
 /** Blocks larger than this are left out of the result. */
 export const BLOCK_LIMIT = 40;
+/** In larger phase spaces only the first of the alike spaces of each component is written down. */
+export const PARTNER_DIMENSION = 100;
 
 /** A model with its group, S as far as it is known. */
 export interface Structure {
@@ -153,15 +156,22 @@ const formsOf = (basis: Matrix<Algebraic>, names: readonly string[], field: Real
   Array.from({ length: basis.cols }, (_, j) => linearText(column(basis, j), names, field));
 
 function componentList(s: Structure): ComponentSummary[] {
-  const { action } = s;
+  const { action, names } = s;
+  const f = action.field;
   const plain = componentSummaries(s.components);
-  return adaptedBlocks(action, s.components).map((b, i): ComponentSummary => {
-    const basis = readableBasis(b.basis, action.field);
+  const blocks = adaptedBlocks(action, s.components);
+  const bases = blocks.map((b) => readableBasis(b.basis, f));
+  const partners = action.dimension > PARTNER_DIMENSION ? undefined : partnersOf(action, s.components, bases);
+  return blocks.map((b, i): ComponentSummary => {
+    const basis = bases[i]!;
     const shown = basis.cols > BLOCK_LIMIT ? undefined : s.blocks(basis, undefined);
     return {
       ...plain[i]!,
-      basis: formsOf(basis, s.names, action.field),
+      basis: formsOf(basis, names, f),
       copies: b.component.irreducible.dimension / b.cut,
+      ...(partners === undefined || partners[i]!.length === 0
+        ? {}
+        : { partners: partners[i]!.map((p) => ({ basis: formsOf(p.basis, names, f), factor: f.format(p.factor) })) }),
       ...(shown === undefined ? {} : { block: shown.s }),
     };
   });

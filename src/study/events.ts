@@ -32,7 +32,8 @@ export interface EventsResult extends StudyResult {
   /** The list goes up to this codimension. */
   readonly upTo: number;
   readonly events: readonly ListedEventSummary[];
-  readonly collisions: readonly ListedCollisionSummary[];
+  /** Collisions off zero of codimension 1 that the action allows. */
+  readonly collisionTypes: readonly ListedCollisionSummary[];
 }
 
 /** The result of `events`. Throws the typed errors of the library, LimitError for a list that is too long. */
@@ -52,6 +53,6 @@ export async function eventsResult(declaration: Declaration): Promise<EventsResu
       motion: motionOf(e.codimension, semisimple),
       ...(e.codimension === 1 ? { signChanges: e.kernel } : {}),
     })),
-    collisions: simpleCollisions(capacities),
+    collisionTypes: simpleCollisions(capacities),
   };
 }

@@ -43,6 +43,8 @@ export interface ComponentSummary {
   readonly block?: readonly (readonly Value[])[];
   /** How many spaces like that of the basis make up the component; S looks the same on each. */
   readonly copies?: number;
+  /** Bases of the other spaces; S on them is `factor` times the block. */
+  readonly partners?: readonly { readonly basis: readonly string[]; readonly factor: Value }[];
 }
 
 /** One block of the flow: what `classes` of the contract lists, with the block of L. */
