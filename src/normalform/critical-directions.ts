@@ -53,12 +53,29 @@ function inThePlane(ring: PolynomialRing<Algebraic>, f: Polynomial<Algebraic>, l
     for (const s of [1, -1]) (times === 1 ? found : multiple).push(Float64Array.of((s * x) / r, (s * y) / r));
   };
   if (p.length <= degree) take(1, 0, degree + 1 - p.length);
+  const doubles = Float64Array.from(p, (c) => field.toNumber(c));
   for (const root of roots.isolate(p)) {
-    const fine = roots.refine(p, root, 25);
-    const mid = fine.exact ?? { n: fine.low.n * fine.high.d + fine.high.n * fine.low.d, d: 2n * fine.low.d * fine.high.d };
-    take(ratioToNumber(mid.n, mid.d), 1, root.multiplicity);
+    if (root.exact !== undefined) take(ratioToNumber(root.exact.n, root.exact.d), 1, root.multiplicity);
+    else if (root.multiplicity === 1) take(bisected(doubles, ratioToNumber(root.low.n, root.low.d), ratioToNumber(root.high.n, root.high.d)), 1, 1);
+    else {
+      const near = roots.refine(p, root, 10);
+      take(ratioToNumber(near.low.n, near.low.d), 1, root.multiplicity);
+    }
   }
   return { found, all: false, multiple, complete: true };
+}
+
+/** The simple root between two isolating ends, to the last digits of a double. */
+function bisected(p: Float64Array, low: number, high: number): number {
+  const value = (x: number) => p.reduceRight((s, c) => s * x + c, 0);
+  const right = Math.sign(value(high));
+  for (let k = 0; k < 200; k++) {
+    const mid = (low + high) / 2;
+    if (mid <= low || mid >= high) break;
+    if (Math.sign(value(mid)) === right) high = mid;
+    else low = mid;
+  }
+  return (low + high) / 2;
 }
 
 function bySearch(ring: PolynomialRing<Algebraic>, f: Polynomial<Algebraic>, l: Polynomial<Algebraic>): Directions {
