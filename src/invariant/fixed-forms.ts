@@ -8,14 +8,16 @@
  * twice the bound.
  */
 import { LimitError } from '../errors/index.ts';
-import { type Algebraic, gcd, mulAddMod } from '../field/index.ts';
+import { type Algebraic, mulAddMod } from '../field/index.ts';
 import { modularKernel } from '../linear/index.ts';
 import { chineseRemainder, type Monomial, type Polynomial, type PolynomialRing, reconstructRational } from '../polynomial/index.ts';
 import { CommonReduction } from './common-reduction.ts';
 import { Embeddings } from './embeddings.ts';
 import { gradedMonomials } from './graded-monomials.ts';
+import { boundOfDifferences } from './height-bound.ts';
 import type { LinearAction } from './linear-action.ts';
 import type { MonomialLayers } from './monomial-layers.ts';
+import { isSigned, signedOrbits } from './signed-orbits.ts';
 import { kroneckerRow, type SparseRow, SymmetricPowers } from './symmetric-powers.ts';
 
 /** Most monomials of one multidegree, and most of them in one elimination. */
@@ -246,7 +248,8 @@ export class FixedForms {
 
   /** The exact check. */
   #holds(degrees: readonly number[], monomials: readonly Monomial[], forms: readonly Polynomial<Algebraic>[]): boolean {
-    const bound = this.#bound(
+    const bound = boundOfDifferences(
+      this.#action,
       degrees.reduce((s, d) => s + d, 0),
       forms,
     );
@@ -276,74 +279,4 @@ export class FixedForms {
     }
     return true;
   }
-
-  /**
-   * A bound of the coordinates of ρ(g)f - f times a common denominator. With |x| the sum of the absolute coordinates and
-   * K the largest |b_i b_j| over the basis, |x y| <= K |x| |y|.
-   */
-  #bound(degree: number, forms: readonly Polynomial<Algebraic>[]): bigint {
-    const { field, generatorMatrices, dimension } = this.#action;
-    const n = field.degree;
-    const size = (x: Algebraic) => x.c.reduce((s, y) => s + (y < 0n ? -y : y), 0n);
-    const unit = (j: number): Algebraic => ({ c: Array.from({ length: n }, (_, i) => (i === j ? 1n : 0n)), d: 1n });
-    let K = 1n;
-    for (let i = 0; i < n; i++)
-      for (let j = i; j < n; j++) {
-        const s = size(field.mul(unit(i), unit(j)));
-        if (s > K) K = s;
-      }
-    let most = 1n;
-    for (const m of generatorMatrices) {
-      const d = m.data.reduce((l, x) => (l * x.d) / gcd(l, x.d), 1n);
-      if (d > most) most = d;
-      for (let i = 0; i < dimension; i++) {
-        let s = 0n;
-        for (let j = 0; j < dimension; j++) {
-          const x = m.data[i * dimension + j]!;
-          s += size(x) * (d / x.d);
-        }
-        if (s > most) most = s;
-      }
-    }
-    let largest = 1n;
-    for (const f of forms) {
-      const d = f.coefficients.reduce((l, x) => (l * x.d) / gcd(l, x.d), 1n);
-      const s = f.coefficients.reduce((t, x) => t + size(x) * (d / x.d), 0n);
-      if (s > largest) largest = s;
-    }
-    return 2n * largest * (K * most) ** BigInt(degree);
-  }
-}
-
-/** True if every row has a single entry 1 or -1. */
-function isSigned(rows: readonly SparseRow[], p: number): boolean {
-  return rows.every((r) => r.index.length === 1 && (r.value[0] === 1 || r.value[0] === p - 1));
-}
-
-/**
- * Orbits of monomials under signed permutations that carry an invariant, in the order of their first members; signs
- * are relative to these. Other monomials get no orbit.
- */
-function signedOrbits(set: readonly number[], generators: readonly (readonly SparseRow[])[], signOf: Int8Array): number[][] {
-  for (const m of set) signOf[m] = 0;
-  const out: number[][] = [];
-  for (const start of set) {
-    if (signOf[start] !== 0) continue;
-    signOf[start] = 1;
-    const orbit = [start];
-    let consistent = true;
-    for (const m of orbit)
-      for (const g of generators) {
-        const { index, value } = g[m]!;
-        const sign = (value[0] === 1 ? signOf[m]! : -signOf[m]!) as 1 | -1;
-        const next = index[0]!;
-        if (signOf[next] === 0) {
-          signOf[next] = sign;
-          orbit.push(next);
-        } else if (signOf[next] !== sign) consistent = false;
-      }
-    if (!consistent) continue;
-    out.push(orbit.sort((a, b) => a - b));
-  }
-  return out;
 }

@@ -4,10 +4,11 @@
  * (Encarnación 1995); both from memory. The answer is kept only if it divides both arguments exactly.
  */
 import { type Algebraic, type Field, gcd, PrimeField, type Rational, RealField, rationals } from '../field/index.ts';
+import { modularEchelon } from '../linear/index.ts';
 import { divideExactly } from './division.ts';
-import { chineseRemainder, echelonInPlace, reconstructRational } from './modular.ts';
 import type { Monomial } from './monomial.ts';
 import { type Polynomial, PolynomialRing } from './polynomial.ts';
+import { chineseRemainder, reconstructRational } from './reconstruction.ts';
 import { gcdModular } from './univariate-modular.ts';
 
 /** Number fields of higher degree are left to remainder sequences. */
@@ -42,13 +43,14 @@ function embeddings<T>(field: Field<T>, index: number): Embeddings<T> | undefine
     for (let j = 0; j < n; j++) table[2 * n * k + j] = maps[k]!(basis[j] as unknown as T);
     table[2 * n * k + n + k] = 1;
   }
-  if (echelonInPlace(table, n, 2 * n, p).some((q, i) => q !== i)) return undefined;
+  const { matrix: inverse, pivots } = modularEchelon({ p, rows: n, cols: 2 * n, data: table });
+  if (pivots.some((q, i) => q !== i)) return undefined;
   const prime = new PrimeField(p);
   return {
     p,
     maps,
     coordinates: (images) =>
-      Array.from({ length: n }, (_, j) => images.reduce((s, v, k) => prime.add(s, prime.mul(table[2 * n * j + n + k]!, v)), 0)),
+      Array.from({ length: n }, (_, j) => images.reduce((s, v, k) => prime.add(s, prime.mul(inverse.data[2 * n * j + n + k]!, v)), 0)),
   };
 }
 

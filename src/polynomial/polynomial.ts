@@ -18,6 +18,8 @@ import {
   VARIABLE_LIMIT,
 } from './monomial.ts';
 import { multiplyTerms, sortedTerms, type TermList } from './product.ts';
+import { substituteTerms } from './substitution.ts';
+import { mergeTerms, sumTerms } from './sums.ts';
 import { joinTerms, latexName, latexTerm, writeTerm } from './writing.ts';
 
 /** Terms in canonical order without zero coefficients; made by a PolynomialRing only. */
@@ -84,55 +86,18 @@ export class PolynomialRing<T> {
     return exponentsOf(p.monomials[i]!, this.variables.length);
   }
 
-  #merge(a: Polynomial<T>, b: Polynomial<T>, subtract: boolean): Polynomial<T> {
-    const f = this.field;
-    if (b.monomials.length === 0) return a;
-    if (a.monomials.length === 0) return subtract ? this.neg(b) : b;
-    const monomials: Monomial[] = [];
-    const coefficients: T[] = [];
-    let i = 0;
-    let j = 0;
-    while (i < a.monomials.length || j < b.monomials.length) {
-      const order = i >= a.monomials.length ? 1 : j >= b.monomials.length ? -1 : compareMonomials(a.monomials[i]!, b.monomials[j]!);
-      let c: T;
-      let m: Monomial;
-      if (order < 0) {
-        m = a.monomials[i]!;
-        c = a.coefficients[i++]!;
-      } else if (order > 0) {
-        m = b.monomials[j]!;
-        c = b.coefficients[j++]!;
-        if (subtract) c = f.neg(c);
-      } else {
-        m = a.monomials[i]!;
-        const y = b.coefficients[j++]!;
-        c = subtract ? f.sub(a.coefficients[i++]!, y) : f.add(a.coefficients[i++]!, y);
-        if (f.isZero(c)) continue;
-      }
-      monomials.push(m);
-      coefficients.push(c);
-    }
-    return { monomials, coefficients };
-  }
   add(a: Polynomial<T>, b: Polynomial<T>): Polynomial<T> {
-    return this.#merge(a, b, false);
+    return mergeTerms(this.field, a, b, false);
   }
   sub(a: Polynomial<T>, b: Polynomial<T>): Polynomial<T> {
-    return this.#merge(a, b, true);
+    return mergeTerms(this.field, a, b, true);
   }
   neg(a: Polynomial<T>): Polynomial<T> {
     return { monomials: a.monomials, coefficients: a.coefficients.map((c) => this.field.neg(c)) };
   }
   /** Sum of many, by one pass. */
   sum(list: Iterable<Polynomial<T>>): Polynomial<T> {
-    const sums = new Map<Monomial, T>();
-    for (const p of list)
-      for (let i = 0; i < p.monomials.length; i++) {
-        const m = p.monomials[i]!;
-        const old = sums.get(m);
-        sums.set(m, old === undefined ? p.coefficients[i]! : this.field.add(old, p.coefficients[i]!));
-      }
-    return sortedTerms(this.field, sums);
+    return sumTerms(this.field, list);
   }
   mul(a: Polynomial<T>, b: Polynomial<T>): Polynomial<T> {
     return multiplyTerms(this.field, a, b);
@@ -259,21 +224,7 @@ export class PolynomialRing<T> {
     limit = Infinity,
   ): Polynomial<U> {
     if (images.length < this.variables.length) throw new ShapeError(`${images.length} images for ${this.variables.length} variables`);
-    const order = Array.from(a.monomials.keys()).sort((x, y) => (a.monomials[x]! < a.monomials[y]! ? -1 : 1));
-    const below = (from: number, to: number, depth: number): Polynomial<U> => {
-      const parts: Polynomial<U>[] = [];
-      let i = from;
-      if (i < to && a.monomials[order[i]!]!.length === depth) parts.push(target.constant(embed(a.coefficients[order[i++]!]!)));
-      while (i < to) {
-        const v = a.monomials[order[i]!]!.charCodeAt(depth);
-        let j = i + 1;
-        while (j < to && a.monomials[order[j]!]!.charCodeAt(depth) === v) j++;
-        parts.push(target.mulTruncated(images[v]!, below(i, j, depth + 1), limit));
-        i = j;
-      }
-      return parts.length === 1 ? parts[0]! : parts.length === 2 ? target.add(parts[0]!, parts[1]!) : target.sum(parts);
-    };
-    return below(0, order.length, 0);
+    return substituteTerms(a, images, target, embed, limit);
   }
   /** x ↦ a(m x): variable i is replaced by the form of row i of m (square, one row per variable). */
   linearSubstitution(a: Polynomial<T>, m: Matrix<T>): Polynomial<T> {
