@@ -56,7 +56,8 @@ function inThePlane(ring: PolynomialRing<Algebraic>, f: Polynomial<Algebraic>, l
   const doubles = Float64Array.from(p, (c) => field.toNumber(c));
   for (const root of roots.isolate(p)) {
     if (root.exact !== undefined) take(ratioToNumber(root.exact.n, root.exact.d), 1, root.multiplicity);
-    else if (root.multiplicity === 1) take(bisected(doubles, ratioToNumber(root.low.n, root.low.d), ratioToNumber(root.high.n, root.high.d)), 1, 1);
+    else if (root.multiplicity === 1)
+      take(bisected(doubles, ratioToNumber(root.low.n, root.low.d), ratioToNumber(root.high.n, root.high.d)), 1, 1);
     else {
       const near = roots.refine(p, root, 10);
       take(ratioToNumber(near.low.n, near.low.d), 1, root.multiplicity);
