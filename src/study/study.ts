@@ -62,6 +62,10 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       const result = codimResult(linearStudy(prepared), parameters);
       return { result, status: VERDICT_STATUS[result.verdict.answer]!, notes: [] };
     }
+    case 'branches': {
+      const [{ linearStudy }, { branchesResult }] = await Promise.all([import('./codim.ts'), import('./branches.ts')]);
+      return { result: await branchesResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
+    }
     case 'reduce': {
       const [{ linearStudy }, { reduceResult }] = await Promise.all([import('./codim.ts'), import('./reduce.ts')]);
       return { result: reduceResult(linearStudy(prepared), parameters, declaration.degree), status: 0, notes: [] };
