@@ -1,6 +1,6 @@
 /**
  * A Hamiltonian about its equilibrium as a structure for the search of signed permutations. Where H is a function of
- * the momenta plus one of the coordinates and ω is canonical, coordinates go to coordinates and the momenta follow;
+ * the momenta plus one of the coordinates and the model gives no form of its own, coordinates go to coordinates and the momenta follow;
  * else all variables of the phase space may be exchanged as long as ω is kept up to the sign of time.
  */
 import type { Algebraic, RealField } from '../field/index.ts';
@@ -40,35 +40,46 @@ const exactSizes = (field: RealField) =>
     (x) => field.neg(x),
   );
 
-function isCanonical(form: SparseMatrix<Algebraic>): boolean {
-  const half = form.rows / 2;
-  return form.index.every(
-    (cols, i) =>
-      cols.length === 1 &&
-      cols[0] === (i + half) % form.rows &&
-      form.field.equal(form.value[i]![0]!, i < half ? form.field.one : form.field.neg(form.field.one)),
-  );
-}
-
 function separable(terms: readonly { readonly variables: readonly number[] }[], half: number): boolean {
   return terms.every(({ variables: v }) => v.length === 0 || v.every((x) => x < half) || v.every((x) => x >= half));
 }
 
 const kindsOf = (n: number, lifted: boolean) => Array.from({ length: n }, (_, i) => (lifted && i >= n / 2 ? 1 : 0));
 
-/** From an exact polynomial in the n phase variables, W and the point that must stay. */
+/**
+ * From an exact polynomial in the n phase variables and, after them, parameters that no symmetry moves; W; and the point that must
+ * stay. A coefficient is then a polynomial in the parameters. `lift`: momenta follow the coordinates where H allows it.
+ */
 export function structureOfPolynomial(
   polynomial: Polynomial<Algebraic>,
   form: SparseMatrix<Algebraic>,
   point: readonly Algebraic[],
   field: RealField,
+  lift: boolean,
 ): SignedStructure {
   const n = form.rows;
-  const sizes = exactSizes(field);
-  const terms: StructureTerm[] = polynomial.monomials.map((m, k) => {
-    const factors = factorsOf(m);
-    return { variables: factors.map((f) => f[0]), exponents: factors.map((f) => f[1]), weight: sizes.of(polynomial.coefficients[k]!)! };
+  const coefficients = new Map<string, [parameters: string, value: Algebraic][]>();
+  polynomial.monomials.forEach((m, k) => {
+    let split = 0;
+    while (split < m.length && m.charCodeAt(split) < n) split++;
+    const phase = m.slice(0, split);
+    const part = [m.slice(split), polynomial.coefficients[k]!] as [string, Algebraic];
+    const known = coefficients.get(phase);
+    if (known === undefined) coefficients.set(phase, [part]);
+    else known.push(part);
   });
+  // monomials come in one order, so equal polynomials give equal lists
+  const sizes = new Sizes<readonly (readonly [string, Algebraic])[]>(
+    (parts) => parts.map(([m, c]) => `${m}:${field.key(c)}`).join(';'),
+    (parts) => field.sign(parts[0]![1]),
+    (parts) => parts.map(([m, c]) => [m, field.neg(c)] as const),
+  );
+  const terms: StructureTerm[] = [];
+  for (const [phase, parts] of coefficients) {
+    if (phase === '') continue;
+    const factors = factorsOf(phase);
+    terms.push({ variables: factors.map((f) => f[0]), exponents: factors.map((f) => f[1]), weight: sizes.of(parts)! });
+  }
   const entries = exactSizes(field);
   const w: FormEntry[] = form.index.flatMap((cols, i) =>
     cols.flatMap((j, k) => (j > i ? [{ i, j, weight: entries.of(form.value[i]![k]!)! }] : [])),
@@ -78,7 +89,7 @@ export function structureOfPolynomial(
     count: n,
     terms,
     form: w,
-    kinds: kindsOf(n, isCanonical(form) && separable(terms, n / 2)),
+    kinds: kindsOf(n, lift && separable(terms, n / 2)),
     values: point.map((x) => places.of(x)),
   };
 }

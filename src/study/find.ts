@@ -24,6 +24,8 @@ export interface FoundSymmetry {
   readonly reversing: boolean;
   /** Order of the signed permutations alone. */
   readonly signedOrder: number | string;
+  /** Order of the signed permutations that leave H invariant whatever the varied parameters are; only where some vary. */
+  readonly familyOrder?: number | string;
   readonly generators: readonly FoundGenerator[];
   readonly declaredOrder: number;
   /** Whether the declared group lies in the one found. */
@@ -47,8 +49,13 @@ export function findSymmetry(p: Prepared, declaredOrder: number): FoundSymmetry 
       expected: 'an H whose fourth derivatives are exact too',
       next: 'compare with --floating',
     });
-  const structure = structureOfPolynomial(series.polynomial, form, point, field);
+  const lift = p.declaration.form === undefined;
+  const structure = structureOfPolynomial(series.polynomial, form, point, field, lift);
   const group = signedSymmetries(structure);
+  const { vary } = p.declaration;
+  const family = vary.length === 0 ? undefined : energySeries(p.hamiltonian, p.quantities, vary, field);
+  const familyOrder =
+    family === undefined ? undefined : signedSymmetries(structureOfPolynomial(family.polynomial, form, point, field, lift)).order;
   const matrices = group.generators.map((g) => permutationMatrix(g, field));
   const n = form.rows;
   const generators = group.generators.map(
@@ -81,19 +88,20 @@ export function findSymmetry(p: Prepared, declaredOrder: number): FoundSymmetry 
     order: readable(order),
     reversing: generators.some((g) => g.reversing),
     signedOrder: readable(group.order),
+    ...(familyOrder === undefined ? {} : { familyOrder: readable(familyOrder) }),
     generators,
     declaredOrder,
     contains,
     undeclared: undeclared.map((g) => g.name),
     outside: outside.map((g) => g.name),
     degree,
-    words: words(
-      order,
-      declaredOrder,
-      undeclared,
-      outside.map((g) => g.name),
-      joined === undefined,
-    ),
+    words: [
+      words(order, declaredOrder, undeclared, joined === undefined),
+      ...(familyOrder === undefined || familyOrder === group.order
+        ? []
+        : [`Of the ${group.order} signed permutations ${familyOrder} stay symmetries when ${vary.join(', ')} varies.`]),
+      ...(outside.length === 0 ? [] : [`${outside.map((g) => g.name).join(', ')}: no signed permutation, kept as declared.`]),
+    ].join(' '),
   };
 }
 
@@ -154,23 +162,19 @@ function orbitOf(
   return list.length === order ? { has: (m) => seen.has(times(m, start).join(' ')) } : undefined;
 }
 
-function words(
-  order: bigint,
-  declaredOrder: number,
-  undeclared: readonly FoundGenerator[],
-  outside: readonly string[],
-  unbounded: boolean,
-): string {
-  const kept =
-    outside.length === 0
-      ? ''
-      : ` ${outside.join(', ')} ${outside.length === 1 ? 'is no signed permutation and was' : 'are no signed permutations and were'} kept as declared.`;
+/** Longer maps are not written out in the summary. */
+const SHOWN_LENGTH = 120;
+
+function words(order: bigint, declaredOrder: number, undeclared: readonly FoundGenerator[], unbounded: boolean): string {
   if (unbounded)
-    return `The signed permutations that leave H invariant form a group of order ${order}; together with the declared generators they generate an infinite group or one of more than ${JOIN_LIMIT} elements, so H may have a continuous symmetry (--neutral find).${kept}`;
+    return `The signed permutations of the coordinates that leave H invariant form a group of order ${order}; together with the declared generators they generate an infinite group, or one of more than ${JOIN_LIMIT} elements: H may have a continuous symmetry (--neutral find).`;
   if (undeclared.length === 0)
-    return `The declared group of order ${declaredOrder} is all there is among signed permutations of the coordinates.${kept}`;
-  const shown = undeclared
-    .slice(0, 4)
-    .map((g) => `${g.name}: ${g.map === '' ? 'time reversal' : `{${g.map}}${g.reversing ? ' reversing time' : ''}`}`);
-  return `H is invariant under a group of order ${order}, the declared one has order ${declaredOrder}. Not declared: ${shown.join('; ')}${undeclared.length > shown.length ? `; and ${undeclared.length - shown.length} more` : ''}.${kept}`;
+    return `The declared group of order ${declaredOrder} is all there is among signed permutations of the coordinates.`;
+  const shown = undeclared.slice(0, 4).map((g) => {
+    if (g.map === '') return `${g.name}, time reversal`;
+    const time = g.reversing ? ', reversing time' : '';
+    return g.map.length > SHOWN_LENGTH ? `${g.name}, ${g.map.split(', ').length} coordinates moved${time}` : `${g.name}, {${g.map}}${time}`;
+  });
+  const rest = undeclared.length - shown.length;
+  return `H is invariant under a group of order ${order}; the declared one has order ${declaredOrder}. Not declared: ${shown.join('; ')}${rest > 0 ? `; and ${rest} more` : ''}.`;
 }
