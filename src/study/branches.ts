@@ -56,7 +56,7 @@ export interface BranchesResult extends StudyResult {
   readonly undecided: readonly string[];
   /** Sum of (−1)^index over the equilibria near the event on either side of the parameter; equal where nothing is missing. */
   readonly topologicalDegree: { readonly below: number; readonly above: number } | null;
-  readonly figure: {
+  readonly diagram: {
     readonly kind: 'bifurcation';
     readonly parameter: string;
     readonly amplitude: string;
@@ -108,7 +108,7 @@ export async function branchesResult(study: LinearStudy, degree?: number): Promi
     branches,
     undecided: diagram.undecided,
     topologicalDegree: diagram.topologicalDegree,
-    figure: { kind: 'bifurcation', parameter, amplitude: 'amplitude', branches: curves },
+    diagram: { kind: 'bifurcation', parameter, amplitude: 'amplitude', branches: curves },
   };
 }
 
