@@ -9,6 +9,8 @@ import { type Multiplicity, type SignedType, signedPartitions } from './signed-p
 
 /** Longer lists are refused. */
 export const EVENT_LIMIT = 20_000;
+/** Partitions of larger numbers are not gone through: 24 has 1575, and each has many signs. */
+export const PARTITION_LIMIT = 24;
 
 /** What a flow block offers: its class, how often K occurs, and the signature of ω in copies of K. */
 export interface BlockCapacity {
@@ -59,11 +61,21 @@ export function inertiaOfBlock(size: number, sign: 1 | -1 | 0): Inertia {
   return { positive: half + (positive ? 1 : 0), zero: 1, negative: half + (positive ? 0 : 1) };
 }
 
+function tooMany(limit: number): LimitError {
+  return new LimitError(`there are too many zero events up to codimension ${limit} to list them`, {
+    key: 'codimension',
+    value: String(limit),
+    expected: `at most ${EVENT_LIMIT} events`,
+    next: 'ask for a smaller one with --codimension',
+  });
+}
+
 /** Nonzero signed types on one block up to a codimension, by codimension, then by size. */
 export function blockEvents(block: BlockCapacity, limit: number): { readonly type: SignedType; readonly codimension: number }[] {
   const { classNumber: c, copies, signature } = block;
   // n copies cost at least n/2 in classes 1 and 5, n elsewhere
   const most = Math.min(copies, c === 1 || c === 5 ? 2 * limit : limit);
+  if (most * (c === 4 || c === 6 || c === 10 ? 2 : 1) > PARTITION_LIMIT) throw tooMany(limit);
   const out: { type: SignedType; codimension: number }[] = [];
   const add = (m: Multiplicity) => {
     for (const type of signedPartitions(c, m)) {
@@ -93,12 +105,7 @@ export function zeroEvents(blocks: readonly BlockCapacity[], limit: number): Lis
   const choices = blocks.map((b, i) => blockEvents(b, limit).map((e): BlockEvent => ({ block: i, ...e })));
   const found: BlockEvent[][] = [];
   const extend = (parts: BlockEvent[], next: number, left: number) => {
-    if (parts.length > 0 && found.push(parts) > EVENT_LIMIT)
-      throw new LimitError(`there are more than ${EVENT_LIMIT} zero events up to codimension ${limit}`, {
-        key: 'codimension',
-        value: String(limit),
-        next: 'ask for a smaller one with --codimension',
-      });
+    if (parts.length > 0 && found.push(parts) > EVENT_LIMIT) throw tooMany(limit);
     for (let i = next; i < choices.length; i++)
       for (const e of choices[i]!) if (e.codimension <= left) extend([...parts, e], i + 1, left - e.codimension);
   };

@@ -126,9 +126,10 @@ function symbolicHead(model: SymbolicModel, action: Action): Structure['head'] {
   const kind = declaration.energy.kind;
   const atom = hessian?.atoms[0];
   const point = quantities.names.map((n, i) => [n, quantities.field.format(quantities.point[i]!)] as const);
+  const summary = modelSummary({ declaration, quantities, hamiltonian: model.hamiltonian, because: '' });
   return {
     schema: 'symcodim/1',
-    model: modelSummary({ declaration, quantities, hamiltonian: model.hamiltonian, because: '' }),
+    model: { ...summary, parameters: { ...summary.parameters, ...Object.fromEntries(model.dependent) } },
     arithmetic: atom === undefined ? 'exact' : 'floating',
     ...(atom === undefined ? {} : { floatingBecause: atom }),
     field: field.name,

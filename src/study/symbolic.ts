@@ -28,7 +28,10 @@ export interface SymbolicHessian {
 }
 
 export interface SymbolicModel {
+  /** As read: parameters that depend on one without a value stand among the definitions. */
   readonly declaration: Declaration;
+  /** Those, as they were typed. */
+  readonly dependent: ReadonlyMap<string, string>;
   readonly quantities: Quantities;
   readonly hamiltonian: Expression | undefined;
   readonly field: RealField;
@@ -44,12 +47,12 @@ export interface SymbolicModel {
 
 /** Reads a model; H may be missing, parameters may lack values. Throws InputError for what cannot be read; failures are recorded. */
 export function prepareSymbolic(given: Declaration): SymbolicModel {
-  const declaration = dependentsDefined(given);
+  const { declaration, dependent } = dependentsDefined(given);
   const quantities = readQuantities(declaration);
   requireNondegenerate(quantities, declaration);
   const source = floatingSource(declaration.energy);
   const hamiltonian = source === undefined ? energyExpression(declaration, quantities.definitions) : undefined;
-  const common = { declaration: given, quantities, hamiltonian };
+  const common = { declaration, dependent, quantities, hamiltonian };
   if (hamiltonian === undefined) {
     const { field, form } = quantities;
     const generators = quantities.generators.map((g) => checked(g, g.matrix, form, undefined));
@@ -79,9 +82,8 @@ export function prepareSymbolic(given: Declaration): SymbolicModel {
 }
 
 /** Parameters whose values contain one without a value become definitions. */
-function dependentsDefined(declaration: Declaration): Declaration {
+function dependentsDefined(declaration: Declaration): { declaration: Declaration; dependent: ReadonlyMap<string, string> } {
   const open = new Set(declaration.unset);
-  if (open.size === 0) return declaration;
   const moved = new Map<string, string>();
   const left = new Map(declaration.parameters);
   for (let again = true; again; ) {
@@ -94,12 +96,15 @@ function dependentsDefined(declaration: Declaration): Declaration {
       again = true;
     }
   }
-  if (moved.size === 0) return declaration;
+  if (moved.size === 0) return { declaration, dependent: moved };
   return {
-    ...declaration,
-    parameters: left,
-    vary: declaration.vary.filter((v) => !moved.has(v)),
-    define: new Map([...declaration.define, ...moved]),
+    declaration: {
+      ...declaration,
+      parameters: left,
+      vary: declaration.vary.filter((v) => !moved.has(v)),
+      define: new Map([...declaration.define, ...moved]),
+    },
+    dependent: moved,
   };
 }
 
@@ -211,7 +216,11 @@ function hessianOf(e: SymbolicExpansion, n: number): SymbolicHessian {
       rows[j]!.set(i, c);
     }
   });
-  return { coefficients: f, matrix: sparseFromMaps(f, n, rows), symbols: e.symbols, atoms: e.atoms };
+  const matrix = sparseFromMaps(f, n, rows);
+  const used = new Set<string>();
+  for (const row of matrix.value)
+    for (const x of row) for (const p of [x.numerator, x.denominator]) for (const i of f.ring.support(p)) used.add(f.symbols[i]!);
+  return { coefficients: f, matrix, symbols: e.symbols.filter((s) => used.has(s)), atoms: e.atoms.filter((a) => used.has(a)) };
 }
 
 /** S over the larger field of an action. */

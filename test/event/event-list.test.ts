@@ -176,6 +176,7 @@ describe('several blocks', () => {
   it('a list that would be too long is refused', () => {
     const many = Array.from({ length: 12 }, (_, i): BlockCapacity => ({ ...capacity(4, 6), labels: [`A${i}`, `B${i}`] }));
     expect(() => zeroEvents(many, 4)).toThrow(LimitError);
+    expect(() => zeroEvents([capacity(1, 200)], 60)).toThrow(LimitError);
   });
 });
 
