@@ -3,9 +3,12 @@
  * the values tell invariants apart. So the image of an ideal that the group preserves is the image of its invariant part, and
  * neither averages nor equivariant vector fields are ever formed.
  */
-import { invMod, mulAddMod } from '../field/index.ts';
+import { invMod, mulAddMod, powModInt } from '../field/index.ts';
 import { modularKernel } from '../linear/index.ts';
 import { type Monomial, monomialsOfDegree, multiplyMonomials } from '../polynomial/index.ts';
+
+/** Base of the weights of generators in a random combination. */
+const WEIGHT = 742_938_285;
 
 /** A polynomial modulo p. */
 export type ModularPolynomial = ReadonlyMap<Monomial, number>;
@@ -49,22 +52,35 @@ export class Coinvariants {
     const { p, matrices } = this.generators;
     const kept = monomials.map((_, i) => i).filter((i) => allow(monomials[i]!));
     const count = monomials.length;
-    const data = new Int32Array(matrices.length * count * kept.length);
-    matrices.forEach((_, g) => {
-      const image = this.#images[e]![g]!;
+    const rows = matrices.length === 0 ? 0 : count;
+    const combined = this.#combination(this.#images[e]!, count);
+    const data = new Int32Array(rows * kept.length);
+    if (rows > 0)
       kept.forEach((a, c) => {
-        for (let b = 0; b < count; b++) {
-          let x = image[a * count + b]!;
-          if (a === b) x = x === 0 ? p - 1 : x - 1;
-          data[(g * count + b) * kept.length + c] = x;
-        }
+        for (let b = 0; b < count; b++) data[b * kept.length + c] = combined[a * count + b]!;
       });
-    });
-    const k = modularKernel({ p, rows: matrices.length * count, cols: kept.length, data });
+    const k = modularKernel({ p, rows, cols: kept.length, data });
     return Array.from(
       { length: k.rows },
       (_, i) => new Map(kept.map((a, c) => [monomials[a]!, k.data[i * kept.length + c]!] as const).filter(([, x]) => x !== 0)),
     );
+  }
+  /**
+   * Σ c_g (g - 1) for fixed weights c. A positive combination of unitary matrices has norm Σ c_g only on their common fixed vectors,
+   * so its determinant elsewhere is not the zero polynomial in the weights: it vanishes for few of them only.
+   */
+  #combination(images: readonly Int32Array[], count: number): Int32Array {
+    const { p } = this.generators;
+    const out = new Int32Array(count * count);
+    images.forEach((image, g) => {
+      const weight = powModInt(WEIGHT, g + 1, p);
+      for (let i = 0; i < out.length; i++) if (image[i] !== 0) out[i] = mulAddMod(out[i]!, weight, image[i]!, p);
+      for (let i = 0; i < count; i++) {
+        const t = i * count + i;
+        out[t] = (out[t]! + p - weight) % p;
+      }
+    });
+    return out;
   }
   /** Places of the values in a vector of all degrees up to d. */
   offsets(d: number): number[] {
@@ -125,15 +141,7 @@ export class Coinvariants {
       for (let i = 0; i < count; i++) forms[i * count + i] = 1;
     } else {
       // a form with values f satisfies sum_b image[a][b] f_b = f_a
-      const data = new Int32Array(matrices.length * count * count);
-      images.forEach((image, g) => {
-        data.set(image, g * count * count);
-        for (let i = 0; i < count; i++) {
-          const t = g * count * count + i * count + i;
-          data[t] = data[t] === 0 ? p - 1 : data[t]! - 1;
-        }
-      });
-      const k = modularKernel({ p, rows: matrices.length * count, cols: count, data });
+      const k = modularKernel({ p, rows: count, cols: count, data: this.#combination(images, count) });
       size = k.rows;
       forms = new Int32Array(count * size);
       for (let j = 0; j < size; j++) for (let a = 0; a < count; a++) forms[a * size + j] = k.data[j * count + a]!;

@@ -12,7 +12,7 @@ import {
   type RationalFunction,
   RationalFunctionField,
 } from '../polynomial/index.ts';
-import { Coinvariants, type GrowingEchelon, type ModularPolynomial } from './coinvariants.ts';
+import { Coinvariants, type ModularPolynomial } from './coinvariants.ts';
 import { type ModularAction, modularAction, squareProduct } from './modular-action.ts';
 import { combine, missingByDegree, orderOf, type TangentSpace, tangentSpace } from './tangent.ts';
 
@@ -231,11 +231,36 @@ export function valuesOf(model: GermModel, f: ModularPolynomial, { offsets, degr
   model.coinvariants.addValuesInPlace(v, offsets, f, '', degree);
   return v;
 }
-export type { GrowingEchelon };
+
+export interface Product {
+  readonly name: string;
+  readonly degree: number;
+  readonly polynomial: ModularPolynomial;
+}
+
+/**
+ * Products that form a basis of the quotient graded by degree: in degree e, of what is left modulo the tangent space and the terms above e.
+ * So a term is chosen that no change of coordinates trades for terms of higher degree.
+ */
+export function gradedBasis(model: GermModel, products: readonly Product[], { space, missing, top }: Codimension): Product[] {
+  const width = space.offsets.at(-1)!;
+  const out: Product[] = [];
+  for (let e = 1; e <= top; e++) {
+    if (missing[e] === 0) continue;
+    const echelon = space.echelon.copy();
+    for (let j = space.offsets[e + 1]!; j < width; j++) {
+      const unit = new Int32Array(width);
+      unit[j] = 1;
+      echelon.addInPlace(unit);
+    }
+    for (const f of products) if (f.degree === e && echelon.addInPlace(valuesOf(model, f.polynomial, space))) out.push(f);
+  }
+  return out;
+}
 
 /** Products of the generators of degree at most d, by degree. */
-export function productsUpTo(model: GermModel, d: number): { name: string; degree: number; polynomial: ModularPolynomial }[] {
-  const out: { name: string; degree: number; polynomial: ModularPolynomial }[] = [];
+export function productsUpTo(model: GermModel, d: number): Product[] {
+  const out: Product[] = [];
   const extend = (from: number, name: string, degree: number, polynomial: ModularPolynomial) => {
     for (let g = from; g < model.generators.length; g++) {
       const { name: own, degree: e, polynomial: q } = model.generators[g]!;

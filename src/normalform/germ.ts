@@ -13,11 +13,15 @@ import {
   type GermInput,
   type GermModel,
   germModel,
+  gradedBasis,
   productsUpTo,
   valuesOf,
 } from './germ-model.ts';
 import { type ModuliRule, moduliOf } from './moduli.ts';
 import { combine, orderOf, tangentSpace, unipotentTangentSpace } from './tangent.ts';
+
+/** How far beyond the degree known, and beyond the top of a homogeneous local algebra, the quotient may reach. */
+const BEYOND = 6;
 
 export type { GermInput } from './germ-model.ts';
 
@@ -49,7 +53,7 @@ export function analyseGerm<T>(input: GermInput<T>): Germ {
   const order = orderOf(model.h);
   if (order === Infinity) return undetermined(null, `h vanishes up to degree ${input.degree}`, []);
   const step = generatorStep(input);
-  const most = Math.max(input.degree, model.n * (order - 2)) + 2;
+  const most = Math.max(input.degree, model.n * (order - 2)) + BEYOND;
   let found = codimensionOf(model, model.h, step, most);
   const second = germModel(input, 1).model;
   const again = codimensionOf(second, second.h, step, most);
@@ -140,11 +144,8 @@ function generic(model: GermModel, known: number, top: number, step: number, mos
   return codimensionOf(model, h, step, most)?.codimension;
 }
 
-function unfoldingOf(model: GermModel, { space, top }: Codimension): string[] {
-  const echelon = space.echelon.copy();
-  return productsUpTo(model, top)
-    .filter((f) => echelon.addInPlace(valuesOf(model, f.polynomial, space)))
-    .map((f) => f.name);
+function unfoldingOf(model: GermModel, found: Codimension): string[] {
+  return gradedBasis(model, productsUpTo(model, found.top), found).map((f) => f.name);
 }
 
 /** Products of generators of least degree that make the germ finitely determined; else those of least degree outside the tangent space. */

@@ -17,7 +17,9 @@ import {
   type GermInput,
   type GermModel,
   germModel,
+  gradedBasis,
   inCoordinates,
+  type Product,
   productsUpTo,
   valuesOf,
 } from './germ-model.ts';
@@ -137,16 +139,19 @@ function check({ rule, model, allow }: Candidate, own: Codimension, step: number
         if (lowered === undefined || lowered.codimension >= codimension) return undefined;
       }
   const products = productsUpTo(model, top);
-  const inside = (f: ModularPolynomial) => [...f.keys()].every(allow);
-  const chosen = space.echelon.copy();
-  const terms: { name: string; degree: number }[] = [];
-  for (const f of products) if (terms.length < count && inside(f.polynomial) && independent(chosen, f.polynomial)) terms.push(f);
-  const others: { name: string; degree: number }[] = [];
-  for (const f of products) if (independent(chosen, f.polynomial)) others.push(f);
+  const inside = (f: Product) => [...f.polynomial.keys()].every(allow);
+  // the graded basis if it shows the moduli, else any basis that starts with them
+  let basis = gradedBasis(model, products, own);
+  let terms = basis.filter(inside);
+  if (terms.length !== count) {
+    const chosen = space.echelon.copy();
+    terms = products.filter((f) => inside(f) && independent(chosen, f.polynomial));
+    basis = [...products.filter((f) => independent(chosen, f.polynomial)), ...terms].sort((x, y) => x.degree - y.degree);
+  }
   return {
     count,
     rule,
     terms: terms.map((f) => f.name),
-    unfolding: [...others, ...terms].sort((a, b) => a.degree - b.degree).map((f) => f.name),
+    unfolding: basis.map((f) => f.name),
   };
 }
