@@ -19,7 +19,7 @@ export interface PeriodicField {
 /** Real roots of a monic polynomial all of whose roots are real (coefficients from the constant term up); undefined where that fails. */
 function realRoots(coefficients: readonly number[]): number[] | undefined {
   const d = coefficients.length - 1;
-  // simultaneous iteration (Durand 1960, Kerner 1966, from memory)
+  // simultaneous iteration of Durand and Kerner (common practice)
   const z = Array.from({ length: d }, (_, i) => ({ re: Math.cos(0.7 + 2.4 * i) * (1 + i), im: Math.sin(0.7 + 2.4 * i) * (1 + i) }));
   for (let step = 0; step < 500; step++) {
     let moved = 0;

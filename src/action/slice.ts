@@ -1,7 +1,7 @@
 /**
  * The symplectic slice of a continuous symmetry. T is spanned by the velocities ξ·x₀ of the fields at the equilibrium;
- * N = T^ω/(T ∩ T^ω), with the induced S and ω, carries all that the symmetry does not force (J. E. Marsden, Lectures on
- * Mechanics, 1992; place from memory). N is realised inside V by a complement X of T ∩ T^ω in T^ω that Γ leaves
+ * N = T^ω/(T ∩ T^ω), with the induced S and ω, carries all that the symmetry does not force (linear reduction,
+ * common practice). N is realised inside V by a complement X of T ∩ T^ω in T^ω that Γ leaves
  * invariant. Fields that vanish at the equilibrium give no direction; their linear parts join the symmetry.
  */
 import type { Algebraic, RealField } from '../field/index.ts';

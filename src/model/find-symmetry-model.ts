@@ -80,32 +80,26 @@ export function structureOfPolynomial(
     const factors = factorsOf(phase);
     terms.push({ variables: factors.map((f) => f[0]), exponents: factors.map((f) => f[1]), weight: sizes.of(parts)! });
   }
-  const entries = exactSizes(field);
-  const w: FormEntry[] = form.index.flatMap((cols, i) =>
-    cols.flatMap((j, k) => (j > i ? [{ i, j, weight: entries.of(form.value[i]![k]!)! }] : [])),
-  );
   const places = exactSizes(field);
   return {
     count: n,
     terms,
-    form: w,
+    form: formEntries(form, field),
     kinds: kindsOf(n, lift && separable(terms, n / 2)),
     values: point.map((x) => places.of(x)),
   };
 }
 
-/** From a floating Hessian: entries that differ by at most `tolerance` count as equal, those below it as zero; ω canonical. */
-export function structureOfHessian(hessian: ArrayLike<number>, n: number, tolerance: number): SignedStructure {
-  const size = (x: number) => Math.abs(x);
-  const values = Array.from({ length: n * n }, (_, i) => size(hessian[i]!))
-    .filter((x) => x > tolerance)
-    .sort((a, b) => a - b);
-  // a new class where the gap to the value before exceeds the tolerance
+/** Classes of floating sizes: sorted, a new class starts where the gap to the value before exceeds the tolerance; 0 for those below it. */
+function clusters(sizes: readonly number[], tolerance: number): (x: number) => number {
   const starts: number[] = [];
-  values.forEach((x, i) => {
-    if (i === 0 || x - values[i - 1]! > tolerance) starts.push(x);
-  });
-  const classOf = (x: number) => {
+  let last = Number.NEGATIVE_INFINITY;
+  for (const x of sizes.filter((v) => v > tolerance).sort((a, b) => a - b)) {
+    if (x - last > tolerance) starts.push(x);
+    last = x;
+  }
+  return (x) => {
+    if (x <= tolerance) return 0;
     let [low, high] = [0, starts.length];
     while (low < high) {
       const middle = (low + high) >> 1;
@@ -114,17 +108,44 @@ export function structureOfHessian(hessian: ArrayLike<number>, n: number, tolera
     }
     return low;
   };
+}
+
+/** From a floating Hessian, W and the equilibrium: what differs by at most `tolerance` counts as equal. */
+export function structureOfHessian(
+  hessian: ArrayLike<number>,
+  form: SparseMatrix<Algebraic>,
+  point: ArrayLike<number>,
+  field: RealField,
+  tolerance: number,
+  lift: boolean,
+): SignedStructure {
+  const n = form.rows;
+  const entry = (i: number, j: number) => (hessian[i * n + j]! + hessian[j * n + i]!) / 2;
+  const sizes: number[] = [];
+  for (let i = 0; i < n; i++) for (let j = i; j < n; j++) sizes.push(Math.abs(entry(i, j)));
+  const classOf = clusters(sizes, tolerance);
+  const weightOf = (x: number, size: number): Weight | undefined => (size === 0 ? undefined : { size, sign: x < 0 ? -1 : 1 });
   const terms: StructureTerm[] = [];
   for (let i = 0; i < n; i++)
     for (let j = i; j < n; j++) {
-      const x = (hessian[i * n + j]! + hessian[j * n + i]!) / 2;
-      if (size(x) <= tolerance) continue;
-      const weight: Weight = { size: classOf(size(x)), sign: x < 0 ? -1 : 1 };
+      const x = entry(i, j);
+      const weight = weightOf(x, classOf(Math.abs(x)));
+      if (weight === undefined) continue;
       terms.push(i === j ? { variables: [i], exponents: [2], weight } : { variables: [i, j], exponents: [1, 1], weight });
     }
-  const half = n / 2;
-  const form: FormEntry[] = Array.from({ length: half }, (_, i) => ({ i, j: i + half, weight: { size: 1, sign: 1 as const } }));
-  return { count: n, terms, form, kinds: kindsOf(n, separable(terms, half)), values: new Array<undefined>(n).fill(undefined) };
+  const places = clusters(Array.from(point, Math.abs), tolerance);
+  return {
+    count: n,
+    terms,
+    form: formEntries(form, field),
+    kinds: kindsOf(n, lift && separable(terms, n / 2)),
+    values: Array.from(point, (x) => weightOf(x, places(Math.abs(x)))),
+  };
+}
+
+function formEntries(form: SparseMatrix<Algebraic>, field: RealField): FormEntry[] {
+  const sizes = exactSizes(field);
+  return form.index.flatMap((cols, i) => cols.flatMap((j, k) => (j > i ? [{ i, j, weight: sizes.of(form.value[i]![k]!)! }] : [])));
 }
 
 /** A signed permutation as a matrix on the phase space is one entry ±1 in each row; undefined for any other matrix. */

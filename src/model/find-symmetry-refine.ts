@@ -1,6 +1,6 @@
 /**
- * Colour refinement on the literals of a structure (individualisation and refinement: B. D. McKay, Practical graph
- * isomorphism, 1981; place from memory). Cells are split by a hash of the terms that meet newly split cells; a sum over
+ * Colour refinement on the literals of a structure (individualisation and refinement, common practice in
+ * graph isomorphism). Cells are split by a hash of the terms that meet newly split cells; a sum over
  * the signs of the other variables factors, so a term costs one product whatever its degree. Equal structures
  * give equal numbers; a collision of hashes only splits less, since every symmetry is verified.
  */

@@ -1,8 +1,8 @@
 /**
  * All signed permutations that leave a structure invariant, as a base with generators: along one path of
  * individualisations every literal of each cell is tried as the image of the base point, the deepest level first, up to
- * the orbits of what is found already. The order is the product of the lengths of the orbits (C. C. Sims, Computational
- * methods in the study of permutation groups, 1970; place from memory).
+ * the orbits of what is found already. The order is the product of the lengths of the orbits (base and strong
+ * generating set, common practice).
  */
 import { LimitError } from '../errors/index.ts';
 import { type Colouring, individualise, initialColouring } from './find-symmetry-refine.ts';

@@ -2,10 +2,18 @@
 import { groupOfMatrices } from '../action/index.ts';
 import { LimitError, NotAGroupError } from '../errors/index.ts';
 import { type Algebraic, mulAddMod, type RealField } from '../field/index.ts';
-import type { SparseMatrix } from '../linear/index.ts';
+import { largestEntry, type SparseMatrix } from '../linear/index.ts';
 import { signedSymmetries } from '../model/find-symmetry.ts';
-import { asSignedPermutation, permutationMatrix, permutationText, structureOfPolynomial } from '../model/find-symmetry-model.ts';
+import {
+  asSignedPermutation,
+  permutationMatrix,
+  permutationText,
+  structureOfHessian,
+  structureOfPolynomial,
+} from '../model/find-symmetry-model.ts';
+import type { SignedStructure } from '../model/find-symmetry-structure.ts';
 import { energySeries } from '../model/neutral.ts';
+import type { FloatingPrepared } from './floating-prepare.ts';
 import type { Prepared } from './prepare.ts';
 
 /** Groups are joined and compared element by element up to this order. */
@@ -39,6 +47,14 @@ export interface FoundSymmetry {
   readonly words: string;
 }
 
+interface Declared {
+  readonly field: RealField;
+  readonly form: SparseMatrix<Algebraic>;
+  readonly names: readonly string[];
+  readonly generators: Prepared['generators'];
+  readonly order: number;
+}
+
 /** Exact models. Throws LimitError where the search is too long. */
 export function findSymmetry(p: Prepared, declaredOrder: number): FoundSymmetry {
   const { field, form } = p;
@@ -51,58 +67,95 @@ export function findSymmetry(p: Prepared, declaredOrder: number): FoundSymmetry 
     });
   const lift = p.declaration.form === undefined;
   const structure = structureOfPolynomial(series.polynomial, form, point, field, lift);
-  const group = signedSymmetries(structure);
   const { vary } = p.declaration;
   const family = vary.length === 0 ? undefined : energySeries(p.hamiltonian, p.quantities, vary, field);
   const familyOrder =
     family === undefined ? undefined : signedSymmetries(structureOfPolynomial(family.polynomial, form, point, field, lift)).order;
-  const matrices = group.generators.map((g) => permutationMatrix(g, field));
-  const n = form.rows;
-  const generators = group.generators.map(
-    (g, i): FoundGenerator => ({
-      name: `f${i + 1}`,
-      reversing: g.signs[n] === -1,
-      map: permutationText(g, p.quantities.names),
-    }),
+  return compared(
+    { field, form, names: p.quantities.names, generators: p.generators, order: declaredOrder },
+    structure,
+    Number.isFinite(series.known) ? series.known + 1 : 'all',
+    familyOrder === undefined ? undefined : { order: familyOrder, vary },
   );
-  const valid = p.generators.filter((g) => g.reason === undefined && g.sign !== undefined);
+}
+
+/** Floating models: signed permutations that leave S, ω and the equilibrium invariant within the tolerance. */
+export function findFloatingSymmetry(p: FloatingPrepared, declaredOrder: number): FoundSymmetry {
+  const { declaration, quantities } = p.source;
+  const scale = Math.max(largestEntry(p.hessian), Number.MIN_VALUE);
+  const structure = structureOfHessian(
+    p.hessian.data,
+    quantities.form,
+    p.equilibrium.point,
+    quantities.field,
+    p.tolerance * scale,
+    declaration.form === undefined,
+  );
+  return compared(
+    { field: quantities.field, form: quantities.form, names: quantities.names, generators: p.generators, order: declaredOrder },
+    structure,
+    2,
+    undefined,
+  );
+}
+
+function compared(
+  declared: Declared,
+  structure: SignedStructure,
+  degree: number | 'all',
+  family: { readonly order: bigint; readonly vary: readonly string[] } | undefined,
+): FoundSymmetry {
+  const { field } = declared;
+  const n = declared.form.rows;
+  const group = signedSymmetries(structure);
+  const matrices = group.generators.map((g) => permutationMatrix(g, field));
+  const generators = group.generators.map(
+    (g, i): FoundGenerator => ({ name: `f${i + 1}`, reversing: g.signs[n] === -1, map: permutationText(g, declared.names) }),
+  );
+  const valid = declared.generators.filter((g) => g.reason === undefined && g.sign !== undefined);
   const outside = valid.filter((g) => {
     const s = asSignedPermutation(g.matrix, field, g.sign!);
     return s === undefined || !inKinds(structure.kinds, s.images) || !group.index.isSymmetry(s);
   });
   const joined = outside.length === 0 ? group.order : joinedOrder(field, n, [...matrices, ...outside.map((g) => g.matrix)], group.order);
-  const declared =
-    declaredOrder === 0
+  const elements =
+    declared.order === 0
       ? undefined
       : orbitOf(
           field,
           n,
           valid.map((g) => g.matrix),
-          declaredOrder,
+          declared.order,
         );
-  const undeclared = declared === undefined ? generators : generators.filter((_, i) => !declared.has(matrices[i]!));
-  const contains = valid.length === p.generators.length && joined !== undefined;
+  const undeclared = elements === undefined ? generators : generators.filter((_, i) => !elements.has(matrices[i]!));
   const order = joined ?? group.order;
-  const degree = Number.isFinite(series.known) ? series.known + 1 : ('all' as const);
   return {
     order: readable(order),
     reversing: generators.some((g) => g.reversing),
     signedOrder: readable(group.order),
-    ...(familyOrder === undefined ? {} : { familyOrder: readable(familyOrder) }),
+    ...(family === undefined ? {} : { familyOrder: readable(family.order) }),
     generators,
-    declaredOrder,
-    contains,
+    declaredOrder: declared.order,
+    contains: valid.length === declared.generators.length && joined !== undefined,
     undeclared: undeclared.map((g) => g.name),
     outside: outside.map((g) => g.name),
     degree,
     words: [
-      words(order, declaredOrder, undeclared, joined === undefined),
-      ...(familyOrder === undefined || familyOrder === group.order
+      words(order, declared.order, undeclared, joined === undefined),
+      ...(family === undefined || family.order === group.order
         ? []
-        : [`Of the ${group.order} signed permutations ${familyOrder} stay symmetries when ${vary.join(', ')} varies.`]),
+        : [
+            `Of the ${shortly(group.order)} signed permutations ${shortly(family.order)} stay symmetries when ${family.vary.join(', ')} varies.`,
+          ]),
       ...(outside.length === 0 ? [] : [`${outside.map((g) => g.name).join(', ')}: no signed permutation, kept as declared.`]),
     ].join(' '),
   };
+}
+
+/** Long orders by their size. */
+function shortly(x: bigint): string {
+  const text = x.toString();
+  return text.length <= 15 ? text : `${text[0]}.${text.slice(1, 3)}·10^${text.length - 1}`;
 }
 
 const readable = (x: bigint): number | string => (x <= BigInt(Number.MAX_SAFE_INTEGER) ? Number(x) : x.toString());
@@ -167,7 +220,7 @@ const SHOWN_LENGTH = 120;
 
 function words(order: bigint, declaredOrder: number, undeclared: readonly FoundGenerator[], unbounded: boolean): string {
   if (unbounded)
-    return `The signed permutations of the coordinates that leave H invariant form a group of order ${order}; together with the declared generators they generate an infinite group, or one of more than ${JOIN_LIMIT} elements: H may have a continuous symmetry (--neutral find).`;
+    return `The signed permutations of the coordinates that leave H invariant form a group of order ${shortly(order)}; together with the declared generators they generate an infinite group, or one of more than ${JOIN_LIMIT} elements: H may have a continuous symmetry (--neutral find).`;
   if (undeclared.length === 0)
     return `The declared group of order ${declaredOrder} is all there is among signed permutations of the coordinates.`;
   const shown = undeclared.slice(0, 4).map((g) => {
@@ -176,5 +229,5 @@ function words(order: bigint, declaredOrder: number, undeclared: readonly FoundG
     return g.map.length > SHOWN_LENGTH ? `${g.name}, ${g.map.split(', ').length} coordinates moved${time}` : `${g.name}, {${g.map}}${time}`;
   });
   const rest = undeclared.length - shown.length;
-  return `H is invariant under a group of order ${order}; the declared one has order ${declaredOrder}. Not declared: ${shown.join('; ')}${rest > 0 ? `; and ${rest} more` : ''}.`;
+  return `H is invariant under a group of order ${shortly(order)}; the declared one has order ${declaredOrder}. Not declared: ${shown.join('; ')}${rest > 0 ? `; and ${rest} more` : ''}.`;
 }

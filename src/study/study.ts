@@ -47,7 +47,11 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
   const parameters = options.parameters ?? declaration.parameterCount;
   if (!isExact(prepared)) {
     const { floatingAnswer } = await import('./floating.ts');
-    return floatingAnswer(command, prepared, parameters);
+    const answer = floatingAnswer(command, prepared, parameters);
+    if (command !== 'check' || options.find !== true) return answer;
+    const [{ findFloatingSymmetry }, { prepareFloating }] = await Promise.all([import('./find.ts'), import('./floating-prepare.ts')]);
+    const found = findFloatingSymmetry(prepareFloating(prepared), answer.result.group.order);
+    return { ...answer, result: { ...answer.result, found } as StudyResult };
   }
   switch (command) {
     case 'check': {

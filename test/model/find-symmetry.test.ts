@@ -1,10 +1,13 @@
 /** Signed permutations that leave a structure invariant: orders known in closed form, planted groups, exactness. */
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
+import { RealField } from '../../src/field/index.ts';
+import { build, sparse } from '../../src/linear/index.ts';
 import { type SymmetryGroup, signedSymmetries } from '../../src/model/find-symmetry.ts';
 import { structureOfHessian } from '../../src/model/find-symmetry-model.ts';
 import type { SignedStructure, StructureTerm } from '../../src/model/find-symmetry-structure.ts';
 
+const Q = RealField.of();
 const weight = (x: number) => ({ size: Math.abs(x), sign: (x < 0 ? -1 : 1) as 1 | -1 });
 const term = (x: number, ...factors: [number, number][]): StructureTerm => {
   const sorted = factors.sort((a, b) => a[0] - b[0]);
@@ -190,21 +193,28 @@ function components(n: number, edges: readonly (readonly [number, number])[]): n
 }
 
 describe('floating Hessians', () => {
-  it('entries within the tolerance are equal: a ring of five', () => {
-    const n = 5;
-    const s = new Float64Array(4 * n * n);
-    let noise = 1e-12;
-    const jitter = () => {
-      noise = -noise * 0.9;
-      return noise;
-    };
-    for (let i = 0; i < n; i++) {
-      s[i * 2 * n + i] = 2.5 + jitter();
-      const j = (i + 1) % n;
-      s[i * 2 * n + j] = s[j * 2 * n + i] = -0.7 + jitter();
-      s[(n + i) * 2 * n + n + i] = 1 + jitter();
-    }
-    expect(signedSymmetries(structureOfHessian(s, 2 * n, 1e-9)).order).toBe(2n * 2n * 10n);
-    expect(signedSymmetries(structureOfHessian(s, 2 * n, 1e-14)).order).toBeLessThan(40n);
+  const n = 5;
+  const form = sparse(build(Q, 2 * n, 2 * n, (i, j) => (j === i + n ? Q.one : i === j + n ? Q.neg(Q.one) : Q.zero)));
+  const s = new Float64Array(4 * n * n);
+  let noise = 1e-12;
+  const jitter = () => {
+    noise = -noise * 0.9;
+    return noise;
+  };
+  for (let i = 0; i < n; i++) {
+    s[i * 2 * n + i] = 2.5 + jitter();
+    const j = (i + 1) % n;
+    s[i * 2 * n + j] = s[j * 2 * n + i] = -0.7 + jitter();
+    s[(n + i) * 2 * n + n + i] = 1 + jitter();
+  }
+  const order = (point: number[], tolerance: number) => signedSymmetries(structureOfHessian(s, form, point, Q, tolerance, true)).order;
+  it('entries within the tolerance are equal: a ring of five, its sign and time', () => {
+    expect(order(new Array(2 * n).fill(0), 1e-9)).toBe(2n * 2n * 10n);
+    expect(order(new Array(2 * n).fill(0), 1e-14)).toBeLessThan(40n);
+  });
+  it('the equilibrium must stay: equal coordinates keep the ring, one that differs its mirror, and no sign', () => {
+    const point = [0.3, 0.3 + 1e-13, 0.3, 0.3, 0.3, 0, 0, 0, 0, 0];
+    expect(order(point, 1e-9)).toBe(2n * 10n);
+    expect(order([0.4, ...point.slice(1)], 1e-9)).toBe(2n * 2n);
   });
 });
