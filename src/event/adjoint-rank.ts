@@ -5,15 +5,12 @@
  * parameters, 1971, section 3).
  * @source Arnold1971
  */
+import type { CompressedElement } from '../action/index.ts';
 import type { Algebraic, Reduction } from '../field/index.ts';
 import { type Matrix, type ModularMatrix, modularKernel, modularMultiply, modularRank, modularTranspose } from '../linear/index.ts';
 
 /** An element of the compressed group algebra on a multiplicity space: h(g), h(g⁻¹) and σ(g). */
-export interface ClassOperator {
-  readonly matrix: Matrix<Algebraic>;
-  readonly inverse: Matrix<Algebraic>;
-  readonly sign: 1 | -1;
-}
+export type ClassOperator = CompressedElement;
 
 /** dim P, dim 𝔤₀ and the orbit codimension. */
 export interface AdjointRank {

@@ -126,7 +126,7 @@ function symbolicHead(model: SymbolicModel, action: Action): Structure['head'] {
   const kind = declaration.energy.kind;
   const atom = hessian?.atoms[0];
   const point = quantities.names.map((n, i) => [n, quantities.field.format(quantities.point[i]!)] as const);
-  const summary = modelSummary({ declaration, quantities, hamiltonian: model.hamiltonian, because: '' });
+  const summary = modelSummary({ declaration, quantities, hamiltonian: model.hamiltonian });
   return {
     schema: 'symcodim/1',
     model: { ...summary, parameters: { ...summary.parameters, ...Object.fromEntries(model.dependent) } },

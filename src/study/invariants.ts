@@ -5,7 +5,16 @@
 import { embedSparse, makeAction } from '../action/index.ts';
 import { InputError, LimitError } from '../errors/index.ts';
 import type { Algebraic } from '../field/index.ts';
-import { type EquivariantSet, equivariants, type GeneratorSet, linearAction, minimalGenerators, molien, relations, rewriteInInvariants } from '../invariant/index.ts';
+import {
+  type EquivariantSet,
+  equivariants,
+  type GeneratorSet,
+  linearAction,
+  minimalGenerators,
+  molien,
+  relations,
+  rewriteInInvariants,
+} from '../invariant/index.ts';
 import { dense } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import { energyExpression } from '../model/energy.ts';
@@ -14,6 +23,7 @@ import { polynomialDegree } from '../model/polynomial-energy.ts';
 import { type Quantities, readQuantities } from '../model/quantities.ts';
 import type { Polynomial, PolynomialRing } from '../polynomial/index.ts';
 import type { InvariantsResult } from './result.ts';
+import { modelSummary } from './summary.ts';
 
 /** Degree of H that is no polynomial, where none is asked for. */
 export const DEFAULT_DEGREE = 4;
@@ -61,18 +71,7 @@ export function invariantsResult(declaration: Declaration, degree?: number): Inv
   return {
     schema: 'symcodim/1',
     command: 'invariants',
-    model: {
-      title: declaration.title,
-      degreesOfFreedom: declaration.coordinates.length,
-      coordinates: declaration.coordinates,
-      momenta: declaration.momenta,
-      parameters: Object.fromEntries([
-        ...[...declaration.parameters.keys()].map((k) => [k, quantities.field.format(quantities.values.get(k)!)] as const),
-        ...declaration.unset.map((k) => [k, null] as const),
-      ]),
-      vary: declaration.vary,
-      ...(declaration.energy.kind === 'hamiltonian' || declaration.energy.kind === 'quadratic' ? { hamiltonian: declaration.energy.text.replace(/\s+/g, ' ').trim() } : {}),
-    },
+    model: modelSummary({ declaration, quantities, hamiltonian }),
     arithmetic: expansion !== undefined && expansion.atoms.length > 0 ? 'floating' : 'exact',
     ...(expansion !== undefined && expansion.atoms.length > 0 ? { floatingBecause: expansion.atoms[0]! } : {}),
     field: field.name,
@@ -80,7 +79,12 @@ export function invariantsResult(declaration: Declaration, degree?: number): Inv
     equilibrium: { holds: expansion?.linearPart === undefined, gradient: expansion?.linearPart ?? '0' },
     symmetry: {
       holds: expansion === undefined || expansion.invariant(set),
-      generators: action.generators.map((g) => ({ name: g.name, reversing: g.sign === -1, symplectic: true, invariant: expansion === undefined || expansion.invariant(set) })),
+      generators: action.generators.map((g) => ({
+        name: g.name,
+        reversing: g.sign === -1,
+        symplectic: true,
+        invariant: expansion === undefined || expansion.invariant(set),
+      })),
     },
     molien: { numerator: series.numerator, denominator: series.denominator, series: series.series },
     equivariants: {
@@ -125,7 +129,13 @@ function symbolicExpansion(h: Expression, quantities: Quantities, declaration: D
   const d = degree ?? own ?? DEFAULT_DEGREE;
   const keep = [...declaration.parameters.keys(), ...declaration.unset];
   const moved = quantities.pointExpressions.size > 0;
-  const request = { names: quantities.names, point: quantities.pointExpressions, parameters: quantities.valueExpressions, degree: d, field: quantities.field };
+  const request = {
+    names: quantities.names,
+    point: quantities.pointExpressions,
+    parameters: quantities.valueExpressions,
+    degree: d,
+    field: quantities.field,
+  };
   // an equilibrium that was declared holds at the declared values, so these are put in
   const t = taylor(h, moved ? { ...request, keep: declaration.unset } : { ...request, keep });
   if (t.kind === 'exact') return expansionOf(t.ring, t.polynomial, t.field, d, [], (a) => a);
@@ -133,7 +143,14 @@ function symbolicExpansion(h: Expression, quantities: Quantities, declaration: D
   return expansionOf(t.ring, t.polynomial, t.field, d, t.atoms, (a: Algebraic) => symbols.fromConstant(a));
 }
 
-function expansionOf<C>(ring: PolynomialRing<C>, polynomial: Polynomial<C>, field: Quantities['field'], degree: number, atoms: readonly string[], embed: (a: Algebraic) => C): Expansion {
+function expansionOf<C>(
+  ring: PolynomialRing<C>,
+  polynomial: Polynomial<C>,
+  field: Quantities['field'],
+  degree: number,
+  atoms: readonly string[],
+  embed: (a: Algebraic) => C,
+): Expansion {
   let done: { set: GeneratorSet; form: ReturnType<typeof rewriteInInvariants<C>> } | undefined;
   const form = (set: GeneratorSet) => {
     if (done?.set !== set) done = { set, form: rewriteInInvariants(polynomial, ring, set, embed) };

@@ -255,8 +255,15 @@ export function actionOf(p: Prepared): Action {
   );
 }
 
+/** What a summary needs to know of a model, exact or not. */
+export interface Stated {
+  readonly declaration: Declaration;
+  readonly quantities: Quantities;
+  readonly hamiltonian: Expression | undefined;
+}
+
 /** H as a person would recognise it. */
-export function energyText(p: Prepared | NotExact): string | undefined {
+export function energyText(p: Stated): string | undefined {
   const { energy } = p.declaration;
   if (energy.kind === 'hamiltonian' || energy.kind === 'quadratic') return energy.text.replace(/\s+/g, ' ').trim();
   return p.hamiltonian === undefined || energy.kind === 'network' ? undefined : formatExpression(p.hamiltonian);

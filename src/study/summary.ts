@@ -2,14 +2,14 @@
 
 import type { Action, Components } from '../action/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
-import { energyText, type NotExact, type Prepared } from './prepare.ts';
+import { energyText, type Prepared, type Stated } from './prepare.ts';
 import type { ComponentSummary, GeneratorSummary, ModelSummary, StudyResult } from './result.ts';
 
 /** Where a result can hurt somebody: structures, rotors, mechanical models. */
 export const CAUTION =
   'A linear or local analysis is no proof of safety: it says nothing about large motions, damping, imperfections or loads that were not modelled. Local codes and licensed practice decide.';
 
-export function modelSummary(p: Prepared | NotExact): ModelSummary {
+export function modelSummary(p: Stated): ModelSummary {
   const { declaration, quantities } = p;
   const text = energyText(p);
   return {
