@@ -51,13 +51,19 @@ export function tangentSpace(c: Coinvariants, h: ModularPolynomial, degree: numb
   const echelon = start ?? new GrowingEchelon(width, p);
   const partial = Array.from({ length: n }, (_, i) => derivativeOf(h, i, p));
   const least = Math.min(...partial.map(orderOf));
-  for (let e = order; e + least <= degree; e++)
-    for (const shift of monomialsOfDegree(n, e))
+  // highest shifts first: their products lie in the highest degrees, and once these are full the others add nothing
+  let full = width;
+  for (let e = degree - least; e >= order; e--) {
+    const from = offsets[e + least]!;
+    search: for (const shift of monomialsOfDegree(n, e))
       for (const g of partial) {
+        while (full > from && echelon.hasPivot(full - 1)) full--;
+        if (full <= from) break search;
         const v = new Int32Array(width);
         c.addValuesInPlace(v, offsets, g, shift, degree);
         echelon.addInPlace(v);
       }
+  }
   return { echelon, offsets, degree };
 }
 
