@@ -1,0 +1,435 @@
+/**
+ * A model along one parameter: its action, its bases, and S and ω as functions of the parameter. S is exact where it
+ * is a rational function of the parameter at an equilibrium that is declared for all its values; else it is evaluated
+ * in double precision.
+ */
+import {
+  type Action,
+  type AdaptedBlock,
+  adaptedBlocks,
+  type Components,
+  componentsOf,
+  componentsOfBlock,
+  embedAction,
+  embedSparse,
+  type FlowBlock,
+  flowBlocks,
+  makeAction,
+  restrictForm,
+  symplecticPart,
+  withCharacters,
+} from '../action/index.ts';
+import { InputError, NotInvariantError, UsageError } from '../errors/index.ts';
+import { type Algebraic, type Rational, RealField, rational, rationals } from '../field/index.ts';
+import {
+  type Matrix,
+  type NumberMatrix,
+  numberMatrix,
+  type SparseMatrix,
+  sparseCongruence,
+  sparseEquals,
+  sparseFromMaps,
+  toNumberMatrix,
+} from '../linear/index.ts';
+import type { Declaration } from '../model/declaration/index.ts';
+import { energyExpression } from '../model/energy.ts';
+import {
+  compileNumeric,
+  type Expression,
+  exactValue,
+  parseExpression,
+  resolveDefinitions,
+  substituteSymbols,
+  symbolsOf,
+  Transcendental,
+  taylor,
+  withField,
+} from '../model/expression/index.ts';
+import { type Quantities, rationalNear, readQuantities } from '../model/quantities.ts';
+import { factorsOf, type Polynomial, type PolynomialRing, type Univariate, UnivariateRing } from '../polynomial/index.ts';
+import { fixedSpace } from './codim.ts';
+
+/** Values of the parameter at which the curves of a picture are computed, where nothing else is said. */
+export const DEFAULT_STEPS = 200;
+
+/** Where a parameter goes. */
+export interface Range {
+  readonly parameter: string;
+  readonly from: number;
+  readonly to: number;
+  /** The ends exactly, or the doubles as fractions. */
+  readonly low: Rational;
+  readonly high: Rational;
+  readonly steps: number;
+}
+
+/** S(μ) = Σ μᵏ coefficients[k] / denominator(μ), exactly. */
+export interface RationalFamily {
+  readonly coefficients: readonly SparseMatrix<Algebraic>[];
+  readonly denominator: Univariate<Algebraic>;
+}
+
+export interface SweepFamily {
+  readonly declaration: Declaration;
+  readonly range: Range;
+  /** All ranges of the declaration that have been read, the one above first. */
+  readonly ranges: readonly Range[];
+  readonly field: RealField;
+  readonly action: Action;
+  readonly components: Components;
+  readonly adapted: readonly AdaptedBlock[];
+  readonly flow: readonly FlowBlock[];
+  /** Labels of the components in each flow block. */
+  readonly flowLabels: readonly (readonly string[])[];
+  /** Coordinates, then momenta. */
+  readonly names: readonly string[];
+  /** H with all parameters but those of the ranges replaced. */
+  readonly hamiltonian: Expression;
+  /** Entries of W as functions of the parameter, or undefined where it is constant. */
+  readonly formAt: (mu: number) => NumberMatrix;
+  /** The declared equilibrium as a function of the parameter. */
+  readonly pointAt: (mu: number) => Float64Array;
+  /** Its coordinates as expressions in the parameters of the ranges; undefined is 0. */
+  readonly placed: readonly (Expression | undefined)[];
+  /** Columns that span Fix(Γ). */
+  readonly fixed: Matrix<Algebraic>;
+  /** The value of the parameter in the declaration, or the lower end. */
+  readonly declared: number;
+  /** The same exactly, where the model gives it a value that has an exact form. */
+  readonly declaredValue: { readonly field: RealField; readonly value: Algebraic } | undefined;
+  /** Values of the parameters of the other ranges, held while the first is swept. */
+  readonly held: readonly number[];
+  readonly rational: RationalFamily | undefined;
+  /** Why S is not exact, where it is not. */
+  readonly because: string | undefined;
+}
+
+/** The same declaration with another value of a parameter. */
+export function declarationAt(declaration: Declaration, values: ReadonlyMap<string, string>): Declaration {
+  return {
+    ...declaration,
+    parameters: new Map([...declaration.parameters, ...values]),
+    unset: declaration.unset.filter((name) => !values.has(name)),
+  };
+}
+
+/** Reads the ranges of a declaration. Throws UsageError where there is none, InputError for what cannot be read. */
+export function readRanges(declaration: Declaration): Range[] {
+  if (declaration.range.size === 0) {
+    const name = declaration.vary[0] ?? [...declaration.parameters.keys(), ...declaration.unset][0];
+    throw new UsageError('sweep needs a range for a parameter', {
+      key: '--range',
+      expected: 'NAME=FROM:TO, or range in the model file',
+      next: name === undefined ? 'the model has no parameter' : `add --range ${name}=-1:1`,
+    });
+  }
+  const ranges = [...declaration.range].map(([parameter, { from, to, steps }]): Range => {
+    const end = (text: string, side: string) => readEnd(declaration, parameter, text, side);
+    const [low, high] = [end(from, 'from'), end(to, 'to')];
+    if (rationals.compare(low, high) >= 0)
+      throw new InputError(`the range of ${parameter} is empty`, {
+        file: declaration.source,
+        key: `range.${parameter}`,
+        value: `${from}, ${to}`,
+        expected: 'a lower end before a higher one',
+      });
+    return { parameter, from: rationals.toNumber(low), to: rationals.toNumber(high), low, high, steps: steps ?? DEFAULT_STEPS };
+  });
+  const first = ranges.findIndex((r) => declaration.vary.includes(r.parameter));
+  return first <= 0 ? ranges : [ranges[first]!, ...ranges.filter((_, i) => i !== first)];
+}
+
+function readEnd(declaration: Declaration, parameter: string, text: string, side: string): Rational {
+  const where = { file: declaration.source, key: `range.${parameter}.${side}` };
+  const e = parseExpression(text, where);
+  try {
+    const { field, result } = withField((f) => exactValue(e, undefined, f));
+    if (result.c.every((c, i) => i === 0 || c === 0n)) return rational(result.c[0]!, result.d);
+    const near = rationalNear(field.toNumber(result), RealField.of());
+    return rational(near.c[0]!, near.d);
+  } catch (error) {
+    if (!(error instanceof Transcendental)) throw error;
+    const near = rationalNear(compileNumeric(e, [])([]), RealField.of());
+    return rational(near.c[0]!, near.d);
+  }
+}
+
+/** Reads a model as a family. Throws the errors of `check` where it is not what it claims. */
+export function sweepFamily(declaration: Declaration): SweepFamily {
+  const ranges = readRanges(declaration);
+  const range = ranges[0]!;
+  const swept = new Map(
+    ranges.filter((r) => !declaration.parameters.has(r.parameter)).map((r) => [r.parameter, formatRational(r.low)] as const),
+  );
+  const at = declarationAt(declaration, swept);
+  const missing = at.unset[0];
+  if (missing !== undefined)
+    throw new InputError(`the parameter ${missing} has no value`, {
+      file: declaration.source,
+      key: `parameters.${missing}`,
+      value: missing,
+      expected: 'a value for every parameter but the one that is swept',
+      next: `give it one in the file or with --set ${missing}=…`,
+    });
+  const quantities = readQuantities(at);
+  const h = energyExpression(at, quantities.definitions);
+  if (h === undefined)
+    throw new InputError('the model has no Hamiltonian', {
+      file: declaration.source,
+      key: 'hamiltonian',
+      expected: 'hamiltonian, quadratic, mass with stiffness, or network',
+    });
+  const names = ranges.map((r) => r.parameter);
+  const free = new Set(names);
+  const values = new Map([...quantities.valueExpressions].filter(([k]) => !free.has(k)));
+  const others = resolveDefinitions(values);
+  const hamiltonian = substituteSymbols(h, others);
+  const used = symbolsOf(hamiltonian);
+  const placed = new Map([...quantities.pointExpressions].map(([k, e]) => [k, substituteSymbols(e, others)]));
+  const inForm = formExpressions(at, quantities, others);
+  for (const name of names)
+    if (!used.has(name) && !inForm.some((e) => symbolsOf(e).has(name)) && ![...placed.values()].some((e) => symbolsOf(e).has(name)))
+      throw new InputError(`the Hamiltonian does not depend on ${name}`, {
+        file: declaration.source,
+        key: `range.${name}`,
+        value: name,
+        expected: 'a parameter that the model uses',
+      });
+  const small = withCharacters(
+    makeAction(
+      quantities.field,
+      quantities.form,
+      quantities.generators.map((g) => ({ name: g.name, matrix: g.matrix })),
+      at.orderLimit,
+    ),
+  );
+  requireDeclaredSigns(quantities, small, at);
+  const exact = rationalFamily(h, quantities, range.parameter, at);
+  const field = exact.kind === 'exact' ? RealField.join(small.field, exact.field) : small.field;
+  const action = embedAction(small, field);
+  const components = componentsOf(action);
+  const symplectic = symplecticPart(action);
+  const flow = flowBlocks(action, symplectic);
+  const family = exact.kind === 'exact' ? exact.embed(field) : undefined;
+  if (family !== undefined) requireInvariant(family, action, at);
+  return {
+    declaration: at,
+    range,
+    ranges,
+    field,
+    action,
+    components,
+    adapted: adaptedBlocks(action, components),
+    flow,
+    flowLabels: flow.map((b) => componentsOfBlock(action, components, symplectic.part, b.irreducible).map((c) => c.label)),
+    names: quantities.names,
+    hamiltonian,
+    formAt: formFunction(inForm, quantities, ranges),
+    pointAt: pointFunction(placed, quantities, ranges),
+    placed: quantities.names.map((name) => placed.get(name)),
+    fixed: fixedSpace(action, components),
+    declared: quantities.field.toNumber(quantities.values.get(range.parameter)!),
+    declaredValue:
+      quantities.inexact === undefined && declaration.parameters.has(range.parameter)
+        ? { field: quantities.field, value: quantities.values.get(range.parameter)! }
+        : undefined,
+    held: held(quantities, ranges),
+    rational: family,
+    because: exact.kind === 'exact' ? undefined : exact.because,
+  };
+}
+
+export function formatRational(x: Rational): string {
+  return x.d === 1n ? `${x.n}` : `${x.n}/${x.d}`;
+}
+
+function requireDeclaredSigns(quantities: Quantities, action: Action, declaration: Declaration): void {
+  quantities.generators.forEach((g, i) => {
+    const sign = action.generators[i]!.sign;
+    if (g.declared !== undefined && g.declared !== (sign === -1))
+      throw new InputError(
+        `${g.name} is declared ${g.declared ? 'to reverse time' : 'not to reverse time'}, but ρᵀWρ = ${sign === 1 ? 'W' : '−W'}`,
+        {
+          file: declaration.source,
+          key: g.where,
+          value: g.name,
+          expected: g.declared ? 'ρᵀWρ = −W' : 'ρᵀWρ = W',
+        },
+      );
+  });
+}
+
+function requireInvariant(family: RationalFamily, action: Action, declaration: Declaration): void {
+  for (const g of action.generators)
+    for (const s of family.coefficients)
+      if (!sparseEquals(sparseCongruence(g.matrix, s), s))
+        throw new NotInvariantError(`the quadratic part of H is not invariant under ${g.name} for all values of the parameter`, {
+          file: declaration.source,
+          value: g.name,
+          expected: 'a generator that leaves H invariant along the whole range',
+          next: 'see all of it with symcodim check',
+        });
+}
+
+type ExactFamily =
+  | { readonly kind: 'exact'; readonly field: RealField; readonly embed: (to: RealField) => RationalFamily }
+  | { readonly kind: 'numeric'; readonly because: string };
+
+/** S(μ) from one expansion with the parameter kept as a symbol; numeric where a term is transcendental or the point moves off. */
+function rationalFamily(h: Expression, quantities: Quantities, parameter: string, declaration: Declaration): ExactFamily {
+  if (declaration.numbers === 'floating') return { kind: 'numeric', because: 'floating numbers were asked for' };
+  if (quantities.inexact !== undefined) return { kind: 'numeric', because: quantities.inexact };
+  const n = quantities.names.length;
+  const expressions = new Map([...quantities.valueExpressions].filter(([k]) => k !== parameter));
+  let t: ReturnType<typeof taylor>;
+  try {
+    t = taylor(h, {
+      names: quantities.names,
+      point: quantities.pointExpressions,
+      parameters: expressions,
+      keep: [parameter],
+      degree: 2,
+      field: quantities.field,
+    });
+  } catch (error) {
+    // a function that has no rational expansion at a general value of the parameter, such as sqrt(mu)
+    if (!(error instanceof InputError)) throw error;
+    return { kind: 'numeric', because: error.message };
+  }
+  const source = t;
+  if (source.kind === 'symbolic' && source.atoms.length > 0) return { kind: 'numeric', because: source.atoms[0]! };
+  const field = source.field;
+  const ring = new UnivariateRing<Algebraic>(field);
+  const index = source.kind === 'symbolic' ? source.constants.field.ring.indexOf(parameter) : -1;
+  const univariate = (p: Polynomial<Algebraic>, of: PolynomialRing<Algebraic>): Univariate<Algebraic> => {
+    const out: Algebraic[] = [];
+    for (const [m, c] of of.terms(p)) {
+      const e = factorsOf(m).find(([v]) => v === index)?.[1] ?? 0;
+      while (out.length <= e) out.push(field.zero);
+      out[e] = field.add(out[e]!, c);
+    }
+    return ring.trim(out);
+  };
+  const entries: { i: number; j: number; numerator: Univariate<Algebraic>; denominator: Univariate<Algebraic> }[] = [];
+  let moves = false;
+  source.polynomial.monomials.forEach((m, k) => {
+    const flat = factorsOf(m).flatMap(([v, e]) => new Array<number>(e).fill(v));
+    if (flat.length === 1) moves = true;
+    if (flat.length !== 2) return;
+    const [numerator, denominator] =
+      source.kind === 'symbolic'
+        ? [
+            univariate(source.polynomial.coefficients[k]!.numerator, source.constants.field.ring),
+            univariate(source.polynomial.coefficients[k]!.denominator, source.constants.field.ring),
+          ]
+        : [[source.polynomial.coefficients[k]!], [field.one]];
+    const [i, j] = flat as [number, number];
+    const own = i === j ? ring.scale(numerator, field.fromInteger(2)) : numerator;
+    entries.push({ i, j, numerator: own, denominator });
+    if (i !== j) entries.push({ i: j, j: i, numerator: own, denominator });
+  });
+  if (moves) return { kind: 'numeric', because: `the equilibrium moves with ${parameter}` };
+  let common: Univariate<Algebraic> = [field.one];
+  for (const { denominator } of entries)
+    if (denominator.length > 1) common = ring.mul(common, ring.divide(denominator, ring.gcd(common, denominator)).quotient);
+  const maps: Map<number, Algebraic>[][] = [];
+  for (const { i, j, numerator, denominator } of entries)
+    ring.mul(numerator, ring.divide(common, denominator).quotient).forEach((c, k) => {
+      while (maps.length <= k) maps.push(Array.from({ length: n }, () => new Map<number, Algebraic>()));
+      maps[k]![i]!.set(j, c);
+    });
+  if (maps.length === 0) maps.push(Array.from({ length: n }, () => new Map<number, Algebraic>()));
+  const coefficients = maps.map((rows) => sparseFromMaps(field, n, rows));
+  return {
+    kind: 'exact',
+    field,
+    embed: (to) => ({
+      coefficients: coefficients.map((s) => embedSparse(s, field, to)),
+      denominator: common.map((c) => to.embed(field, c)),
+    }),
+  };
+}
+
+function formExpressions(declaration: Declaration, quantities: Quantities, others: ReadonlyMap<string, Expression>): Expression[] {
+  if (declaration.form === undefined) return [];
+  return declaration.form.flatMap((row, i) =>
+    row.map((text, j) =>
+      substituteSymbols(
+        substituteSymbols(
+          parseExpression(text, { file: declaration.source, key: `symplectic[${i + 1}][${j + 1}]` }),
+          quantities.definitions,
+        ),
+        others,
+      ),
+    ),
+  );
+}
+
+/** Parameters beyond the first are held at their declared values. */
+function held(quantities: Quantities, ranges: readonly Range[]): number[] {
+  return ranges.slice(1).map((r) => quantities.field.toNumber(quantities.values.get(r.parameter)!));
+}
+
+function formFunction(entries: readonly Expression[], quantities: Quantities, ranges: readonly Range[]): (mu: number) => NumberMatrix {
+  const names = ranges.map((r) => r.parameter);
+  const n = quantities.names.length;
+  if (!entries.some((e) => names.some((name) => symbolsOf(e).has(name)))) {
+    const rows = new Float64Array(n * n);
+    quantities.form.index.forEach((cols, i) => {
+      cols.forEach((j, k) => {
+        rows[i * n + j] = quantities.field.toNumber(quantities.form.value[i]![k]!);
+      });
+    });
+    const constant = numberMatrix(n, n, rows);
+    return () => constant;
+  }
+  const compiled = entries.map((e) => compileNumeric(e, names));
+  const rest = held(quantities, ranges);
+  return (mu) =>
+    numberMatrix(
+      n,
+      n,
+      compiled.map((f) => f([mu, ...rest])),
+    );
+}
+
+function pointFunction(
+  placed: ReadonlyMap<string, Expression>,
+  quantities: Quantities,
+  ranges: readonly Range[],
+): (mu: number) => Float64Array {
+  const names = ranges.map((r) => r.parameter);
+  const compiled = quantities.names.map((name) => {
+    const e = placed.get(name);
+    return e === undefined ? () => 0 : compileNumeric(e, names);
+  });
+  const rest = held(quantities, ranges);
+  return (mu) => Float64Array.from(compiled, (f) => f([mu, ...rest]));
+}
+
+/** S_k restricted to a basis, exactly. */
+export function restrictedCoefficients(family: RationalFamily, basis: Matrix<Algebraic>): Matrix<Algebraic>[] {
+  return family.coefficients.map((s) => restrictForm(basis, s));
+}
+
+/** Values of a rational family of small blocks in doubles. */
+export function blockFunction(
+  coefficients: readonly Matrix<Algebraic>[],
+  denominator: Univariate<Algebraic>,
+  field: RealField,
+): (mu: number) => NumberMatrix {
+  const parts = coefficients.map((m) => toNumberMatrix(m, field).data);
+  const below = denominator.map((c) => field.toNumber(c));
+  const { rows, cols } = coefficients[0]!;
+  const horner = (list: readonly number[], mu: number) => list.reduceRight((s, c) => s * mu + c, 0);
+  return (mu) => {
+    const d = horner(below, mu);
+    const data = new Float64Array(rows * cols);
+    for (let i = 0; i < data.length; i++) {
+      let s = 0;
+      for (let k = parts.length - 1; k >= 0; k--) s = s * mu + parts[k]![i]!;
+      data[i] = s / d;
+    }
+    return { rows, cols, data };
+  };
+}
