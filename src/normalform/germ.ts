@@ -4,6 +4,7 @@
  * 1985; M. Golubitsky, I. Stewart, D. Schaeffer, Singularities and Groups in Bifurcation Theory II, 1988, ch. XV; places from
  * memory). Ranks are taken modulo a prime and confirmed modulo a second one.
  */
+import { LimitError } from '../errors/index.ts';
 import { mulMod } from '../field/index.ts';
 import { germConditions } from './germ-conditions.ts';
 import {
@@ -47,8 +48,21 @@ export interface Germ {
   readonly because: string;
 }
 
-/** Analyses a germ. Throws ShapeError if the fields do not fit, LimitError if too many terms are needed. */
+/** Analyses a germ; one that needs too many terms is not determined. Throws ShapeError if the fields do not fit. */
 export function analyseGerm<T>(input: GermInput<T>): Germ {
+  try {
+    return analyse(input);
+  } catch (error) {
+    if (!(error instanceof LimitError)) throw error;
+    return undetermined(
+      orderOf(germModel(input, 0).model.h),
+      `not decided: ${error.message}${error.culprit.value === undefined ? '' : ` (${error.culprit.value})`}`,
+      [],
+    );
+  }
+}
+
+function analyse<T>(input: GermInput<T>): Germ {
   let { model } = germModel(input, 0);
   const order = orderOf(model.h);
   if (order === Infinity) return undetermined(null, `h vanishes up to degree ${input.degree}`, []);

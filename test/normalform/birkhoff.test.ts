@@ -3,6 +3,7 @@ import { InputError } from '../../src/errors/index.ts';
 import { type Algebraic, RealField } from '../../src/field/index.ts';
 import type { Matrix } from '../../src/linear/index.ts';
 import { actionPart, type BirkhoffForm, birkhoffNormalForm, bracket, inPhaseSpace, twistOf } from '../../src/normalform/birkhoff.ts';
+import { birkhoffSummary } from '../../src/normalform/birkhoff-text.ts';
 import { diagonalise } from '../../src/normalform/elliptic.ts';
 import { type Gaussian, GaussianField } from '../../src/normalform/gaussian-field.ts';
 import { resonancesOf, resonantMonomials, torusInvariants } from '../../src/normalform/resonance.ts';
@@ -176,6 +177,32 @@ describe('Elliptic equilibria', () => {
     // det [[3, 0, 1], [0, 3/4, 2], [1, 2, 0]] = -12 - 3/4
     const F = b.field as RealField;
     expect([F.format(twistOf(b).kolmogorov), F.format(twistOf(b).arnold)]).toEqual(['9/4', '-51/4']);
+  });
+  it('summary: frequencies, resonances, expression and twist of Hénon and Heiles, and of a 1:2 resonance', () => {
+    const [q1, q2] = [plane.variable(0), plane.variable(1)];
+    const h2 = plane.scale(plane.sum([0, 1, 2, 3].map((i) => plane.power(plane.variable(i), 2))), half);
+    const heiles = plane.sum([h2, plane.mul(plane.mul(q1, q1), q2), plane.scale(plane.power(q2, 3), Q.fromRational(-1n, 3n))]);
+    const s = birkhoffSummary(birkhoffNormalForm({ ring: plane, hamiltonian: heiles, form: canonical(Q, 2), degree: 4 }), plane.variables);
+    expect(s.frequencies).toEqual([
+      { value: 1, exact: '1' },
+      { value: 1, exact: '1' },
+    ]);
+    expect(s.resonances.map((r) => r.generator)).toEqual(['z1*conj(z2)']);
+    expect(s.modes[0]).toEqual({ real: 'q1', imaginary: 'p1', bracket: '1' });
+    // N = I1 + I2, L^2 = 4 I1 I2 - (Re z1 conj z2)^2 … = 2 I1 I2 - Re (z1 conj z2)^2 / 2
+    expect(s.actions).toBe('I1 + I2 - 5*I1^2/12 + I1*I2/3 - 5*I2^2/12');
+    expect(s.expression).toContain('Re(z1^2*conj(z2)^2)');
+    const resonant = plane.sum([
+      plane.scale(plane.add(plane.power(q1, 2), plane.power(plane.variable(2), 2)), half),
+      plane.add(plane.power(q2, 2), plane.power(plane.variable(3), 2)),
+      plane.mul(plane.mul(q1, q1), q2),
+    ]);
+    const t = birkhoffSummary(
+      birkhoffNormalForm({ ring: plane, hamiltonian: resonant, form: canonical(Q, 2), degree: 3 }),
+      plane.variables,
+    );
+    expect(t.expression).toBe('I1 + 2*I2 + Re(z1^2*conj(z2))/4');
+    expect([t.twist, t.arithmetic]).toEqual([null, 'exact']);
   });
   it('a form that is not canonical: W = 2J halves the frequency', () => {
     const w = { ...canonical(Q, 1), data: canonical(Q, 1).data.map((x) => Q.mul(Q.fromInteger(2), x)) };

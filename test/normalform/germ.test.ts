@@ -5,7 +5,7 @@ import { minimalGenerators } from '../../src/invariant/generators.ts';
 import type { LinearAction } from '../../src/invariant/linear-action.ts';
 import { analyseGerm, type Germ } from '../../src/normalform/germ.ts';
 import { type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../../src/polynomial/index.ts';
-import { cyclic, dihedral, octahedral, signs, tetrahedralFull, trivial } from './actions.ts';
+import { cyclic, dihedral, octahedral, signs, symmetric, tetrahedralFull, trivial } from './actions.ts';
 
 type Ring = PolynomialRing<Algebraic>;
 type Make = (r: Ring) => Polynomial<Algebraic>;
@@ -177,6 +177,15 @@ describe('Golubitsky, Stewart, Schaeffer 1988: germs with symmetry (places from 
     expect(
       conditions(tetrahedralFull(), (r, f) => r.add(r.scale(cage(r), f.symbol('a')), r.scale(r.power(I(r), 2), f.symbol('b'))), 4),
     ).toEqual([2, 1, ['a', 'b']]);
+  });
+  it('a germ that needs too many terms is left undecided, with the reason', () => {
+    const action = symmetric(6);
+    const ring = new PolynomialRing<Algebraic>(action.field as RealField, action.names);
+    const generators = minimalGenerators(action);
+    const cubic = generators.generators.find((g) => g.degree === 3)!.polynomial;
+    const g = analyseGerm({ action, generators, ring, h: cubic, degree: 3 });
+    expect([g.leadingDegree, g.codimension]).toEqual([3, null]);
+    expect(g.because).toMatch(/more terms than are looked at/);
   });
   it('refuses coefficients of another field', () => {
     const action = dihedral(3);
