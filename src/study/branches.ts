@@ -113,13 +113,13 @@ export async function branchesResult(study: LinearStudy, degree?: number): Promi
 }
 
 /** The first varied parameter that acts on the kernel at first order. */
-function chosenParameter(reduction: Reduction): number {
+function chosenParameter(reduction: Reduction<Algebraic>): number {
   for (let j = 0; j < reduction.parameters.length; j++) if (unfoldingBy(reduction, j).monomials.length > 0) return j;
   return 0;
 }
 
 /** ∂h/∂μ_j at the event, as a polynomial in the kernel coordinates. */
-function unfoldingBy(reduction: Reduction, j: number): Polynomial<Algebraic> {
+function unfoldingBy(reduction: Reduction<Algebraic>, j: number): Polynomial<Algebraic> {
   const k = reduction.ring.variables.length;
   return reduction.ring.fromTerms(
     reduction.reduced.h.monomials.flatMap((m, i) => {
@@ -133,7 +133,7 @@ function unfoldingBy(reduction: Reduction, j: number): Polynomial<Algebraic> {
   );
 }
 
-function withoutLow({ ring, germ }: Reduction): Polynomial<Algebraic> {
+function withoutLow({ ring, germ }: Reduction<Algebraic>): Polynomial<Algebraic> {
   return ring.sub(germ, ring.truncate(germ, 2));
 }
 
@@ -148,7 +148,7 @@ function isotropySummaries(lattice: IsotropyLattice): IsotropySummary[] {
 }
 
 /** ∇H and D²H in doubles as functions of the point and of one parameter, the others at their values. */
-function fullEquations(study: LinearStudy, reduction: Reduction, parameter: string): FullEquations {
+function fullEquations(study: LinearStudy, reduction: Reduction<Algebraic>, parameter: string): FullEquations {
   const { quantities, hamiltonian } = study.prepared;
   const { names } = quantities;
   const n = names.length;

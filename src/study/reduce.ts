@@ -1,10 +1,11 @@
 /** `reduce`: the reduced Hamiltonian on the kernel in its invariants, its germ and its dynamics. */
-import type { Algebraic } from '../field/index.ts';
+import type { Algebraic, Field } from '../field/index.ts';
 import { rewriteInInvariants } from '../invariant/index.ts';
 import { at, column, inverse as invert, transpose } from '../linear/index.ts';
+import type { Declaration } from '../model/declaration/index.ts';
 import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
 import type { LinearStudy } from './codim.ts';
-import { type Reduction, reductionOf } from './reduction.ts';
+import { type Reduction, reductionOf, symbolicReductionOf } from './reduction.ts';
 import type { StudyResult } from './result.ts';
 import { groupSummary, head, linearText } from './summary.ts';
 
@@ -46,10 +47,29 @@ export function reduceResult(study: LinearStudy, parameters: number, degree?: nu
   };
 }
 
-/** The reduced Hamiltonian as a polynomial in the kernel coordinates over the parameters, shown as (mu - mu0). */
-function overParameters(reduction: Reduction): {
-  ring: PolynomialRing<RationalFunction<Algebraic>>;
-  h: Polynomial<RationalFunction<Algebraic>>;
+/** Values for the parameters that have none: fractions that no coincidence is likely to single out. */
+export function withStandIns(declaration: Declaration): { declaration: Declaration; symbols: readonly string[] } {
+  const symbols = declaration.unset;
+  const values = symbols.map((name, i) => [name, `${STAND_INS[i % STAND_INS.length]}/${97 + i}`] as const);
+  return { declaration: { ...declaration, parameters: new Map([...declaration.parameters, ...values]), unset: [] }, symbols };
+}
+
+const STAND_INS = [109, 131, 157, 181, 211];
+
+/** The same where parameters have no value: `study` is the model at some values of the symbols. */
+export function symbolicReduceResult(study: LinearStudy, symbols: readonly string[], parameters: number, degree?: number): ReduceResult {
+  const reduction = symbolicReductionOf(study, symbols, degree);
+  const whole = head('reduce', study.prepared, groupSummary(study.action, study.prepared));
+  const shown = Object.fromEntries(Object.entries(whole.model.parameters).map(([k, v]) => [k, symbols.includes(k) ? null : v]));
+  return { ...whole, model: { ...whole.model, parameters: shown }, reduced: reducedSummary(study, reduction, parameters) };
+}
+
+type Coefficient = RationalFunction<Algebraic>;
+
+/** h as a polynomial in the kernel coordinates over the symbols and the parameters, these shown as (mu - mu0). */
+function overParameters<C>(reduction: Reduction<C>): {
+  ring: PolynomialRing<Coefficient>;
+  h: Polynomial<Coefficient>;
   symbols: RationalFunctionField<Algebraic>;
 } {
   const { field, reduced, parameters } = reduction;
@@ -58,22 +78,33 @@ function overParameters(reduction: Reduction): {
     const text = field.format(field.sign(value) < 0 ? field.neg(value) : value);
     return `(${name} ${field.sign(value) < 0 ? '+' : '-'} ${/ [+-] /.test(text) ? `(${text})` : text})`;
   });
-  const symbols = new RationalFunctionField<Algebraic>(new PolynomialRing(field, shown));
+  const own: Field<unknown> = reduction.ring.field as Field<unknown>;
+  const given = own instanceof RationalFunctionField ? (own as RationalFunctionField<Algebraic>) : undefined;
+  const symbols = new RationalFunctionField<Algebraic>(new PolynomialRing(field, [...(given?.symbols ?? []), ...shown]));
+  const lift = (c: C): Coefficient =>
+    given === undefined
+      ? symbols.fromConstant(c as Algebraic)
+      : given.substituteInto(
+          c as Coefficient,
+          symbols,
+          (s) => symbols.symbol(s),
+          (a) => symbols.fromConstant(a),
+        );
   const k = reduction.ring.variables.length;
-  const ring = new PolynomialRing<RationalFunction<Algebraic>>(symbols, reduction.ring.variables);
-  const terms = reduced.h.monomials.map((m, i): [number[], RationalFunction<Algebraic>] => {
+  const ring = new PolynomialRing<Coefficient>(symbols, reduction.ring.variables);
+  const terms = reduced.h.monomials.map((m, i): [number[], Coefficient] => {
     const exponents = new Array<number>(k).fill(0);
-    let c = symbols.fromConstant(reduced.h.coefficients[i]!);
+    let c = lift(reduced.h.coefficients[i]!);
     for (const [v, e] of factorsOf(m)) {
       if (v < k) exponents[v] = e;
-      else for (let j = 0; j < e; j++) c = symbols.mul(c, symbols.symbol(v - k));
+      else for (let j = 0; j < e; j++) c = symbols.mul(c, symbols.symbol(shown[v - k]!));
     }
     return [exponents, c];
   });
   return { ring, h: ring.fromTerms(terms), symbols };
 }
 
-export function reducedSummary(study: LinearStudy, reduction: Reduction, parameters: number): ReducedSummary {
+export function reducedSummary<C>(study: LinearStudy, reduction: Reduction<C>, parameters: number): ReducedSummary {
   const { analysis, generators, space, field, ring, germ } = reduction;
   const { ring: wide, h, symbols } = overParameters(reduction);
   const rewritten = rewriteInInvariants(h, wide, generators, (a) => symbols.fromConstant(a));
@@ -103,7 +134,7 @@ export function reducedSummary(study: LinearStudy, reduction: Reduction, paramet
 }
 
 /** ½ε|y|² beside h where the kernel is isotropic and the blocks have size 2; the brackets of u where ω|K is nondegenerate. */
-function dynamics(study: LinearStudy, reduction: Reduction): { kinetic?: string; brackets?: readonly string[] } {
+function dynamics<C>(study: LinearStudy, reduction: Reduction<C>): { kinetic?: string; brackets?: readonly string[] } {
   const { form, field, ring } = reduction;
   const { event } = study;
   const k = ring.variables.length;
@@ -135,4 +166,4 @@ function dynamics(study: LinearStudy, reduction: Reduction): { kinetic?: string;
 }
 
 /** J = W^{-T} on the kernel: {u_i, u_j} = J_ij. */
-const invertForm = (reduction: Reduction) => transpose(invert(reduction.form));
+const invertForm = <C>(reduction: Reduction<C>) => transpose(invert(reduction.form));

@@ -3,16 +3,16 @@
  * unfolding variables, the invariants of Γ on the kernel, and the germ. Shared by `reduce` and `branches`.
  */
 import { coordinateMap, embedSparse, type InvariantBasis, invariantBasis } from '../action/index.ts';
-import { LimitError, UsageError } from '../errors/index.ts';
+import { InputError, LimitError, UsageError } from '../errors/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
 import { type GeneratorSet, type LinearAction, linearAction, minimalGenerators } from '../invariant/index.ts';
 import { congruence, dense, type Matrix, sparseTimes } from '../linear/index.ts';
-import { taylor, withField } from '../model/expression/index.ts';
+import { type Expression, taylor, withField } from '../model/expression/index.ts';
 import { squareRoot } from '../model/expression/square-root.ts';
 import { polynomialDegree } from '../model/polynomial-energy.ts';
 import { analyseGerm, type Germ } from '../normalform/germ.ts';
 import { type ReducedHamiltonian, reduceToKernel } from '../normalform/splitting.ts';
-import { factorsOf, type Polynomial, PolynomialRing } from '../polynomial/index.ts';
+import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
 import type { LinearStudy } from './codim.ts';
 
 /** Degrees tried until the germ is determined, where none is asked for. */
@@ -22,7 +22,7 @@ const WIDE_KERNEL = 3;
 /** Phase spaces beyond this dimension are not expanded to high degree. */
 export const REDUCTION_DIMENSION_LIMIT = 40;
 
-export interface Reduction {
+export interface Reduction<C> {
   readonly space: InvariantBasis;
   readonly field: RealField;
   /** Γ on the kernel; its names are the coordinates u1, u2, … */
@@ -30,10 +30,12 @@ export interface Reduction {
   readonly generators: GeneratorSet;
   /** Names of the varied parameters and their values at the event. */
   readonly parameters: readonly { readonly name: string; readonly value: Algebraic }[];
-  readonly reduced: ReducedHamiltonian<Algebraic>;
+  readonly reduced: ReducedHamiltonian<C>;
   /** h at the event: no parameters. */
-  readonly ring: PolynomialRing<Algebraic>;
-  readonly germ: Polynomial<Algebraic>;
+  readonly ring: PolynomialRing<C>;
+  readonly germ: Polynomial<C>;
+  /** Numbers of the field among the coefficients. */
+  readonly embed: (a: Algebraic) => C;
   readonly analysis: Germ;
   readonly degree: number;
   /** ω on the kernel. */
@@ -56,14 +58,26 @@ function rootsByTrigonometry(from: RealField, squares: readonly Algebraic[]): { 
   }
 }
 
-/** Throws UsageError where nothing is at zero, LimitError where the phase space is too large. */
-export function reductionOf(study: LinearStudy, degree?: number): Reduction {
+/** Everything of a reduction but its coefficients. */
+type Frame = Pick<Reduction<Algebraic>, 'space' | 'field' | 'action' | 'parameters' | 'form'> & {
+  readonly names: readonly string[];
+  readonly reserved: readonly string[];
+};
+
+function frameOf(study: LinearStudy): Frame {
   const { prepared, action: linear, components, event } = study;
   const source = prepared.declaration.source;
   if (event.dimension === 0)
     throw new UsageError('nothing to reduce: the Hessian is nonsingular at these values', {
       file: source,
       next: 'move a parameter to a crossing (symcodim sweep finds them), or use reduce --elliptic',
+    });
+  if (study.slicing !== undefined && study.slicing.slice.neutral > 0)
+    throw new LimitError('a reduction beside neutral directions is not done: the kernel contains directions along the group orbit', {
+      file: source,
+      key: 'neutral',
+      expected: 'a model without continuous symmetries that move the equilibrium',
+      next: 'fix the conserved momenta in the model, or leave `neutral` out to reduce on the whole kernel',
     });
   if (linear.dimension > REDUCTION_DIMENSION_LIMIT)
     throw new LimitError(`a reduction in ${linear.dimension} coordinates is out of reach`, {
@@ -74,9 +88,9 @@ export function reductionOf(study: LinearStudy, degree?: number): Reduction {
   const space = invariantBasis(linear, components, dense(hessian), rootsByTrigonometry);
   const field = space.action.field;
   const k = space.basis.cols;
-  const taken = new Set([...prepared.quantities.names, ...prepared.declaration.parameters.keys()]);
-  const letter =
-    ['u', 'v', 'y', 'k'].find((l) => Array.from({ length: k }, (_, i) => `${l}${i + 1}`).every((n) => !taken.has(n))) ?? 'kernel';
+  const taken = [...prepared.quantities.names, ...prepared.declaration.parameters.keys()];
+  const free = (l: string) => Array.from({ length: k }, (_, i) => `${l}${i + 1}`).every((n) => !taken.includes(n));
+  const letter = ['u', 'v', 'y', 'k'].find(free) ?? 'kernel';
   const names = Array.from({ length: k }, (_, i) => `${letter}${i + 1}`);
   const coordinates = coordinateMap(space.basis, field);
   const action = linearAction(
@@ -85,68 +99,147 @@ export function reductionOf(study: LinearStudy, degree?: number): Reduction {
     linear.group,
     space.action.generators.map((g) => coordinates(sparseTimes(g.matrix, space.basis))),
   );
-  const own = polynomialDegree(prepared.hamiltonian, new Set(prepared.quantities.names));
   const parameters = prepared.declaration.vary.map((name) => ({
     name,
     value: field.embed(prepared.quantities.field, prepared.quantities.values.get(name)!),
   }));
-  const form = congruence(space.basis, dense(space.action.form));
-  const reserved = [...names, ...taken];
+  return {
+    space,
+    field,
+    action,
+    parameters,
+    form: congruence(space.basis, dense(space.action.form)),
+    names,
+    reserved: [...names, ...taken],
+  };
+}
+
+/** A Taylor expansion in the coordinates and the varied parameters. */
+interface Expansion<C> {
+  readonly ring: PolynomialRing<C>;
+  readonly polynomial: Polynomial<C>;
+  readonly embed: (a: Algebraic) => C;
+}
+
+function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: number) => Expansion<C>, degree?: number): Reduction<C> {
+  const { names, reserved, ...rest } = frame;
+  const { action } = frame;
+  const n = study.prepared.quantities.names.length;
+  const own = polynomialDegree(study.prepared.hamiltonian, new Set(study.prepared.quantities.names));
   let generators = minimalGenerators(action, { reserved });
-  const degrees = degree !== undefined ? [degree] : k >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
+  const degrees = degree !== undefined ? [degree] : names.length >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
   for (const d of degrees) {
     if (!generators.complete && generators.upTo < d) generators = minimalGenerators(action, { reserved, degree: d });
-    const { reduced, ring, germ } = expand(study, space, names, parameters, d);
+    const { ring: wide, polynomial, embed } = expand(d);
+    const part = (p: Polynomial<C>, r: PolynomialRing<C>, keep: (variables: readonly number[]) => boolean) =>
+      r.fromTerms(p.monomials.flatMap((m, i) => (keep(factorsOf(m).map(([v]) => v)) ? [[m, p.coefficients[i]!] as [string, C]] : [])));
+    const move = (m: Matrix<Algebraic>): Matrix<C> => ({ field: wide.field, rows: m.rows, cols: m.cols, data: m.data.map(embed) });
+    const reduced = reduceToKernel({
+      ring: wide,
+      dimension: n,
+      // terms in the parameters alone do not matter
+      hamiltonian: part(polynomial, wide, (variables) => variables.some((v) => v < n)),
+      kernel: move(frame.space.basis),
+      complement: move(frame.space.complement),
+      degree: d,
+      names,
+    });
+    const ring = new PolynomialRing<C>(wide.field, names);
+    const germ = part(reduced.h, ring, (variables) => variables.every((v) => v < names.length));
     const analysis = analyseGerm({ action, generators, ring, h: germ, degree: d });
-    const last = d === degrees.at(-1) || analysis.codimension !== null;
-    if (last)
-      return {
-        space,
-        field,
-        action,
-        generators,
-        parameters,
-        reduced,
-        ring,
-        germ,
-        analysis,
-        degree: d,
-        form,
-        complete: own !== undefined && own <= d,
-      };
+    if (d === degrees.at(-1) || analysis.codimension !== null)
+      return { ...rest, generators, reduced, ring, germ, analysis, degree: d, embed, complete: own !== undefined && own <= d };
   }
   throw new Error('no degree was tried');
 }
 
-function expand(study: LinearStudy, space: InvariantBasis, names: readonly string[], parameters: Reduction['parameters'], degree: number) {
+/** Throws UsageError where nothing is at zero, LimitError where the phase space is too large. */
+export function reductionOf(study: LinearStudy, degree?: number): Reduction<Algebraic> {
+  const frame = frameOf(study);
   const { prepared } = study;
-  const field = space.action.field;
   const { quantities, hamiltonian } = prepared;
-  const vary = parameters.map((p) => p.name);
-  const point = new Map([...quantities.pointExpressions, ...vary.map((v) => [v, quantities.valueExpressions.get(v)!] as const)]);
-  const t = taylor(hamiltonian, { names: [...quantities.names, ...vary], point, parameters: quantities.valueExpressions, degree, field });
-  if (t.kind !== 'exact' || t.field !== field) throw new Error('an exact model has an expansion that is not exact');
-  const n = quantities.names.length;
-  // constants and terms in the parameters alone do not matter; a linear term in x that a parameter brings does
-  const polynomial = t.ring.fromTerms(
-    t.polynomial.monomials.flatMap((m, i) =>
-      factorsOf(m).some(([v]) => v < n) ? [[m, t.polynomial.coefficients[i]!] as [string, Algebraic]] : [],
-    ),
-  );
-  const reduced = reduceToKernel({
-    ring: t.ring,
-    dimension: n,
-    hamiltonian: polynomial,
-    kernel: space.basis,
-    complement: space.complement,
+  const { names, point } = expansionPoint(study, frame);
+  return reduceAndAnalyse(
+    study,
+    frame,
+    (d) => {
+      const t = taylor(hamiltonian, { names, point, parameters: quantities.valueExpressions, degree: d, field: frame.field });
+      if (t.kind !== 'exact' || t.field !== frame.field) throw new Error('an exact model has an expansion that is not exact');
+      return { ring: t.ring, polynomial: t.polynomial, embed: (a) => a };
+    },
     degree,
-    names,
-  });
-  const ring = new PolynomialRing<Algebraic>(field, names);
-  const germ = ring.fromTerms(
-    reduced.h.monomials.flatMap((m, i) =>
-      factorsOf(m).every(([v]) => v < names.length) ? [[m, reduced.h.coefficients[i]!] as [string, Algebraic]] : [],
-    ),
   );
-  return { reduced, ring, germ };
+}
+
+/**
+ * The same with parameters that have no value: `study` is the model at some values of them, `symbols` their names; their kernel
+ * must not depend on the values. Throws InputError where it does.
+ */
+export function symbolicReductionOf(
+  study: LinearStudy,
+  symbols: readonly string[],
+  degree?: number,
+): Reduction<RationalFunction<Algebraic>> {
+  const frame = frameOf(study);
+  const { prepared } = study;
+  const { quantities, hamiltonian } = prepared;
+  const { names, point } = expansionPoint(study, frame);
+  const values = new Map([...quantities.valueExpressions].filter(([name]) => !symbols.includes(name)));
+  return reduceAndAnalyse(
+    study,
+    frame,
+    (d) => {
+      const t = taylor(hamiltonian, { names, point, parameters: values, keep: symbols, degree: d, field: frame.field });
+      const coefficients =
+        t.kind === 'symbolic' ? t.constants.field : new RationalFunctionField<Algebraic>(new PolynomialRing(t.field, symbols));
+      if (t.field !== frame.field) throw new Error('the symbols need a larger field than their values');
+      const embed = (a: Algebraic) => coefficients.fromConstant(a);
+      const ring = new PolynomialRing<RationalFunction<Algebraic>>(coefficients, t.ring.variables);
+      const polynomial = t.kind === 'symbolic' ? t.polynomial : t.ring.map(t.polynomial, embed, ring);
+      requireKernel(ring, polynomial, frame, symbols, prepared.declaration.source, quantities.names.length);
+      return { ring, polynomial, embed };
+    },
+    degree,
+  );
+}
+
+function expansionPoint(study: LinearStudy, frame: Frame): { names: readonly string[]; point: ReadonlyMap<string, Expression> } {
+  const { quantities } = study.prepared;
+  const vary = frame.parameters.map((p) => p.name);
+  return {
+    names: [...quantities.names, ...vary],
+    point: new Map([...quantities.pointExpressions, ...vary.map((v) => [v, quantities.valueExpressions.get(v)!] as const)]),
+  };
+}
+
+/** The quadratic part must vanish on the kernel for every value of the symbols. */
+function requireKernel<C>(
+  ring: PolynomialRing<C>,
+  polynomial: Polynomial<C>,
+  frame: Frame,
+  symbols: readonly string[],
+  file: string,
+  n: number,
+): void {
+  const f = ring.field;
+  const embed = (a: Algebraic) => (f as unknown as RationalFunctionField<Algebraic>).fromConstant(a) as unknown as C;
+  const quadratic = ring.homogeneousPart(polynomial, 2);
+  for (let i = 0; i < n; i++) {
+    const row = ring.derivative(quadratic, i);
+    for (let c = 0; c < frame.space.basis.cols; c++) {
+      let sum = f.zero;
+      row.monomials.forEach((m, k) => {
+        const v = factorsOf(m)[0]![0];
+        if (v < n) sum = f.add(sum, f.mul(row.coefficients[k]!, embed(frame.space.basis.data[v * frame.space.basis.cols + c]!)));
+      });
+      if (!f.isZero(sum))
+        throw new InputError(`the kernel of the Hessian depends on ${symbols.join(', ')}`, {
+          file,
+          key: 'parameters',
+          value: symbols.join(', '),
+          expected: 'an event that is there for every value of the parameters without one',
+          next: 'give these parameters values',
+        });
+    }
+  }
 }

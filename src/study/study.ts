@@ -43,8 +43,15 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
     const { reportAnswer } = await import('./report.ts');
     return reportAnswer(answerOf, declaration, options);
   }
-  const prepared = prepare(declaration);
   const parameters = options.parameters ?? declaration.parameterCount;
+  if (command === 'reduce' && declaration.unset.length > 0 && options.elliptic !== true) {
+    const [{ linearStudy }, { symbolicReduceResult, withStandIns }] = await Promise.all([import('./codim.ts'), import('./reduce.ts')]);
+    const { declaration: stated, symbols } = withStandIns(declaration);
+    const prepared = prepare(stated);
+    if (isExact(prepared))
+      return { result: symbolicReduceResult(linearStudy(prepared), symbols, parameters, declaration.degree), status: 0, notes: [] };
+  }
+  const prepared = prepare(declaration);
   if (!isExact(prepared)) {
     const { floatingAnswer } = await import('./floating.ts');
     const answer = floatingAnswer(command, prepared, parameters);

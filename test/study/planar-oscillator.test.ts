@@ -34,7 +34,15 @@ describe('planar oscillator under D3', () => {
   });
   it('the event: kernel, blocks, sign, codimension by two routes, motion, verdict', async () => {
     const x = await codim(r + s);
-    expect(x.zero).toMatchObject({ dimension: 4, kernel: 2, blocks: [2, 2], semisimple: false, codimension: 1, codimensionWithoutSymmetry: 4, motion: 'splits' });
+    expect(x.zero).toMatchObject({
+      dimension: 4,
+      kernel: 2,
+      blocks: [2, 2],
+      semisimple: false,
+      codimension: 1,
+      codimensionWithoutSymmetry: 4,
+      motion: 'splits',
+    });
     expect(x.zero!.signs).toMatchObject([{ size: 2, count: 2, positive: 2, negative: 0 }]);
     expect(x.zero!.routes).toMatchObject([{ class: 1, partition: [2], formula: 1, rank: 1 }]);
     expect(x.zero!.unfolding).toEqual(['q1^2 + q2^2']);
@@ -42,7 +50,12 @@ describe('planar oscillator under D3', () => {
   });
   it('subgroups: orders 1, 2, 3, 6 give 4, 2, 2, 1', async () => {
     const x = await codim(r + s);
-    expect(x.zero!.subgroups.map((h) => [h.order, h.conjugates, h.codimension])).toEqual([[1, 1, 4], [2, 3, 2], [3, 1, 2], [6, 1, 1]]);
+    expect(x.zero!.subgroups.map((h) => [h.order, h.conjugates, h.codimension])).toEqual([
+      [1, 1, 4],
+      [2, 3, 2],
+      [3, 1, 2],
+      [6, 1, 1],
+    ]);
   });
   it('other declared symmetries: C3 alone 2, C3 with time reversal 1, D3 with time reversal 1, a mirror alone 2', async () => {
     expect((await codim(r)).zero!.codimension).toBe(2);
@@ -70,7 +83,44 @@ describe('planar oscillator under D3', () => {
   });
   it('reduction: h = μ/2 I + R + I², leading degree 3, codimension 1, no moduli, unfolding I', async () => {
     const x = ((await study('reduce', model(r + s))).result as ReduceResult).reduced;
-    expect(x).toMatchObject({ leadingDegree: 3, expression: 'mu*I/2 + R + I^2', codimension: 1, moduli: 0, stratumCodimension: 1, unfolding: ['I'], determinedAt: 3, kinetic: '(y1^2 + y2^2)/2', generic: true });
-    expect(x.invariants).toMatchObject([{ name: 'I', polynomial: 'u1^2 + u2^2' }, { name: 'R', polynomial: 'u1^3 - 3*u1*u2^2' }]);
+    expect(x).toMatchObject({
+      leadingDegree: 3,
+      expression: 'mu*I/2 + R + I^2',
+      codimension: 1,
+      moduli: 0,
+      stratumCodimension: 1,
+      unfolding: ['I'],
+      determinedAt: 3,
+      kinetic: '(y1^2 + y2^2)/2',
+      generic: true,
+    });
+    expect(x.invariants).toMatchObject([
+      { name: 'I', polynomial: 'u1^2 + u2^2' },
+      { name: 'R', polynomial: 'u1^3 - 3*u1*u2^2' },
+    ]);
+  });
+});
+
+describe('reduction with symbols', () => {
+  const symbolic = (n: number, h: string) =>
+    readModelText(`
+coordinates: [q1, q2]
+momenta: [p1, p2]
+parameters: {mu: 0}
+vary: [mu]
+hamiltonian: (p1^2+p2^2)/2 + mu*(q1^2+q2^2)/2 + ${h}
+symmetry: {group: 'dihedral:${n}', on: [[q1, q2]]}`);
+  it('D3: h = μ/2 I + a R + b I² for every a ≠ 0 (worked by hand)', async () => {
+    const x = (await study('reduce', symbolic(3, 'a*(q1^3-3*q1*q2^2) + b*(q1^2+q2^2)^2'))).result as ReduceResult;
+    expect(x.model.parameters).toEqual({ mu: '0', a: null, b: null });
+    expect(x.reduced).toMatchObject({ expression: 'mu*I/2 + a*R + b*I^2', conditions: ['a'], codimension: 1, moduli: 0 });
+  });
+  it('D4: a ≠ 0, a + b ≠ 0, a + 2b ≠ 0 (critical lines of a(x⁴+y⁴) + b(x²+y²)², by hand)', async () => {
+    const x = ((await study('reduce', symbolic(4, 'a*(q1^4+q2^4) + b*(q1^2+q2^2)^2'))).result as ReduceResult).reduced;
+    expect(x.conditions).toEqual(['a', 'a + b', 'a + 2*b']);
+    expect([x.codimension, x.moduli, x.stratumCodimension]).toEqual([2, 1, 1]);
+  });
+  it('a kernel that depends on a symbol is refused', async () => {
+    await expect(study('reduce', symbolic(1, 'a*q1*q2 + q2^2/2 + a^2*q1^2/2 + q1^4'))).rejects.toThrow();
   });
 });
