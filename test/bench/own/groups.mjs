@@ -1,9 +1,4 @@
-/**
- * Time of exact character tables from generators, and of subgroup lists, once each (cold code).
- * Coxeter groups are given by their Cartan entries in Z[tau], tau^2 = tau + 1, and act on their roots.
- */
-import { characterTable, closeGroup, subgroupClasses } from '../../dist/group/index.js';
-
+/** Groups by permutations: Coxeter groups on their roots, Cartan entries in Z[τ], τ² = τ + 1; and small matrices. */
 const cycle = (n) => Int32Array.from({ length: n }, (_, i) => (i + 1) % n);
 const swap = (n) => Int32Array.from({ length: n }, (_, i) => (i < 2 ? 1 - i : i));
 const reverse = (n) => Int32Array.from({ length: n }, (_, i) => (n - i) % n);
@@ -26,7 +21,7 @@ function orbit(seeds, maps) {
   return images.map((p) => Int32Array.from(p));
 }
 
-/** Root coordinates a + b tau as pairs in one row; bonds [[up], [down]] along a chain. */
+/** Root coordinates a + bτ as pairs in one row; bonds [[up], [down]] along a chain. */
 function coxeter(bonds) {
   const n = bonds.length + 1;
   const cartan = (i, j) => (i === j ? [2, 0] : j === i + 1 ? bonds[i][0] : i === j + 1 ? bonds[j][1] : [0, 0]);
@@ -67,55 +62,28 @@ const mirror = [
   [0, -1],
 ];
 const left = [kronecker(identity(2), turn), kronecker(turn, mirror)]; // two anticommuting square roots of -1
-
-const plain = [
-  [-1, 0],
-  [-1, 0],
-];
-const double = [
-  [-2, 0],
-  [-1, 0],
+const bond = (up, down) => [
+  [up, 0],
+  [down, 0],
 ];
 const golden = [
   [0, -1],
   [0, -1],
 ];
 
-const groups = [
-  ['H4', () => coxeter([golden, plain, plain])],
-  ['S5', () => [swap(5), cycle(5)]],
-  ['S6', () => [swap(6), cycle(6)]],
-  ['O_h', () => coxeter([plain, double])],
-  ['I_h', () => coxeter([golden, plain])],
-  ['F4', () => coxeter([plain, double, plain])],
-  ['D100', () => [cycle(100), reverse(100)]],
-  ['2^{1+4}+', () => matrices([turn, mirror].flatMap((m) => [kronecker(m, identity(2)), kronecker(identity(2), m)]))],
-  ['2^{1+4}-', () => matrices([...[turn, mirror].map((m) => kronecker(m, identity(4))), ...left.map((m) => kronecker(identity(2), m))])],
+/** Name, order, generators. */
+export const groups = [
+  ['H4', 14400, () => coxeter([golden, bond(-1, -1), bond(-1, -1)])],
+  ['S5', 120, () => [swap(5), cycle(5)]],
+  ['S6', 720, () => [swap(6), cycle(6)]],
+  ['O_h', 48, () => coxeter([bond(-1, -1), bond(-2, -1)])],
+  ['I_h', 120, () => coxeter([golden, bond(-1, -1)])],
+  ['F4', 1152, () => coxeter([bond(-1, -1), bond(-2, -1), bond(-1, -1)])],
+  ['D100', 200, () => [cycle(100), reverse(100)]],
+  ['2^{1+4}+', 32, () => matrices([turn, mirror].flatMap((m) => [kronecker(m, identity(2)), kronecker(identity(2), m)]))],
+  [
+    '2^{1+4}-',
+    32,
+    () => matrices([...[turn, mirror].map((m) => kronecker(m, identity(4))), ...left.map((m) => kronecker(identity(2), m))]),
+  ],
 ];
-
-const order = { H4: 14400, S5: 120, S6: 720, O_h: 48, I_h: 120, F4: 1152, D100: 200, '2^{1+4}+': 32, '2^{1+4}-': 32 };
-
-/** Rows {task, seconds}. */
-export async function run() {
-  const rows = [];
-  let total = 0;
-  const closed = new Map();
-  for (const [name, generators] of groups) {
-    const start = performance.now();
-    const list = generators();
-    const group = closeGroup(list, list[0].length);
-    characterTable(group);
-    const seconds = (performance.now() - start) / 1000;
-    if (group.order !== order[name]) throw new Error(`${name}: order ${group.order}`);
-    closed.set(name, group);
-    total += seconds;
-    rows.push({ task: `character table ${name}`, seconds });
-  }
-  rows.push({ task: 'character tables, all nine', seconds: total });
-  for (const name of ['O_h', 'I_h', 'S5']) {
-    const start = performance.now();
-    subgroupClasses(closed.get(name));
-    rows.push({ task: `subgroup classes ${name}`, seconds: (performance.now() - start) / 1000 });
-  }
-  return rows;
-}
