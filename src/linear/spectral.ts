@@ -119,11 +119,20 @@ export interface ComplexNumber {
   readonly im: number;
 }
 
+/**
+ * The matrix in coordinates stretched by different factors between 1 and 5/4. The QR iteration of the library never ends on
+ * some skew-symmetric matrices, such as [[0, 3/2, 1, 0], [-3/2, 0, 0, 1], [-1, 0, 0, 3/2], [0, -1, -3/2, 0]]; stretched, they are none.
+ */
+function stretched(a: NumberMatrix): NumberMatrix {
+  const factor = (i: number) => 1 + ((i * 0.6180339887498949) % 1) / 4;
+  return numberBuild(a.rows, a.cols, (i, j) => (a.data[i * a.cols + j]! * factor(i)) / factor(j));
+}
+
 /** Eigenvalues of a general square matrix, balanced first; no order. */
 export function generalEigenvalues(a: NumberMatrix): ComplexNumber[] {
   requireFinite(a, 'matrix');
   if (a.rows === 0) return [];
-  const evd = new EigenvalueDecomposition(dense(balanced(a).matrix), { assumeSymmetric: false });
+  const evd = new EigenvalueDecomposition(dense(stretched(balanced(a).matrix)), { assumeSymmetric: false });
   const im = evd.imaginaryEigenvalues;
   const values = evd.realEigenvalues.map((re, i) => ({ re, im: im[i]! }));
   if (values.some((z) => !Number.isFinite(z.re) || !Number.isFinite(z.im)))

@@ -7,6 +7,7 @@
 import type { Algebraic, Rational } from '../field/index.ts';
 import { RealField, rational, rationals } from '../field/index.ts';
 import { type RealRoot, RealRoots, type Univariate, UnivariateRing } from '../polynomial/index.ts';
+import { bisected } from './threshold-root.ts';
 
 export interface ClosedForm {
   /** In the language of models. */
@@ -26,7 +27,7 @@ export function closedForm(factor: Univariate<Algebraic>, root: RealRoot, field:
   if (p.length === 2) candidates.push(elementForm(field.neg(p[0]!), field));
   if (p.length === 3) candidates.push(...quadraticRoots(p, field));
   if (p.length > 3) {
-    const low = quadraticFactor(p, root, field);
+    const low = quadraticFactor(factor, p, root, field);
     if (low !== undefined) candidates.push(...quadraticRoots(low, field));
     else if (p.length === 5 && field.isZero(p[1]!) && field.isZero(p[3]!)) candidates.push(...biquadraticRoots(p, field));
   }
@@ -74,11 +75,28 @@ export function simplestBetween(low: Rational, high: Rational): Rational {
   return rationals.add(rational(whole), rationals.inv(inner));
 }
 
+const isolatedRoots = new WeakMap<Univariate<Algebraic>, RealRoot[]>();
+
+/** All real roots of a square-free polynomial to 36 digits. */
+function siblings(p: Univariate<Algebraic>, roots: RealRoots<Algebraic>): RealRoot[] {
+  let all = isolatedRoots.get(p);
+  if (all === undefined) {
+    all = roots.isolate(p).map((r) => bisected(roots, p, r, 36));
+    isolatedRoots.set(p, all);
+  }
+  return all;
+}
+
 /** A quadratic factor with rational coefficients that has this root: sum and product of two roots guessed, then divided out exactly. */
-function quadraticFactor(p: Univariate<Algebraic>, root: RealRoot, field: RealField): Univariate<Algebraic> | undefined {
+function quadraticFactor(
+  factor: Univariate<Algebraic>,
+  p: Univariate<Algebraic>,
+  root: RealRoot,
+  field: RealField,
+): Univariate<Algebraic> | undefined {
   const roots = new RealRoots(field);
   const ring = new UnivariateRing(field);
-  const all = roots.isolate(p).map((r) => roots.refine(p, r, 36));
+  const all = siblings(factor, roots);
   const mine = all.find((r) => rationals.compare(r.low, root.high) <= 0 && rationals.compare(root.low, r.high) <= 0);
   if (mine === undefined) return undefined;
   const ends = (r: RealRoot) => [r.exact ?? r.low, r.exact ?? r.high] as const;

@@ -39,6 +39,11 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       return { result: await eventsResult(declaration), status: 0, notes: [] };
     }
   }
+  if (command === 'sweep') {
+    const { sweepResult } = await import('./sweep.ts');
+    const result = await sweepResult(declaration, options);
+    return { result, status: 0, notes: result.floatingBecause === undefined ? [] : [`floating: ${result.floatingBecause}`] };
+  }
   if (command === 'report') {
     const { reportAnswer } = await import('./report.ts');
     return reportAnswer(answerOf, declaration, options);

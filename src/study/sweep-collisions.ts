@@ -70,7 +70,7 @@ export async function tracksOf(
       component: family.flowLabels[i]!.join(' + '),
       points: rows.map((row, j) => {
         const v = row[k]!;
-        return { at: digits(curve.points[j]!.mu), re: digits(v.re), im: digits(v.im), sign: v.sign };
+        return { at: digits(curve.points[j]!.mu), re: digits(Math.abs(v.re)), im: digits(v.im), sign: v.sign };
       }),
     })),
   );

@@ -8,7 +8,7 @@
 import { type NumberMatrix, numberMatrix, numberSolve, numberTranspose } from '../linear/index.ts';
 import { hamiltonianEigenvalues } from '../linear/spectral.ts';
 
-/** One eigenvalue of each pair ±λ, with nonnegative parts; sign only on the imaginary axis. */
+/** One eigenvalue of each pair ±λ, with im ≥ 0, and re ≥ 0 where im = 0; sign only on the imaginary axis. */
 export interface BlockEigenvalue {
   readonly re: number;
   readonly im: number;
@@ -39,7 +39,7 @@ export function blockEigenvalues(s: NumberMatrix, w: NumberMatrix): BlockEigenva
     .filter((_, i) => i % 2 === 0)
     .map(({ re, im }): BlockEigenvalue => {
       const size = Math.hypot(re, im);
-      const a = Math.abs(re) <= AXIS * size || size <= 1e-14 * scale ? 0 : Math.abs(re);
+      const a = Math.abs(re) <= AXIS * size || size <= 1e-14 * scale ? 0 : Math.abs(im) <= AXIS * size ? Math.abs(re) : im < 0 ? -re : re;
       const b = Math.abs(im) <= AXIS * size ? 0 : Math.abs(im);
       return { re: a, im: b, sign: a === 0 && b > 0 ? kreinSign(s, l, b, scale) : 0 };
     });

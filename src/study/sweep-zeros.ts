@@ -127,9 +127,13 @@ export function zerosOnCurve(family: SweepFamily, curve: Curve, blocks: (p: Curv
   const width = family.range.to - family.range.from;
   const found: { u: number; point: CurvePoint; component: number }[] = [];
   const singular: string[] = [];
+  const scales = curve.points.map((p) => {
+    const at = blocks(p);
+    return Math.max(...family.adapted.map((_, i) => largestEntry(at.component(i))));
+  });
   family.adapted.forEach((b, i) => {
     const rows = curve.points.map((p) => eigen(p, i));
-    const sizes = rows.map((r) => r.reduce((m, x) => Math.max(m, Math.abs(x)), 0));
+    const sizes = rows.map((r, j) => r.reduce((m, x) => Math.max(m, Math.abs(x)), scales[j]!));
     const flat = (k: number) => rows.every((r, j) => Math.abs(r[k]!) <= 1e-11 * sizes[j]!);
     for (let k = 0; k < (rows[0]?.length ?? 0); k++) {
       if (flat(k)) {
@@ -147,8 +151,7 @@ export function zerosOnCurve(family: SweepFamily, curve: Curve, blocks: (p: Curv
         const theta = bracketed((t) => eigen(curve.between(j, t), i)[k]!, v, next);
         const point = curve.between(j, theta);
         // through infinity is no zero
-        const there = eigen(point, i);
-        if (Math.abs(there[k]!) > 1e-6 * Math.max(...there.map(Math.abs))) continue;
+        if (!(Math.abs(eigen(point, i)[k]!) <= 1e-3 * Math.max(Math.abs(v), Math.abs(next)))) continue;
         found.push({ u: j + theta, point, component: i });
       }
     }

@@ -3,10 +3,11 @@
  * sequences over the field of the model, told apart exactly, and in closed form where there is one.
  */
 import type { Algebraic, Rational, RealField } from '../field/index.ts';
-import { rational, rationals } from '../field/index.ts';
+import { rationals } from '../field/index.ts';
 import { determinant, type Matrix } from '../linear/index.ts';
 import { formatRoot, type RealRoot, RealRoots, type Univariate } from '../polynomial/index.ts';
 import { type ClosedForm, closedForm } from './closed-form.ts';
+import { bisected, middle } from './threshold-root.ts';
 
 /** Digits after the point of a root that has no closed form. */
 export const ROOT_DIGITS = 30;
@@ -61,7 +62,7 @@ export function thresholds(determinants: readonly Univariate<Algebraic>[], low: 
     const factors = roots.ring.squareFree(d);
     for (const root of roots.isolate(d)) {
       const { factor } = factors.find((f) => f.multiplicity === root.multiplicity)!;
-      const narrow = narrowed(roots, d, root, low, high);
+      const narrow = narrowed(roots, factor, root, low, high);
       if (narrow !== undefined)
         found.push({ block, root: narrow, factor: isolated(roots, factor, narrow), multiplicity: root.multiplicity });
     }
@@ -96,13 +97,14 @@ export function thresholds(determinants: readonly Univariate<Algebraic>[], low: 
 /** The root to the stated digits if it lies in [low, high]; both ends belong to the interval. */
 function narrowed(
   roots: RealRoots<Algebraic>,
-  d: Univariate<Algebraic>,
+  factor: Univariate<Algebraic>,
   root: RealRoot,
   low: Rational,
   high: Rational,
 ): RealRoot | undefined {
-  for (const end of [low, high]) if (roots.signAt(d, end) === 0 && contains(root, end)) return { ...root, low: end, high: end, exact: end };
-  const fine = roots.refine(d, root, ROOT_DIGITS + 6);
+  for (const end of [low, high])
+    if (contains(root, end) && roots.signAt(factor, end) === 0) return { ...root, low: end, high: end, exact: end };
+  const fine = bisected(roots, factor, root, ROOT_DIGITS + 6);
   const at = middle(fine);
   return rationals.compare(at, low) > 0 && rationals.compare(at, high) < 0 ? fine : undefined;
 }
@@ -124,10 +126,6 @@ function hasRoot(roots: RealRoots<Algebraic>, p: Univariate<Algebraic>, root: Re
 
 function overlap(a: RealRoot, b: RealRoot): boolean {
   return rationals.compare(a.low, b.high) <= 0 && rationals.compare(b.low, a.high) <= 0;
-}
-
-export function middle(root: RealRoot): Rational {
-  return root.exact ?? rational(root.low.n * root.high.d + root.high.n * root.low.d, 2n * root.low.d * root.high.d);
 }
 
 export function numberOf(root: RealRoot): number {
