@@ -11,7 +11,9 @@ import { InputError, ShapeError } from '../errors/index.ts';
 import type { Field } from '../field/index.ts';
 import { at, build, inverse, type Matrix, minor, numberIdentity, numberMatrix, numberSolve } from '../linear/index.ts';
 import { factorsOf, type Monomial, type Polynomial, PolynomialRing, RationalFunctionField } from '../polynomial/index.ts';
+import { type Composer, denseComposer, sparseComposer } from './composition.ts';
 import { withoutFractions } from './fraction-free.ts';
+import { SeriesAlgebra } from './truncated-series.ts';
 
 /** Relative size below which an entry of a floating Hessian counts as rounding. */
 const ROUNDING = 1e-12;
@@ -181,58 +183,71 @@ function floatingInverse<T>(a: Matrix<T>): Matrix<T> {
 
 /** The reduction with the inverse of C'SC given; uses no division. */
 function reduceWith<T>(input: ReductionInput<T>, inverseForm: Matrix<T>): { h: Polynomial<T>; slaved: Polynomial<T>[] } {
+  const variables = input.kernel.cols + input.ring.variables.length - input.dimension;
+  const work = new PolynomialRing(
+    input.ring.field,
+    Array.from({ length: variables }, (_, i) => `t${i}`),
+  );
+  return SeriesAlgebra.fits(variables, input.degree)
+    ? compose(input, inverseForm, work, denseComposer(work.field, work, input.degree))
+    : compose(input, inverseForm, work, sparseComposer(work.field, work, input.degree));
+}
+
+function compose<T, S>(
+  input: ReductionInput<T>,
+  inverseForm: Matrix<T>,
+  work: PolynomialRing<T>,
+  series: Composer<T, S>,
+): { h: Polynomial<T>; slaved: Polynomial<T>[] } {
   const { ring, dimension: n, hamiltonian, kernel, complement, degree } = input;
   const f = ring.field;
   const k = kernel.cols;
-  const parameters = ring.variables.length - n;
-  const weights = input.weights ?? new Array<number>(parameters).fill(2);
-  const work = new PolynomialRing(
-    f,
-    Array.from({ length: k + parameters }, (_, i) => `t${i}`),
-  );
+  const weights = input.weights ?? new Array<number>(ring.variables.length - n).fill(2);
   // a parameter of weight w is t^w: the truncation by degree is then the truncation by weight
-  const parameterImages = weights.map((w, i) => work.term(String.fromCharCode(k + i).repeat(w), f.one));
-  const linear = Array.from({ length: n }, (_, i) => work.linearForm(Array.from({ length: k }, (_, j) => at(kernel, i, j))));
-  const gradient = Array.from({ length: n }, (_, i) => ring.derivative(hamiltonian, i));
-  const half = Math.floor(degree / 2);
-  const v: Polynomial<T>[] = new Array<Polynomial<T>>(complement.cols).fill(work.zero);
-  const images = (): Polynomial<T>[] => [
-    ...linear.map((x, i) => {
-      const parts = [x];
-      for (let j = 0; j < complement.cols; j++) {
-        const c = at(complement, i, j);
-        if (!f.isZero(c) && !work.isZero(v[j]!)) parts.push(work.scale(v[j]!, c));
-      }
-      return parts.length === 1 ? x : work.sum(parts);
-    }),
-    ...parameterImages,
-  ];
-  const used = Array.from({ length: n }, (_, i) => i).filter((i) =>
-    Array.from({ length: complement.cols }, (_, j) => at(complement, i, j)).some((c) => !f.isZero(c)),
+  const parameters = weights.map((w, i) => series.power(k + i, w));
+  const linear = Array.from({ length: n }, (_, i) => series.linear(Array.from({ length: k }, (_, j) => at(kernel, i, j))));
+  // the quadratic part in x alone acts through C'SC only
+  const rest = ring.fromTerms([...ring.terms(hamiltonian)].filter(([m]) => m.length !== 2 || m.charCodeAt(1) >= n));
+  const rows = Array.from({ length: n }, (_, i) =>
+    Array.from({ length: complement.cols }, (_, j) => [j, at(complement, i, j)] as const).filter(([, c]) => !f.isZero(c)),
   );
-  const identityMap = (c: T) => c;
+  const gradient = rows.map((row, i) => (row.length === 0 ? ring.zero : ring.derivative(rest, i)));
+  const half = Math.floor(degree / 2);
+  const v: S[] = Array.from({ length: complement.cols }, () => series.zero);
+  const forces: S[] = Array.from({ length: complement.cols }, () => series.zero);
+  const images = (): S[] => [
+    ...linear.map((x, i) => {
+      const moved = rows[i]!.filter(([j]) => !series.isZero(v[j]!));
+      return moved.length === 0 ? x : series.combination([[f.one, x], ...moved.map(([j, c]) => [c, v[j]!] as const)]);
+    }),
+    ...parameters,
+  ];
   for (let m = 1; m <= half && complement.cols > 0; m++) {
     if (m === 1 && !weights.includes(1)) continue;
     const x = images();
-    const residues = new Map(used.map((i) => [i, work.homogeneousPart(work.substitute(gradient[i]!, x, work, identityMap, m), m)]));
-    const forces = Array.from({ length: complement.cols }, (_, j) => {
-      const parts: Polynomial<T>[] = [];
-      for (const i of used) {
-        const c = at(complement, i, j);
-        const r = residues.get(i)!;
-        if (!f.isZero(c) && !work.isZero(r)) parts.push(work.scale(r, c));
-      }
-      return work.sum(parts);
-    });
-    for (let j = 0; j < complement.cols; j++) {
-      const parts: Polynomial<T>[] = [];
-      for (let l = 0; l < complement.cols; l++) {
-        const c = at(inverseForm, j, l);
-        if (!f.isZero(c) && !work.isZero(forces[l]!)) parts.push(work.scale(forces[l]!, f.neg(c)));
-      }
-      if (parts.length > 0) v[j] = work.add(v[j]!, work.sum(parts));
+    const residues = gradient.map((g) => (ring.isZero(g) ? series.zero : series.part(series.evaluate(g, x, m), m)));
+    const force = v.map((_, j) =>
+      series.combination(
+        rows.flatMap((row, i) => row.filter(([l]) => l === j && !series.isZero(residues[i]!)).map(([, c]) => [c, residues[i]!] as const)),
+      ),
+    );
+    const active = force.map((_, l) => l).filter((l) => !series.isZero(force[l]!));
+    for (let j = 0; j < v.length; j++) {
+      const parts = active.filter((l) => !f.isZero(at(inverseForm, j, l))).map((l) => [f.neg(at(inverseForm, j, l)), force[l]!] as const);
+      if (parts.length > 0) v[j] = series.combination([[f.one, v[j]!], ...parts]);
     }
+    for (const l of active)
+      forces[l] = series.combination([
+        [f.one, forces[l]!],
+        [f.one, force[l]!],
+      ]);
   }
+  // C'SC v = -forces for the terms of v that were computed, so that ½ v'(C'SC)v = -½ Σ v_j forces_j
+  const minusHalf = f.fromRational(-1n, 2n);
+  const quadratic = v.flatMap((x, j) =>
+    series.isZero(x) || series.isZero(forces[j]!) ? [] : [[minusHalf, series.multiply(x, forces[j]!)] as const],
+  );
+  const h = series.combination([[f.one, series.evaluate(rest, images(), degree)], ...quadratic]);
   const unweigh = (p: Polynomial<T>): Polynomial<T> =>
     weights.every((w) => w === 1)
       ? p
@@ -244,6 +259,5 @@ function reduceWith<T>(input: ReductionInput<T>, inverseForm: Matrix<T>): { h: P
             return [out, p.coefficients[i]!] as const;
           }),
         );
-  const h = work.substitute(hamiltonian, images(), work, identityMap, degree);
-  return { h: unweigh(h), slaved: v.map(unweigh) };
+  return { h: unweigh(series.toPolynomial(h)), slaved: v.map((x) => unweigh(series.toPolynomial(x))) };
 }
