@@ -204,6 +204,8 @@ export interface FloatingVersality {
 
 /** Versality of the family, as event/versality.ts decides it exactly. */
 export function floatingVersality(study: FloatingStudy, spaces: readonly EventSpace[], codimension: number): FloatingVersality {
+  if (study.slice !== undefined && study.slice.neutral > 0)
+    return { versal: null, spanned: 0, codimension, onto: false, doubt: 'beside neutral directions it is decided for exact numbers only' };
   const { prepared, scaling, hessian, scale } = study;
   const { local, tolerance } = prepared;
   const n = scaling.length;

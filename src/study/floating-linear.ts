@@ -19,6 +19,7 @@ import {
   restrictNumeric,
 } from './floating-action.ts';
 import type { FloatingPrepared } from './floating-prepare.ts';
+import { cutBasis, type FloatingSlice, floatingSlice } from './neutral-floating.ts';
 
 /** What happens at zero on one block, on the multiplicity space. */
 export interface FloatingBlockZero {
@@ -55,6 +56,8 @@ export interface FloatingStudy {
   /** Largest term of the balanced Hessian. */
   readonly scale: number;
   readonly blocks: readonly FloatingBlockZero[];
+  /** The symplectic slice, where continuous symmetries are declared; the blocks are then those of the slice. */
+  readonly slice?: FloatingSlice;
 }
 
 /** Cells of coordinates that ω pairs with one another cell. */
@@ -203,7 +206,10 @@ export function floatingLinear(prepared: FloatingPrepared & { readonly action: A
   const { scaling, hessian, form, scale } = balancedForms(prepared, action);
   const numeric = numericAction(action, scaling);
   const symplectic = symplecticPart(action);
-  const blocks = floatingBlocks(action, symplectic, numeric).map((block) =>
+  const slice = prepared.neutral === undefined ? undefined : floatingSlice(prepared.neutral, numeric, scaling, form);
+  const whole = floatingBlocks(action, symplectic, numeric);
+  const own = slice === undefined ? whole : whole.map((b) => ({ ...b, basis: cutBasis(slice, b.basis) })).filter((b) => b.basis.length > 0);
+  const blocks = own.map((block) =>
     blockZero(
       block,
       componentsOfBlock(action, components, symplectic.part, block.irreducible),
@@ -211,5 +217,17 @@ export function floatingLinear(prepared: FloatingPrepared & { readonly action: A
       prepared.tolerance,
     ),
   );
-  return { prepared, action, components, symplectic, scaling, numeric, hessian, form, scale, blocks };
+  return {
+    prepared,
+    action,
+    components,
+    symplectic,
+    scaling,
+    numeric,
+    hessian,
+    form,
+    scale,
+    blocks,
+    ...(slice === undefined ? {} : { slice }),
+  };
 }

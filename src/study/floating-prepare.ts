@@ -21,6 +21,7 @@ import {
   numericMultiplicityBasis,
 } from './floating-action.ts';
 import { labelledComponents } from './labels.ts';
+import { type FloatingNeutral, floatingNeutral } from './neutral-floating.ts';
 import type { GeneratorCheck, NotExact } from './prepare.ts';
 
 /** A declared point that polishing moves by more than this share of 1 + |x| is not near an equilibrium. */
@@ -51,6 +52,8 @@ export interface FloatingPrepared {
   readonly sizes: TermSizes;
   readonly local: FloatingLocal;
   readonly symmetryHolds: boolean;
+  /** Declared continuous symmetries. */
+  readonly neutral?: FloatingNeutral;
 }
 
 /** `--tolerance`, or the default. Throws InputError. */
@@ -234,6 +237,7 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
     const term = { ...change, monomials: [change.monomials[top]!], coefficients: [change.coefficients[top]!] };
     return fail(`H is not invariant under ${g.name}: H∘ρ − H contains ${ring.format(term)}`, false);
   });
+  const neutral = floatingNeutral(source, { point: equilibrium.point, hessian, local, scale, tolerance }, generators);
   return {
     source,
     because,
@@ -244,6 +248,7 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
     hessian,
     sizes,
     local,
+    ...(neutral === undefined ? {} : { neutral }),
     symmetryHolds: generators.every((g) => g.reason === undefined),
   };
 }

@@ -10,6 +10,7 @@ import { doubtOf, eventSpaces, type FloatingVersality, floatingVersality } from 
 import { type FloatingBlockZero, type FloatingStudy, floatingLinear } from './floating-linear.ts';
 import { type FloatingPrepared, prepareFloating, requireFloatingHolds } from './floating-prepare.ts';
 import { floatingSpectrumSummary } from './floating-spectrum.ts';
+import { cutBasis } from './neutral-floating.ts';
 import type { OutcomeStatus, StudyCommand } from './outcome.ts';
 import type { NotExact } from './prepare.ts';
 import type { CodimResult, InertiaSummary, StudyResult, VerdictSummary, ZeroSummary } from './result.ts';
@@ -50,7 +51,8 @@ function componentInertias(study: FloatingStudy) {
   const { components, hessian, numeric, prepared, scale } = study;
   const irreducibles = components.present.map((c) => c.irreducible);
   const cut = prepared.tolerance * scale;
-  return floatingComponentBases(components.whole, irreducibles, numeric).map(({ cut: width, basis }, i) => {
+  return floatingComponentBases(components.whole, irreducibles, numeric).map(({ cut: width, basis: whole }, i) => {
+    const basis = study.slice === undefined ? whole : cutBasis(study.slice, whole);
     const { values } = symmetricEigen(restrictNumeric(basis, hessian).data, basis.length);
     const copies = irreducibles[i]!.dimension / width;
     const count = (test: (x: number) => boolean) => values.filter(test).length;
@@ -138,7 +140,7 @@ export function floatingCodimResult(study: FloatingStudy, parameters: number): C
         };
   const answer: VerdictSummary =
     doubt === null
-      ? closed(verdict(facts, parameters), unfolds, readingWords(study))
+      ? closed(verdict(facts, parameters, study.slice?.neutral), unfolds, readingWords(study))
       : { answer: 'undecided', parameters, versal: null, because: `Undecided: ${doubt}. (${readingWords(study)}.)` };
   const zero: ZeroSummary | null =
     dimension === 0
@@ -191,7 +193,7 @@ export function floatingCodimResult(study: FloatingStudy, parameters: number): C
     ...floatingHead('codim', prepared, groupSummary(action, { generators: prepared.generators, declaration: prepared.source.declaration })),
     components: componentSummaries(components).map((c) => ({ ...c, inertia: counted.get(c.label)! })),
     inertia: wholeInertia(study),
-    neutral: { dimension: 0 },
+    neutral: study.slice === undefined ? { dimension: 0 } : { dimension: study.slice.neutral, directions: study.slice.directions },
     zero,
     ...floatingSpectrumSummary(study),
     verdict: answer,

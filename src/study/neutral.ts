@@ -17,7 +17,7 @@ export interface NeutralSymmetry {
   readonly found: boolean;
 }
 
-interface Generator {
+export interface SpanGenerator {
   readonly name: string;
   readonly matrix: SparseMatrix<Algebraic>;
   readonly sign: 1 | -1 | undefined;
@@ -32,7 +32,7 @@ export function neutralSymmetry(
   field: RealField,
   form: SparseMatrix<Algebraic>,
   point: readonly Algebraic[],
-  generators: readonly Generator[],
+  generators: readonly SpanGenerator[],
 ): NeutralSymmetry | undefined {
   if (quantities.neutral.length === 0 && !declaration.neutralFind) return undefined;
   const series = energySeries(hamiltonian, quantities, declaration.vary, field);
@@ -47,7 +47,7 @@ export function neutralSymmetry(
   if (!declaration.neutralFind) {
     const fields = quantities.neutral.map(embed);
     for (const xi of fields) requireSymmetry(xi, form, series, point, quantities, declaration.vary, declaration.source);
-    requireInvariantSpan(field, fields, good, point, names, declaration.source);
+    requireInvariantSpan(field, fields, good, names, declaration.source);
     return { fields: fields.map((x) => atPoint(field, x, point)), directions: fields.map((x) => fieldText(x, names, field)), found: false };
   }
   const found = findFields({
@@ -78,22 +78,21 @@ function conjugateTimes(g: SparseMatrix<Algebraic>, xi: AffineField): AffineFiel
   return { linear: sparseMultiply(g, xi.linear), value: sparseApply(g, xi.value) };
 }
 
-function requireInvariantSpan(
+/** Throws InputError naming a field and a generator that maps it out of the span. Exact. */
+export function requireInvariantSpan(
   field: RealField,
   fields: readonly VectorField[],
-  generators: readonly Generator[],
-  point: readonly Algebraic[],
+  generators: readonly SpanGenerator[],
   names: readonly string[],
   file: string,
 ): void {
-  const here = independentFields(
-    field,
-    fields.map((x) => atPoint(field, x, point)),
-  );
+  // about the origin: generators are linear, and the answer does not depend on the point
+  const shape = (x: VectorField): AffineField => ({ linear: x.linear, value: x.constant });
+  const here = independentFields(field, fields.map(shape));
   for (const g of generators)
     for (const xi of fields) {
       const right = here.map((x) => ({ linear: sparseMultiply(x.linear, g.matrix), value: x.value }));
-      const left = conjugateTimes(g.matrix, atPoint(field, xi, point));
+      const left = conjugateTimes(g.matrix, shape(xi));
       if (rank(fieldColumns(field, [...right, left])) === here.length) continue;
       throw new InputError(`the span of the neutral fields is not invariant: ${g.name} maps the field ${xi.where} to one outside it`, {
         file,

@@ -3,6 +3,7 @@ import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { readModelFile, readModelText } from '../../src/model/declaration/index.ts';
 import { codimResult, linearStudy } from '../../src/study/codim.ts';
+import { floatingCodimResult, floatingStudy } from '../../src/study/floating.ts';
 import { isExact, prepare } from '../../src/study/prepare.ts';
 import type { CodimResult } from '../../src/study/result.ts';
 
@@ -274,6 +275,51 @@ describe('neutral: find', () => {
     const result = codim('hamiltonian: p1^2/2 + c*q1^2/2 + q1^4\nparameters: {c: 0}\nvary: [c]\nneutral: find');
     expect(result.neutral.dimension).toBe(0);
     expect(result.zero!.codimension).toBe(1);
+  });
+});
+
+describe('floating numbers', () => {
+  const floating = (text: string) => floatingCodimResult(floatingStudy(notExact(text)), 1);
+  const notExact = (text: string) => {
+    const prepared = prepare(readModelText(`${text}\nnumbers: floating`));
+    if (isExact(prepared)) throw new Error('exact');
+    return prepared;
+  };
+  it.each(['vortex-heptagon-slice', 'water', 'methane'])('%s: the same slice and event as with exact numbers', (name) => {
+    const source = prepare({ ...readModelFile(`samples/${name}.yaml`), numbers: 'floating' });
+    if (isExact(source)) throw new Error('exact');
+    const result = floatingCodimResult(floatingStudy(source), 1);
+    const exact = sample(name);
+    expect(result.neutral).toEqual(exact.neutral);
+    expect(result.inertia).toEqual(exact.inertia);
+    const numbers = (z: CodimResult['zero']) =>
+      z === null ? null : [z.blocks, z.codimension, z.codimensionWithoutSymmetry, z.subgroups.map((s) => [s.order, s.codimension])];
+    expect(numbers(result.zero)).toEqual(numbers(exact.zero));
+    expect(result.verdict.answer).toBe(exact.verdict.answer);
+    expect(result.verdict.versal).toBeNull();
+  });
+  it('generators that are not orthogonal: the complement is invariant all the same', () => {
+    // three particles on a line in the coordinates q1, q2 − q1, q3 of the permuted model
+    const text = `hamiltonian: p1^2/2 + p2^2/2 + p3^2/2 + ((q1-q2)^2 + (q2-q3)^2 + (q3-q1)^2)/2
+symmetry: {generators: [{name: r, map: {q1: q3, q2: q1, q3: q2}}]}
+neutral: [{q1: 1, q2: 1, q3: 1}]`;
+    // q2 = q1 + x: symplectic, and the cyclic permutation becomes a shear
+    const sheared = `hamiltonian: (p1-p2)^2/2 + p2^2/2 + p3^2/2 + (q2^2 + (q1+q2-q3)^2 + (q3-q1)^2)/2
+symmetry: {generators: [{name: r, map: {q1: q3, q2: q1 - q3, q3: q1 + q2}}]}
+neutral: [{q1: 1, q3: 1}]`;
+    for (const t of [text, sheared]) {
+      expect(codim(t).inertia).toEqual({ positive: 4, zero: 0, negative: 0 });
+      expect(floating(t).inertia).toEqual({ positive: 4, zero: 0, negative: 0 });
+    }
+  });
+  it('wrong fields, and those that need exact numbers', () => {
+    const model = 'hamiltonian: (p1^2+p2^2)/2 + (q1-q2)^2/2 + (q1-q2)^3\n';
+    expect(() => floating(`${model}neutral: [{q1: 1}]`)).toThrow(/not invariant under the field neutral\[1\]/);
+    expect(() => floating(`${model}neutral: [{q1: q1, p1: p1}]`)).toThrow(/does not preserve/);
+    expect(() => floating(`${model}neutral: find`)).toThrow(/needs exact numbers/);
+    expect(() => floating('hamiltonian: (p1^2+p2^2)/2 + (q1^2+q2^2)^2\nneutral: [{q1: -q2, q2: q1}]')).toThrow(
+      /vanishes at the equilibrium/,
+    );
   });
 });
 
