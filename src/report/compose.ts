@@ -2,11 +2,13 @@
 import type { ResultObject } from '../study/outcome.ts';
 import { type Document, type Line, linesOf, type Section } from './document.ts';
 import type { ReferenceKey } from './references.ts';
+import { birkhoffSection } from './sections/birkhoff.ts';
+import { branchesSection } from './sections/branches.ts';
 import { classesSection, componentsSection } from './sections/components.ts';
 import { headlineOf, verdictSection } from './sections/headline.ts';
 import { hamiltonianSection, invariantsSection } from './sections/invariants.ts';
 import { modelSection, symmetrySection } from './sections/model.ts';
-import { birkhoffSection, branchesSection, reducedSection } from './sections/nonlinear.ts';
+import { reducedSection } from './sections/reduced.ts';
 import { collisionsSection, eventsSection, spectrumSection } from './sections/spectrum.ts';
 import { sweepSection } from './sections/sweep.ts';
 import { zeroSection } from './sections/zero.ts';

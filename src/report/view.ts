@@ -25,18 +25,26 @@ import type { IsotropyFigure } from './svg/lattice.ts';
 
 /** The reduced Hamiltonian on the kernel. */
 export interface ReducedView {
-  readonly leadingDegree: number;
+  readonly leadingDegree: number | null;
   readonly expression: string;
   readonly codimension: number | null;
   readonly moduli: number | null;
   readonly stratumCodimension: number | null;
   readonly unfolding: readonly string[];
   readonly determinedAt: number | string | null;
+  /** Degree to which it was computed. */
+  readonly degree?: number;
+  readonly coordinates?: readonly { readonly name: string; readonly vector: string }[];
   readonly invariants?: readonly { readonly name: string; readonly polynomial: string }[];
   /** Expressions that must not vanish. */
   readonly conditions?: readonly string[];
-  /** Kinetic part of a pair that splits. */
+  readonly moduliTerms?: readonly string[];
+  /** In the coordinates of the kernel, at the event. */
+  readonly polynomial?: string;
+  /** Kinetic part of a pair that splits, or brackets of the kernel coordinates where it passes. */
   readonly kinetic?: string;
+  readonly brackets?: readonly string[];
+  readonly generic?: boolean | null;
   readonly because?: string;
 }
 
@@ -52,11 +60,13 @@ export interface IsotropyView {
 
 export interface BranchView {
   readonly isotropyOrder: number;
+  readonly axial?: boolean;
   readonly copies: number;
   readonly direction: string | readonly Value[];
   readonly side: string | number;
   readonly morseIndex: number | null;
   readonly confirmed: boolean | null;
+  /** Amplitude as a power of the parameter. */
   readonly exponent?: string;
   readonly stability?: string;
 }
@@ -65,13 +75,31 @@ export interface CrossingView {
   readonly parameter: string;
   readonly value: number;
   readonly exact: string | null;
+  /** Defining polynomial of a value without closed form, and the value to 30 digits. */
+  readonly polynomial?: string;
+  readonly digits?: string;
   readonly component: string | readonly string[];
   readonly kernel: number;
   readonly motion: Motion;
-  readonly codimension: number;
+  readonly codimension: number | null;
+  readonly versal?: boolean | null;
+  readonly observed?: { readonly motion: string };
+  readonly agrees?: boolean | null;
   readonly inertiaBefore: InertiaSummary | readonly number[];
   readonly inertiaAfter: InertiaSummary | readonly number[];
-  readonly kind?: string;
+  readonly fold?: boolean;
+}
+
+/** Two eigenvalues off zero that meet along the parameter. */
+export interface MeetingView {
+  readonly parameter: string;
+  readonly at: number;
+  readonly kind: string;
+  readonly value: number;
+  readonly components: readonly string[];
+  readonly motion: Motion;
+  readonly codimension: number;
+  readonly signs?: readonly [number, number];
 }
 
 export interface BirkhoffView {
@@ -115,7 +143,17 @@ export interface ReportView {
   readonly birkhoff?: BirkhoffView | null;
   readonly isotropy?: readonly IsotropyView[];
   readonly branches?: readonly BranchView[];
+  /** The kernel coordinates and the parameter that branches speak of, and what is open about them. */
+  readonly parameter?: string;
+  readonly coordinates?: readonly { readonly name: string; readonly vector: string }[];
+  readonly undecided?: readonly string[];
+  readonly topologicalDegree?: { readonly below: number; readonly above: number } | null;
   readonly crossings?: readonly CrossingView[];
+  readonly meetings?: readonly MeetingView[];
+  readonly range?: { readonly parameter: string; readonly from: Value; readonly to: Value; readonly steps?: number };
+  readonly followed?: boolean;
+  readonly singular?: readonly string[];
+  readonly ends?: readonly string[];
   /** Pictures that a stage has prepared data for. */
   readonly paths?: EigenvalueFigure;
   readonly diagram?: BifurcationFigure;
@@ -128,6 +166,10 @@ export function viewOf(results: ResultObject | readonly ResultObject[]): ReportV
   const list = Array.isArray(results) ? (results as readonly ResultObject[]) : [results as ResultObject];
   const merged: Record<string, unknown> = {};
   for (const result of list)
-    for (const [key, value] of Object.entries(result)) if (value !== undefined && !Object.hasOwn(merged, key)) merged[key] = value;
+    for (const [name, value] of Object.entries(result)) {
+      // a sweep lists collisions along the parameter, every other command those at the point
+      const key = name === 'collisions' && result.command === 'sweep' ? 'meetings' : name;
+      if (value !== undefined && !Object.hasOwn(merged, key)) merged[key] = value;
+    }
   return { ...(merged as Omit<ReportView, 'commands'>), commands: list.map((result) => result.command) };
 }

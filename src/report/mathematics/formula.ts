@@ -65,8 +65,9 @@ export function list(items: readonly Formula[], open = '(', close = ')'): Formul
   };
 }
 
-/** The label of an irreducible. */
+/** The label of an irreducible, or several joined by plus signs. */
 export function label(text: string): Formula {
+  if (text.includes(' + ')) return labels(text.split(' + '));
   const latex = labelLatex(text);
   return latex === null ? words(text) : sign(text, latex, 0.7 + text.length * 0.45);
 }

@@ -65,6 +65,7 @@ function wrap(before: string, pieces: readonly Piece[], after: string): readonly
     const head = i === 0 ? before : '';
     const tail = i === last ? after : '';
     if (head === '' && tail === '') return piece;
+    if (head === '' && tail === '') return piece;
     return { latex: `${head}${piece.latex}${tail}`, ems: piece.ems + (head === '' ? 0 : 1) + (tail === '' ? 0 : 0.5), gap: piece.gap };
   });
 }
@@ -86,7 +87,7 @@ function wordPieces(text: string, limit: number): readonly Piece[] {
     .filter((word) => word !== '')
     .flatMap((word) =>
       cut(word, Math.min(limit, 8)).map(
-        (part, i): Piece => ({ latex: `\\text{${latexText(part)}}`, ems: part.length * 0.75, gap: i === 0 }),
+        (part, i): Piece => ({ latex: `\\text{${latexText(part)}}`, ems: part.length * 0.75, gap: i === 0, words: part }),
       ),
     );
 }

@@ -8,7 +8,7 @@ export interface GridColumn {
 
 const GAP = 2;
 /** A column is not squeezed below this. */
-const NARROWEST = 14;
+const NARROWEST = 9;
 const INDENT = '  ';
 
 /** Lines of a table, indented by two. */

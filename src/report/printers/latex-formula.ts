@@ -5,6 +5,8 @@ import { emsOf, type Formula, latexOf, latexPieces, relation } from '../mathemat
 /** Room in em of the text font. */
 export interface Layout {
   readonly line: number;
+  /** Lines of a table on one page. */
+  readonly lines: number;
   /** Wider formulas are not centred on a line of their own but set in ragged lines. */
   readonly display: number;
   /** No unbreakable piece is wider than this, within a line of text and in a display. */
@@ -13,9 +15,9 @@ export interface Layout {
 }
 
 /** The page of the standalone document: 160 mm at 10 points. */
-export const PAGE: Layout = { line: 45, display: 42, inlinePiece: 22, displayPiece: 28 };
+export const PAGE: Layout = { line: 45, lines: 36, display: 42, inlinePiece: 22, displayPiece: 28 };
 /** The lines of the standard classes at 10 to 12 points, where a fragment is to fit. */
-export const FRAGMENT: Layout = { line: 32.5, display: 30, inlinePiece: 16, displayPiece: 20 };
+export const FRAGMENT: Layout = { line: 32.5, lines: 24, display: 30, inlinePiece: 16, displayPiece: 20 };
 /** Matrices with more rows than this are given by their entries. */
 const MATRIX_ROWS = 26;
 

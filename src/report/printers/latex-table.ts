@@ -8,12 +8,12 @@ export interface LatexTable {
   readonly rows: readonly (readonly Line[])[];
   /** Width of the line in em. */
   readonly line: number;
+  /** Lines of text in one tabular; a longer table continues in another. */
+  readonly lines: number;
   readonly write: (line: Line, limit: number) => string;
   readonly width: (line: Line) => number;
 }
 
-/** Rows in one tabular; a longer table continues in another. */
-const ROWS = 36;
 /** A cell of more lines than this is no matter for a table. */
 const CELL_LINES = 7;
 /** Space between columns. */
@@ -42,8 +42,12 @@ export function tableLatex(table: LatexTable): string {
   const limitOf = (k: number): number => (widths[k]! < natural[k]! ? widths[k]! * 0.75 : Number.POSITIVE_INFINITY);
   const head = columns.map((c, k) => headCell(c, k, table, widths, heads)).join(' & ');
   const lines = rows.map((row) => `${row.map((cell, k) => table.write(cell, limitOf(k))).join(' & ')} \\\\`);
+  const heights = rows.map((row) => Math.max(1, ...row.map((cell, k) => Math.ceil((table.width(cell) * 1.1) / widths[k]! - 0.1))));
   const parts: string[] = [];
-  for (let i = 0; i < Math.max(1, lines.length); i += ROWS) {
+  for (let i = 0, end = 0; i < Math.max(1, lines.length); i = end) {
+    let height = 0;
+    for (end = i; end < lines.length && (end === i || height + heights[end]! <= table.lines); end++) height += heights[end]!;
+    end = Math.max(end, i + 1);
     const note = i === 0 ? table.caption : `${table.caption} (continued)`;
     parts.push(
       [
@@ -53,7 +57,7 @@ export function tableLatex(table: LatexTable): string {
         '\\toprule',
         `${head} \\\\`,
         '\\midrule',
-        ...lines.slice(i, i + ROWS),
+        ...lines.slice(i, end),
         '\\bottomrule',
         '\\end{tabular}}',
         '\\end{center}',

@@ -19,8 +19,8 @@ export interface LatexOptions {
 }
 
 const PACKAGES = ['amsmath', 'amssymb', 'array', 'booktabs', 'graphicx', 'xcolor'] as const;
-/** Sets its argument, scaled down where it is wider than the line. */
-const FIT = String.raw`\providecommand{\symcodimfit}[1]{\sbox0{#1}\ifdim\wd0>\linewidth\resizebox{\linewidth}{!}{\usebox0}\else\usebox0\fi}`;
+/** Sets its argument, scaled down where it is wider than the line or nearly as high as the page. */
+const FIT = String.raw`\providecommand{\symcodimfit}[1]{\sbox0{#1}\ifdim\wd0>\linewidth\sbox0{\resizebox{\linewidth}{!}{\usebox0}}\fi\ifdim\ht0>.8\textheight\resizebox{!}{.8\textheight}{\usebox0}\else\usebox0\fi}`;
 /** A line of a picture; the drawing operators of PDF, whichever engine writes it. */
 const DRAW = String.raw`\providecommand{\symcodimdraw}[1]{\ifdefined\pdfliteral\pdfliteral{q #1 Q}\else\ifdefined\pdfextension\pdfextension literal{q #1 Q}\else\special{pdf:literal q #1 Q}\fi\fi}`;
 
@@ -155,6 +155,7 @@ class Printer {
       columns,
       rows,
       line: this.layout.line,
+      lines: this.layout.lines,
       write: (line, limit) => this.line(line, limit),
       width: (line) => this.width(line),
     });

@@ -88,7 +88,8 @@ function inlineLatex(latex: string, cell: boolean): string {
 function displayLatex(formula: Formula): string {
   const pieces = latexPieces(formula, PIECE);
   if (pieces.length === 1) return pieces[0]!.latex;
-  return `\\begin{aligned}\n${pieces.map((piece, i) => `${i === 0 ? '&' : '&\\quad '}${piece.latex}`).join(' \\\\\n')}\n\\end{aligned}`;
+  const [head, ...rest] = formula.tree.kind === 'relation' ? pieces : [{ latex: '' }, ...pieces];
+  return `\\begin{aligned}\n${head!.latex} ${rest.map((piece, i) => `${i === 0 ? '&' : '&\\quad '}${piece.latex}`).join(' \\\\\n')}\n\\end{aligned}`;
 }
 
 /** Prose that shows as it is: no emphasis, links, HTML, formulas or headings of its own. */

@@ -3,11 +3,13 @@
  * words allow. What the headline has told is not told again, and explanations with their sources are left to the
  * other documents.
  */
-import type { Block, Document, Line } from '../document.ts';
+import type { Block, Document, Line, Section } from '../document.ts';
 import { gridLines } from './grid.ts';
 import { plainLine } from './lines.ts';
 import { columns, wrapWords } from './wrap.ts';
 
+/** Sections that repeat the declaration. */
+const DECLARED: readonly string[] = ['model', 'symmetry'];
 const WIDEST = 100;
 const NARROWEST = 40;
 const DEFAULT = 80;
@@ -78,7 +80,7 @@ export function printText(document: Document, width: number = DEFAULT): string {
       facts(headline.facts);
     }
   }
-  for (const section of document.sections) {
+  for (const section of terminalOrder(document.sections)) {
     // a terminal shows the verdict once, at the top
     if (section.id === 'verdict') continue;
     const heading = out.length;
@@ -100,6 +102,14 @@ export function printText(document: Document, width: number = DEFAULT): string {
     hang(document.caution, '', '');
   }
   return out.join('\n').trimEnd();
+}
+
+/** What was asked for stands before what was declared. */
+function terminalOrder(sections: readonly Section[]): readonly Section[] {
+  const answers = sections.filter((s) => !DECLARED.includes(s.id));
+  const event = answers.some((s) => s.id === 'zero-event' || s.id === 'events');
+  const context = answers.filter((s) => event && s.id === 'components');
+  return [...answers.filter((s) => !context.includes(s)), ...context, ...sections.filter((s) => DECLARED.includes(s.id))];
 }
 
 /** A matrix with aligned columns, or row by row where it is too wide. */

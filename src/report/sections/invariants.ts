@@ -1,8 +1,11 @@
 /** Molien series, generators of the invariant ring, relations, equivariants, and H in its invariants. */
-import { type Block, cite, column, type Line, math, type Section } from '../document.ts';
-import { type Formula, formula, relation, sign } from '../mathematics/index.ts';
+import { type Block, cite, column, type Line, math, paragraph, type Section } from '../document.ts';
+import { type Formula, formula, list, relation, sign } from '../mathematics/index.ts';
 import type { ReportView } from '../view.ts';
-import { count, integer } from './words.ts';
+import { count, integer, within } from './words.ts';
+
+/** Signs of polynomials in one list of a document; a reader wants no more. */
+const BUDGET = 20_000;
 
 interface Series {
   readonly numerator: readonly number[];
@@ -78,22 +81,28 @@ export function invariantsSection(view: ReportView): Section | null {
         view.proof === undefined || view.proof === '' ? '.' : `: ${view.proof}`,
       ],
     });
-    const readable = generators.some((g) => g.readable !== undefined);
+    const shown = within(generators, (g) => g.polynomial.length, BUDGET);
+    const readable = shown.some((g) => g.readable !== undefined);
     blocks.push({
       kind: 'table',
       caption: 'Generators of the ring of invariants.',
       columns: [column('name'), column('degree', 'right'), column('polynomial'), ...(readable ? [column('short form')] : [])],
-      rows: generators.map((g): readonly Line[] => [
+      rows: shown.map((g): readonly Line[] => [
         [math(formula(g.name))],
         [integer(g.degree)],
         [math(formula(g.polynomial))],
         ...(readable ? [g.readable === undefined ? ['–'] : [math(formula(g.readable))]] : []),
       ]),
     });
+    blocks.push(...rest(generators.length - shown.length, 'generator'));
   }
   if (view.relations !== undefined && view.relations.length > 0) {
     blocks.push({ kind: 'paragraph', line: [`${count(view.relations.length, 'relation')} among them:`] });
-    blocks.push(...view.relations.map((r): Block => ({ kind: 'display', formula: equation(r) })));
+    const shown = within(view.relations, (r) => r.length, BUDGET);
+    blocks.push(
+      ...shown.map((r): Block => ({ kind: 'display', formula: equation(r) })),
+      ...rest(view.relations.length - shown.length, 'relation'),
+    );
   }
   if (view.equivariants !== undefined) {
     blocks.push({
@@ -101,19 +110,23 @@ export function invariantsSection(view: ReportView): Section | null {
       line: ['Equivariant vector fields, counted by degree ', cite('golubitsky-stewart-schaeffer-1988'), ':'],
     });
     blocks.push(...seriesBlocks('E(t)', 'E(t)', view.equivariants));
-    const fields = view.equivariants.generators ?? [];
+    const all = view.equivariants.generators ?? [];
+    const fields = within(all, (f) => f.field.join().length, BUDGET);
     if (fields.length > 0)
       blocks.push({
         kind: 'table',
         caption: 'Generators of the equivariant vector fields as a module over the invariants.',
         columns: [column('degree', 'right'), column('field')],
-        rows: fields.map((f) => [
-          [integer(f.degree)],
-          f.field.flatMap((x, i): Line => (i === 0 ? [math(formula(x))] : [', ', math(formula(x))])),
-        ]),
+        rows: fields.map((f) => [[integer(f.degree)], [math(list(f.field.map((x) => formula(x))))]]),
       });
+    blocks.push(...rest(all.length - fields.length, 'field'));
   }
   return { id: 'invariants', title: 'Invariants', blocks };
+}
+
+/** What a list leaves out. */
+function rest(missing: number, noun: string): readonly Block[] {
+  return missing === 0 ? [] : [paragraph(`${count(missing, `further ${noun}`)} ${missing === 1 ? 'is' : 'are'} left to the JSON result.`)];
 }
 
 /** A relation is a polynomial that vanishes, unless it is an equation already. */

@@ -1,48 +1,15 @@
 /** Along a parameter: where components meet zero or collide, and the pictures of it. */
-import { type Block, column, type Line, math, type Section } from '../document.ts';
-import { formula, sign } from '../mathematics/index.ts';
-import type { ReportView } from '../view.ts';
-import { components, inertia, integer } from './words.ts';
+import { type Block, column, type Line, math, paragraph, type Section } from '../document.ts';
+import { formula, label, relation, sign } from '../mathematics/index.ts';
+import type { CrossingView, ReportView } from '../view.ts';
+import { components, inertia, integer, orDash, pair, yesNo } from './words.ts';
 
 export function sweepSection(view: ReportView): Section | null {
-  const crossings = view.crossings;
-  if (crossings === undefined) return null;
-  const blocks: Block[] = [];
-  if (crossings.length === 0) blocks.push({ kind: 'paragraph', line: ['No eigenvalue meets zero in the range.'] });
-  else {
-    const kinds = crossings.some((c) => c.kind !== undefined);
-    blocks.push({
-      kind: 'table',
-      caption: 'Events along the parameter, with the inertia of S (positive, zero, negative) on both sides.',
-      columns: [
-        column('at'),
-        ...(kinds ? [column('event')] : []),
-        column('component'),
-        column('kernel', 'right'),
-        column('motion'),
-        column('codimension', 'right'),
-        column('before'),
-        column('after'),
-      ],
-      rows: crossings.map((c): readonly Line[] => [
-        [
-          math(formula(c.parameter)),
-          ' ',
-          ...(c.exact === null || c.exact === undefined ? [] : [math(sign('=', '=', 1)), ' ', math(formula(c.exact)), ' ']),
-          math(sign('~', '\\approx', 1)),
-          ' ',
-          math(formula(c.value)),
-        ],
-        ...(kinds ? [[c.kind ?? 'zero']] : []),
-        components(typeof c.component === 'string' ? [c.component] : c.component),
-        [integer(c.kernel)],
-        [c.motion],
-        [integer(c.codimension)],
-        [inertia(c.inertiaBefore)],
-        [inertia(c.inertiaAfter)],
-      ]),
-    });
-  }
+  if (view.crossings === undefined) return null;
+  const blocks: Block[] = [...rangeBlocks(view), ...crossingBlocks(view.crossings), ...meetingBlocks(view)];
+  for (const name of view.singular ?? [])
+    blocks.push(paragraph('The block of ', math(label(name)), ' is singular for every value of the parameter.'));
+  if (view.ends !== undefined && view.ends.length > 0) blocks.push({ kind: 'list', items: view.ends.map((words) => [words]) });
   if (view.paths !== undefined)
     blocks.push({
       kind: 'figure',
@@ -52,4 +19,106 @@ export function sweepSection(view: ReportView): Section | null {
   if (view.chart !== undefined)
     blocks.push({ kind: 'figure', figure: view.chart, caption: 'Curves in the plane of two parameters on which a component meets zero.' });
   return { id: 'sweep', title: 'Along the parameter', blocks };
+}
+
+function rangeBlocks(view: ReportView): readonly Block[] {
+  if (view.range === undefined) return [];
+  const { parameter, from, to, steps } = view.range;
+  return [
+    paragraph(
+      math(formula(parameter)),
+      ' runs from ',
+      math(formula(from)),
+      ' to ',
+      math(formula(to)),
+      ...(steps === undefined ? [] : [' in ', integer(steps), ' steps']),
+      view.followed === true
+        ? '; the equilibrium moves and is followed.'
+        : view.followed === false
+          ? '; the equilibrium stays where it is.'
+          : '.',
+    ),
+  ];
+}
+
+function place(c: CrossingView): Line {
+  const value = math(formula(c.value));
+  return c.exact === null || c.exact === undefined
+    ? [math(relation(formula(c.parameter), '~', formula(c.value)))]
+    : [math(relation(formula(c.parameter), '=', formula(c.exact))), ' ', math(sign('~', '\\approx', 1)), ' ', value];
+}
+
+function crossingBlocks(crossings: readonly CrossingView[]): readonly Block[] {
+  if (crossings.length === 0) return [paragraph('No eigenvalue meets zero in the range.')];
+  const observed = crossings.some((c) => c.observed !== undefined);
+  const versal = crossings.some((c) => c.versal !== undefined && c.versal !== null);
+  const table: Block = {
+    kind: 'table',
+    caption: 'Zero events along the parameter, with the inertia of S (positive, zero, negative) on both sides.',
+    columns: [
+      column('at'),
+      column('component'),
+      column('kernel', 'right'),
+      column('motion'),
+      ...(observed ? [column('observed')] : []),
+      column('codimension', 'right'),
+      ...(versal ? [column('versal')] : []),
+      column('before'),
+      column('after'),
+    ],
+    rows: crossings.map((c): readonly Line[] => [
+      place(c),
+      components(typeof c.component === 'string' ? [c.component] : c.component),
+      [integer(c.kernel)],
+      [c.motion],
+      ...(observed ? [[`${c.observed?.motion ?? '–'}${c.agrees === false ? ' (not as predicted)' : ''}`]] : []),
+      orDash(c.codimension),
+      ...(versal ? [[c.versal === undefined || c.versal === null ? '–' : yesNo(c.versal)]] : []),
+      [inertia(c.inertiaBefore)],
+      [inertia(c.inertiaAfter)],
+    ]),
+  };
+  const notes = crossings.flatMap((c): readonly Line[] => {
+    const out: Line[] = [];
+    if (c.fold === true) out.push(['At ', ...place(c), ' the branch of equilibria turns back.']);
+    if (c.polynomial !== undefined)
+      out.push([
+        'The value ',
+        math(formula(c.digits ?? c.value)),
+        ' is a root of ',
+        math(formula(c.polynomial)),
+        '; it has no closed form here.',
+      ]);
+    return out;
+  });
+  return notes.length === 0 ? [table] : [table, { kind: 'list', items: notes }];
+}
+
+function meetingBlocks(view: ReportView): readonly Block[] {
+  const meetings = view.meetings ?? [];
+  if (meetings.length === 0) return [];
+  return [
+    {
+      kind: 'table',
+      caption: 'Eigenvalues that meet off zero along the parameter; the value is the frequency or the rate.',
+      columns: [
+        column('at'),
+        column('kind'),
+        column('value', 'right'),
+        column('components'),
+        column('motion'),
+        column('codimension', 'right'),
+        column('signs'),
+      ],
+      rows: meetings.map((m): readonly Line[] => [
+        [math(relation(formula(m.parameter), '~', formula(m.at)))],
+        [m.kind],
+        [math(formula(m.value))],
+        components(m.components),
+        [m.motion],
+        [integer(m.codimension)],
+        m.signs === undefined ? ['–'] : [pair(m.signs)],
+      ]),
+    },
+  ];
 }

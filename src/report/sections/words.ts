@@ -54,3 +54,20 @@ export const motionSentence = (motion: Motion): string => MOTIONS[motion];
 
 /** A number of parameters in words. */
 export const inParameters = (n: number): string => `in ${n === 1 ? 'one parameter' : `${numberText(n)} parameters`}`;
+
+/** Expressions with commas between them. */
+export const sideBySide = (texts: readonly string[]): Inline =>
+  math(
+    list(
+      texts.map((text) => formula(text)),
+      '',
+      '',
+    ),
+  );
+
+/** As many items from the beginning as have no more than `budget` signs together; at least one. */
+export function within<T>(items: readonly T[], length: (item: T) => number, budget: number): readonly T[] {
+  let total = 0;
+  const end = items.findIndex((item) => (total += length(item)) > budget);
+  return end < 0 ? items : items.slice(0, Math.max(1, end));
+}

@@ -1,8 +1,11 @@
 /** The zero event: kernel, Jordan blocks, codimension by two routes, under every class of subgroups, unfolding. */
 import { type Block, cite, column, type Line, math, type Section } from '../document.ts';
-import { formula, label, sign } from '../mathematics/index.ts';
+import { formula, label, relation } from '../mathematics/index.ts';
 import type { ReportView } from '../view.ts';
-import { components, count, inertia, integer, motionSentence, orDash, partition } from './words.ts';
+import { components, count, inertia, integer, motionSentence, orDash, partition, within } from './words.ts';
+
+/** Signs of unfolding terms in a document. */
+const BUDGET = 8000;
 
 export function zeroSection(view: ReportView): Section | null {
   const zero = view.zero;
@@ -159,23 +162,16 @@ function subgroupBlocks(view: ReportView): readonly Block[] {
 function unfoldingBlocks(view: ReportView): readonly Block[] {
   const zero = view.zero!;
   const blocks: Block[] = [];
-  const part = (terms: readonly string[] | undefined, words: string) => {
+  const part = (terms: readonly string[] | undefined, words: string, letter: string) => {
     if (terms === undefined || terms.length === 0) return;
+    const shown = within(terms, (t) => t.length, BUDGET);
     blocks.push({ kind: 'paragraph', line: [words] });
-    blocks.push(
-      ...terms.map(
-        (t, i): Block => ({
-          kind: 'display',
-          formula: {
-            text: `h${i + 1} = ${formula(t).text}`,
-            tree: { kind: 'relation', left: sign('', `h_{${i + 1}}`, 1).tree, relation: '=', right: formula(t).tree },
-          },
-        }),
-      ),
-    );
+    blocks.push(...shown.map((t, i): Block => ({ kind: 'display', formula: relation(formula(`${letter}${i + 1}`), '=', formula(t)) })));
+    if (shown.length < terms.length)
+      blocks.push({ kind: 'paragraph', line: [`${terms.length - shown.length} more are left to the JSON result.`] });
   };
-  part(zero.unfolding, 'A versal unfolding in the symmetric class adds combinations of these quadratic Hamiltonians:');
-  part(zero.unfoldingWithoutSymmetry, 'Without symmetry it takes all of these:');
+  part(zero.unfolding, 'A versal unfolding in the symmetric class adds combinations of these quadratic Hamiltonians:', 'h');
+  part(zero.unfoldingWithoutSymmetry, 'Without symmetry it takes all of these:', 'k');
   return blocks;
 }
 

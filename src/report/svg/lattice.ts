@@ -28,8 +28,25 @@ const MARGIN_LEFT = 58;
 /** At most so many nodes side by side; a fuller level goes over several lines. */
 const PER_LINE = 6;
 
+/** More nodes than this are gathered: those of one level that say the same become one. */
+const MOST = 30;
+
+function gathered(nodes: readonly LatticeNode[]): readonly LatticeNode[] {
+  if (nodes.length <= MOST) return nodes;
+  const keyOf = (n: LatticeNode) => [n.level, n.detail, n.mark, n.good].join(' ');
+  const keys = [...new Set(nodes.map(keyOf))];
+  return keys.map((key) => {
+    const members = nodes.filter((n) => keyOf(n) === key);
+    const first = members[0]!;
+    const above = new Set(members.flatMap((n) => n.above.map((a) => keys.indexOf(keyOf(nodes[a] ?? first)))));
+    above.delete(keys.indexOf(key));
+    return { ...first, label: members.length === 1 ? first.label : `${first.label} (${members.length})`, above: [...above] };
+  });
+}
+
 /** Draws the diagram. Nodes on the same level are put below the middle of what contains them. */
-export function drawLattice(figure: IsotropyFigure): Scene {
+export function drawLattice(given: IsotropyFigure): Scene {
+  const figure = { ...given, nodes: gathered(given.nodes) };
   const levels = [...new Set(figure.nodes.map((n) => n.level))].sort((a, b) => b - a);
   const rows: { level: number; first: boolean; members: number[] }[] = [];
   for (const level of levels) {
