@@ -172,7 +172,7 @@ function eventSpace(study: FloatingStudy, zero: FloatingBlockZero): EventSpace {
   });
   const tangent = imageOf(
     numberBuild(places(d).length, images.length, (i, j) => images[j]![i]!),
-    zero.scale,
+    zero.scale > 0 ? zero.scale : 1,
     study.prepared.tolerance * 10,
     readings,
   );
@@ -196,6 +196,7 @@ export function doubtOf(readings: readonly Reading[]): string | null {
 export interface FloatingVersality {
   /** null where the numbers do not decide. */
   readonly versal: boolean | null;
+  readonly alongBranch: boolean;
   readonly spanned: number;
   readonly codimension: number;
   readonly onto: boolean;
@@ -205,9 +206,17 @@ export interface FloatingVersality {
 /** Versality of the family, as event/versality.ts decides it exactly. */
 export function floatingVersality(study: FloatingStudy, spaces: readonly EventSpace[], codimension: number): FloatingVersality {
   if (study.slice !== undefined && study.slice.neutral > 0)
-    return { versal: null, spanned: 0, codimension, onto: false, doubt: 'beside neutral directions it is decided for exact numbers only' };
-  const { prepared, scaling, hessian, scale } = study;
+    return {
+      versal: null,
+      alongBranch: false,
+      spanned: 0,
+      codimension,
+      onto: false,
+      doubt: 'beside neutral directions it is decided for exact numbers only',
+    };
+  const { prepared, scaling, hessian } = study;
   const { local, tolerance } = prepared;
+  const scale = study.scale > 0 ? study.scale : 1;
   const n = scaling.length;
   const readings: Reading[] = [];
   // units of each parameter such that its largest derivative is the scale
@@ -216,13 +225,14 @@ export function floatingVersality(study: FloatingStudy, spaces: readonly EventSp
     const g = local.gradientBy[k]!.map((x, i) => x * scaling[i]!);
     const size = Math.max(largestEntry(h), ...g.map(Math.abs));
     const unit = size > 0 ? scale / size : 1;
-    return { hessian: numberScale(h, unit), gradient: g.map((x) => x * unit) };
+    return { unit, hessian: numberScale(h, unit), gradient: g.map((x) => x * unit) };
   });
   const fixed = fixedColumns(prepared.components!, study.numeric);
   const f = fixed.cols;
   const k = by.length;
   const tangents: { x: Float64Array; mu: Float64Array }[] = [];
   let onto = true;
+  let alongBranch = false;
   if (f === 0) {
     const unit = (j: number) => Float64Array.from({ length: k }, (_, i) => (i === j ? 1 : 0));
     tangents.push(...by.map((_, j) => ({ x: new Float64Array(n), mu: unit(j) })));
@@ -247,6 +257,13 @@ export function floatingVersality(study: FloatingStudy, spaces: readonly EventSp
       const x = new Float64Array(n);
       for (let i = 0; i < n; i++) for (let a = 0; a < f; a++) x[i]! += fixed.data[i * f + a]! * v.data[a * (f + k) + c]!;
       tangents.push({ x, mu: Float64Array.from({ length: k }, (_, j) => v.data[(f + j) * (f + k) + c]!) });
+    }
+    if (!onto) {
+      // the declared branch, where it is one to first order
+      const branch = prepared.branch.map((x, j) => x.map((y, i) => (y / scaling[i]!) * by[j]!.unit));
+      const left = branch.map((x, j) => numberMultiply(hessian, numberMatrix(n, 1, x)).data.map((y, i) => y + by[j]!.gradient[i]!));
+      alongBranch = left.every((v) => largestEntry(numberMatrix(n, 1, v)) <= tolerance * scale);
+      if (alongBranch) tangents.push(...branch.map((x, j) => ({ x, mu: Float64Array.from({ length: k }, (_, i) => (i === j ? 1 : 0)) })));
     }
   }
   const rows = tangents.map(({ x, mu }) => {
@@ -287,5 +304,6 @@ export function floatingVersality(study: FloatingStudy, spaces: readonly EventSp
     spanned = r.nonzero.length;
   }
   const doubt = doubtOf([...readings, ...spaces.flatMap((x) => x.readings)]);
-  return { versal: doubt === null ? onto && spanned === codimension : null, spanned, codimension, onto, doubt };
+  const versal = (onto || alongBranch) && spanned === codimension;
+  return { versal: doubt === null ? versal : null, alongBranch: alongBranch && versal, spanned, codimension, onto, doubt };
 }

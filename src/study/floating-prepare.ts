@@ -7,7 +7,7 @@ import { InputError, NotAnEquilibriumError, NotInvariantError } from '../errors/
 import { DEFAULT_TOLERANCE } from '../event/floating/readings.ts';
 import { largestEntry, type NumberMatrix, numberCombine, numberMatrix } from '../linear/index.ts';
 import { symmetricEigen } from '../linear/spectral.ts';
-import { doubles, parseExpression } from '../model/expression/index.ts';
+import { doubles, gradientNumeric, parseExpression } from '../model/expression/index.ts';
 import type { TermSizes } from '../model/floating-addends.ts';
 import { energyOfExpression, type FloatingEnergy, type FloatingLocal } from '../model/floating-energy.ts';
 import { energyOfMatrices } from '../model/floating-matrices.ts';
@@ -51,6 +51,8 @@ export interface FloatingPrepared {
   readonly hessian: NumberMatrix;
   readonly sizes: TermSizes;
   readonly local: FloatingLocal;
+  /** Derivative of the declared point by each varied parameter. */
+  readonly branch: readonly Float64Array[];
   readonly symmetryHolds: boolean;
   /** Declared continuous symmetries. */
   readonly neutral?: FloatingNeutral;
@@ -143,6 +145,18 @@ function polish(energy: FloatingEnergy, declared: Float64Array, fixed: readonly 
     iterations,
     point: x,
   };
+}
+
+/** x'(μ) of the declared equilibrium. */
+function branchDerivatives(source: NotExact, values: ReadonlyMap<string, number>): Float64Array[] {
+  const { names, pointExpressions } = source.quantities;
+  const parameters = [...values.keys()];
+  const at = [...values.values()];
+  const gradients = names.map((name) => {
+    const e = pointExpressions.get(name);
+    return e === undefined ? undefined : gradientNumeric(e, parameters)(at);
+  });
+  return source.declaration.vary.map((v) => Float64Array.from(gradients, (g) => g?.[parameters.indexOf(v)] ?? 0));
 }
 
 /** Reads a floating model. Throws InputError for what cannot be read; checks that fail are recorded. */
@@ -249,6 +263,7 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
     sizes,
     local,
     ...(neutral === undefined ? {} : { neutral }),
+    branch: branchDerivatives(source, values),
     symmetryHolds: generators.every((g) => g.reason === undefined),
   };
 }

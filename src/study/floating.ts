@@ -135,8 +135,7 @@ export function floatingCodimResult(study: FloatingStudy, parameters: number): C
           codimensionWithoutSymmetry: without!,
           motion,
           kernelComponents,
-          versality:
-            unfolds === undefined || unfolds.versal === null ? undefined : { ...unfolds, versal: unfolds.versal, alongBranch: false },
+          versality: unfolds === undefined || unfolds.versal === null ? undefined : { ...unfolds, versal: unfolds.versal },
         };
   const answer: VerdictSummary =
     doubt === null

@@ -42,7 +42,9 @@ export function stabilityWords(f: StabilityFacts): string {
   const { positive, zero, negative } = f.inertia;
   const lines: string[] = [];
   if (positive + zero + negative === 0) return 'Nothing moves off the neutral directions.';
-  if (zero === 0 && (negative === 0 || positive === 0))
+  if (positive === 0 && negative === 0)
+    lines.push(`The Hessian vanishes${place}: the energy criterion does not decide; terms of higher order do.`);
+  else if (zero === 0 && (negative === 0 || positive === 0))
     lines.push(
       `The Hessian is ${negative === 0 ? 'positive' : 'negative'} definite${place}: the equilibrium is ${f.neutral > 0 ? 'nonlinearly stable modulo its continuous symmetry' : 'nonlinearly stable'} by the energy criterion (Lagrange–Dirichlet).`,
     );
