@@ -5,6 +5,7 @@ import type { ReferenceKey } from './references.ts';
 import { birkhoffSection } from './sections/birkhoff.ts';
 import { branchesSection } from './sections/branches.ts';
 import { classesSection, componentsSection } from './sections/components.ts';
+import { foundSection } from './sections/found.ts';
 import { headlineOf, verdictSection } from './sections/headline.ts';
 import { hamiltonianSection, invariantsSection } from './sections/invariants.ts';
 import { modelSection, symmetrySection } from './sections/model.ts';
@@ -18,6 +19,7 @@ import { type ReportView, viewOf } from './view.ts';
 const SECTIONS: readonly ((view: ReportView) => Section | null)[] = [
   modelSection,
   symmetrySection,
+  foundSection,
   componentsSection,
   classesSection,
   zeroSection,

@@ -2,6 +2,7 @@
  * What a report can say, gathered from one result or from the results of several stages: each key is taken
  * from the first result that has it, so the stages may come in any selection.
  */
+import type { FoundSymmetry } from '../study/find.ts';
 import type { ResultObject } from '../study/outcome.ts';
 import type {
   ClassSummary,
@@ -121,6 +122,7 @@ export interface ReportView {
   readonly group?: StudyResult['group'];
   readonly equilibrium?: StudyResult['equilibrium'];
   readonly symmetry?: StudyResult['symmetry'];
+  readonly found?: FoundSymmetry;
   readonly caution?: string;
   readonly components?: readonly ComponentSummary[];
   readonly classes?: readonly ClassSummary[];
