@@ -19,10 +19,17 @@ export interface BirkhoffInput {
   /** ω(u,v) = uᵀ W v. */
   readonly form: Matrix<Algebraic>;
   readonly degree: number;
+  /**
+   * Linear forms on phase space that modes should be taken from where they are equally good, e.g. symmetry-adapted coordinates;
+   * without them the coordinates themselves come first.
+   */
+  readonly preferred?: readonly (readonly Algebraic[])[];
 }
 
 /** Relative size of ω·k below which floating frequencies count as resonant. */
 export const RESONANCE_TOLERANCE = 1e-9;
+/** Size of a floating coefficient, against the largest of its degree, below which it counts as rounding. */
+const ROUNDING = 1e-11;
 
 export interface BirkhoffForm<T> {
   readonly field: OrderedField<T>;
@@ -47,7 +54,7 @@ export function birkhoffNormalForm(input: BirkhoffInput): AnyBirkhoffForm {
     const c = ring.coefficient(quadratic, i <= j ? String.fromCharCode(i, j) : String.fromCharCode(j, i));
     return i === j ? field.add(c, c) : c;
   });
-  const d = diagonalise(hessian, form);
+  const d = diagonalise(hessian, form, input.preferred);
   if (d.field.exact) {
     const own = d as Diagonalisation<Algebraic>;
     const to = own.field as RealField;
@@ -125,7 +132,14 @@ function normalise<T>(input: BirkhoffInput, { field: f, modes }: Diagonalisation
     }
     parts = next;
   }
-  return { field: f, modes, ring, normalForm: ring.sum(parts), degree };
+  return { field: f, modes, ring, normalForm: ring.sum(f.exact ? parts : parts.map((p) => withoutRounding(ring, f, p))), degree };
+}
+
+/** A homogeneous part without the terms that are rounding. */
+function withoutRounding<T>(ring: PolynomialRing<Gaussian<T>>, f: OrderedField<T>, p: Polynomial<Gaussian<T>>): Polynomial<Gaussian<T>> {
+  const size = (c: Gaussian<T>) => Math.hypot(f.toNumber(c.re), f.toNumber(c.im));
+  const largest = p.coefficients.reduce((s, c) => Math.max(s, size(c)), 0);
+  return ring.fromTerms([...ring.terms(p)].filter(([, c]) => size(c) > ROUNDING * largest));
 }
 
 /** {f, g}. */

@@ -1,5 +1,5 @@
 /**
- * Symplectic diagonalisation at an elliptic equilibrium without square roots of normalisation: linear forms ζ = a + i b with
+ * Symplectic diagonalisation at an elliptic equilibrium; brackets are normalised where the root lies in the field: linear forms ζ = a + i b with
  * {ζ, H2} = -iω ζ and {ζ, ζ̄} = -2i c, c > 0, so that H2 = Σ ω |ζ|²/(2c); the sign of ω is that of the energy of the mode
  * (Krein's sign). (K. R. Meyer, G. R. Hall, D. Offin, Introduction to Hamiltonian Dynamical Systems and the N-Body Problem,
  * 2009; place from memory.)
@@ -101,9 +101,13 @@ function simplest(low: Rational, high: Rational): Rational {
 
 /**
  * Modes of H2 = ½ xᵀ S x with x' = J S x, J = W⁻ᵀ. Exact where the squares of all frequencies are rational (the field is extended by
- * their roots), in doubles otherwise. Throws InputError unless the equilibrium is elliptic and semisimple.
+ * their roots), in doubles otherwise. Modes are taken from the `preferred` forms that lie in an eigenspace, as far as they go. Throws InputError unless the equilibrium is elliptic and semisimple.
  */
-export function diagonalise(hessian: Matrix<Algebraic>, form: Matrix<Algebraic>): Diagonalisation<Algebraic> | Diagonalisation<number> {
+export function diagonalise(
+  hessian: Matrix<Algebraic>,
+  form: Matrix<Algebraic>,
+  preferred: readonly (readonly Algebraic[])[] = [],
+): Diagonalisation<Algebraic> | Diagonalisation<number> {
   const field = hessian.field as RealField;
   const poisson = transpose(inverse(form));
   const l = multiply(poisson, hessian);
@@ -112,11 +116,33 @@ export function diagonalise(hessian: Matrix<Algebraic>, form: Matrix<Algebraic>)
     const extended = list.reduce((f, s) => RealField.join(f, RealField.of({ squareRoots: [s.exact!.n * s.exact!.d] })), field);
     const lift = (m: Matrix<Algebraic>) => mapMatrix(m, extended, (x) => extended.embed(field, x));
     const frequencies = list.map((s) => ({ value: extended.sqrt(s.exact!)!, multiplicity: s.multiplicity / 2 }));
-    return { field: extended, modes: modesOf(extended, lift(l), lift(poisson), frequencies, (m) => kernel(m)) };
+    return {
+      field: extended,
+      modes: modesOf(
+        extended,
+        lift(l),
+        lift(poisson),
+        frequencies,
+        (m) => kernel(m),
+        preferred.map((v) => v.map((x) => extended.embed(field, x))),
+        (c) => extended.sqrtElement(c),
+      ),
+    };
   }
   const toDoubles = (m: Matrix<Algebraic>) => mapMatrix(m, doubles, (x) => field.toNumber(x));
   const frequencies = list.map((s) => ({ value: Math.sqrt(s.value), multiplicity: s.multiplicity / 2 }));
-  return { field: doubles, modes: modesOf(doubles, toDoubles(l), toDoubles(poisson), frequencies, floatingKernel) };
+  return {
+    field: doubles,
+    modes: modesOf(
+      doubles,
+      toDoubles(l),
+      toDoubles(poisson),
+      frequencies,
+      floatingKernel,
+      preferred.map((v) => v.map((x) => field.toNumber(x))),
+      Math.sqrt,
+    ),
+  };
 }
 
 function modesOf<T>(
@@ -125,19 +151,28 @@ function modesOf<T>(
   poisson: Matrix<T>,
   frequencies: readonly { readonly value: T; readonly multiplicity: number }[],
   nullSpace: (m: Matrix<T>, dimension: number) => Matrix<T>,
+  preferred: readonly (readonly T[])[],
+  root: (c: T) => T | undefined,
 ): Mode<T>[] {
   const lt = transpose(l);
   const n = l.rows;
   const dot = (x: readonly T[], y: readonly T[]) => x.reduce((s, v, i) => f.add(s, f.mul(v, y[i]!)), f.zero);
   const modes: Mode<T>[] = [];
   for (const { value: w, multiplicity } of frequencies) {
-    const space = nullSpace(sumOf(multiply(lt, lt), scale(identity(f, n), f.mul(w, w))), 2 * multiplicity);
+    const shifted = sumOf(multiply(lt, lt), scale(identity(f, n), f.mul(w, w)));
+    const space = nullSpace(shifted, 2 * multiplicity);
+    const size = (x: readonly T[]) => x.reduce((m, v) => Math.max(m, Math.abs(f.toNumber(v))), 0);
+    const vanishes = (x: readonly T[], against: number) => (f.exact ? x.every((v) => f.isZero(v)) : size(x) <= 1e-9 * against);
+    const inside = preferred.filter((v) => vanishes(apply(shifted, v), size(v) * f.toNumber(f.mul(w, w))));
     if (space.cols !== 2 * multiplicity) throw notElliptic();
     const partner = (a: readonly T[]) => apply(lt, a).map((x) => f.div(x, w));
     const bracket = (a: readonly T[], b: readonly T[]) => dot(a, apply(poisson, b));
     // the symmetric form a ↦ {a, b(a')}
     const product = (a: readonly T[], c: readonly T[]) => bracket(a, partner(c));
-    let pool = Array.from({ length: space.cols }, (_, j) => Array.from({ length: n }, (_, i) => at(space, i, j)));
+    let pool = [
+      ...inside.map((v) => v.slice()),
+      ...Array.from({ length: space.cols }, (_, j) => Array.from({ length: n }, (_, i) => at(space, i, j))),
+    ];
     for (let k = 0; k < multiplicity; k++) {
       const candidates = [...pool, ...pool.flatMap((x, i) => pool.slice(i + 1).map((y) => x.map((v, t) => f.add(v, y[t]!))))];
       const best = f.exact
@@ -147,18 +182,22 @@ function modesOf<T>(
       const b = partner(best);
       const c = product(best, best);
       const positive = f.sign(c) > 0;
+      const magnitude = positive ? c : f.neg(c);
+      // bracket 1 where its root is at hand
+      const divisor = root(magnitude);
+      const by = (x: readonly T[], negative: boolean) =>
+        x.map((v) => (divisor === undefined ? (negative ? f.neg(v) : v) : f.div(negative ? f.neg(v) : v, divisor)));
       modes.push({
         frequency: positive ? w : f.neg(w),
-        a: best,
-        b: positive ? b : b.map((x) => f.neg(x)),
-        bracket: positive ? c : f.neg(c),
+        a: by(best, false),
+        b: by(b, !positive),
+        bracket: divisor === undefined ? magnitude : f.one,
       });
       const project = (x: readonly T[]) => {
         const s = f.div(product(x, best), c);
         const t = f.div(product(x, b), c);
         return x.map((v, i) => f.sub(v, f.add(f.mul(s, best[i]!), f.mul(t, b[i]!))));
       };
-      const size = (x: readonly T[]) => x.reduce((m, v) => Math.max(m, Math.abs(f.toNumber(v))), 0);
       pool = pool.map(project).filter((x) => (f.exact ? x.some((v) => !f.isZero(v)) : size(x) > 1e-9));
     }
   }

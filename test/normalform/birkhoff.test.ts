@@ -204,6 +204,34 @@ describe('Elliptic equilibria', () => {
     expect(t.expression).toBe('I1 + 2*I2 + Re(z1^2*conj(z2))/4');
     expect([t.twist, t.arithmetic]).toEqual([null, 'exact']);
   });
+  it('modes are taken from the preferred forms, with bracket 1 where the root is in the field', () => {
+    const h2 = plane.scale(plane.sum([0, 1, 2, 3].map((i) => plane.power(plane.variable(i), 2))), half);
+    const sum = [1, 1, 0, 0].map((x) => Q.fromInteger(x));
+    const difference = [1, -1, 0, 0].map((x) => Q.fromInteger(x));
+    const s = birkhoffSummary(
+      birkhoffNormalForm({ ring: plane, hamiltonian: h2, form: canonical(Q, 2), degree: 2, preferred: [sum, difference] }),
+      plane.variables,
+    );
+    expect(s.modes).toEqual([
+      { real: 'q1 + q2', imaginary: 'p1 + p2', bracket: '2' },
+      { real: 'q1 - q2', imaginary: 'p1 - p2', bracket: '2' },
+    ]);
+    expect(s.expression).toBe('I1 + I2');
+    const scaled = birkhoffSummary(
+      birkhoffNormalForm({
+        ring: oscillator,
+        hamiltonian: oscillator.sum(
+          [0, 1].map((i) =>
+            oscillator.scale(oscillator.power(oscillator.variable(i), 2), Q.fromRational(i === 0 ? 2n : 1n, i === 0 ? 1n : 8n)),
+          ),
+        ),
+        form: canonical(Q, 1),
+        degree: 2,
+      }),
+      oscillator.variables,
+    );
+    expect(scaled.modes).toEqual([{ real: '2*q', imaginary: 'p/2', bracket: '1' }]);
+  });
   it('a form that is not canonical: W = 2J halves the frequency', () => {
     const w = { ...canonical(Q, 1), data: canonical(Q, 1).data.map((x) => Q.mul(Q.fromInteger(2), x)) };
     const h = oscillator.scale(oscillator.sum([0, 1].map((i) => oscillator.power(oscillator.variable(i), 2))), half);
