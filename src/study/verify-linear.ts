@@ -2,6 +2,7 @@
  * The numbers of a linear analysis found again from the certified matrices alone, by routes that the analysis itself
  * does not take: no character table, no adapted basis for the group side, no symplectic reduction, no formula.
  */
+import { InputError } from '../errors/index.ts';
 import type { Algebraic, Reduction } from '../field/index.ts';
 import { RealField } from '../field/index.ts';
 import {
@@ -54,6 +55,10 @@ const TRACE_WORK = 4e8;
 /** Largest matrix whose characteristic polynomial is computed exactly. */
 const EXACT_DIMENSION = 24;
 const ORDER_LIMIT = 20_000;
+/** Largest dimension that is read. */
+const LARGEST = 5000;
+/** Fields of a higher degree must be the one that the result names. */
+const PLAIN_DEGREE = 32;
 
 interface Exact {
   readonly field: RealField;
@@ -76,8 +81,13 @@ function exactMatrices(c: LinearCertificate): Exact {
       return x;
     };
     const read = (rows: number, cols: number, entries: EntryTexts): Matrix<Algebraic> => {
+      if (![rows, cols].every((x) => Number.isInteger(x) && x >= 0 && x <= LARGEST)) throw new InputError(`a matrix of ${rows} × ${cols}`);
       const data = new Array<Algebraic>(rows * cols).fill(f.zero);
-      for (const [i, j, text] of entries) data[(i - 1) * cols + (j - 1)] = value(text);
+      for (const [i, j, text] of entries) {
+        if (!(Number.isInteger(i) && Number.isInteger(j) && i >= 1 && i <= rows && j >= 1 && j <= cols))
+          throw new InputError(`an entry (${i}, ${j}) in a matrix of ${rows} × ${cols}`);
+        data[(i - 1) * cols + (j - 1)] = value(text);
+      }
       return { field: f, rows, cols, data };
     };
     const n = c.dimension;
@@ -124,15 +134,25 @@ const list = (x: unknown): Json[] => (Array.isArray(x) ? (x as Json[]) : []);
 export function checkLinear(result: Json, c: LinearCertificate, compare: Compare): void {
   const exact = exactMatrices(c);
   const { field } = exact;
+  if (field.degree > PLAIN_DEGREE && field.name !== result.field) {
+    compare('field', result.field, field.name, 'numbers of the certified matrices');
+    return;
+  }
   // primes that the analysis does not use
   const reductions = [field.reduction(2), field.reduction(3)];
   const r = reductions[0]!;
-  checkForms(result, c, exact, compare);
+  // matrices that are not what they must be have no further numbers in common with the result
+  if (!checkForms(result, c, exact, compare)) return;
   const generators = exact.generators.map((g, i): SignedMatrix => ({ matrix: reduce(g, r), sign: c.generators[i]!.sign }));
   const vector = genericVector(c.dimension, r.p);
-  const orbit = orbitOf(generators, vector, ORDER_LIMIT);
+  const group = (result.group ?? {}) as Json;
+  // an order that is too small shows itself by one point more
+  const orbit = orbitOf(generators, vector, Math.min(ORDER_LIMIT, 4 * Number(group.order) + 16));
+  if (orbit === undefined && Number(group.order) < ORDER_LIMIT / 4) {
+    compare('group.order', group.order, 'more', 'orbit of a generic vector');
+    return;
+  }
   if (orbit !== undefined) {
-    const group = (result.group ?? {}) as Json;
     compare('group.order', group.order, orbit.order, 'orbit of a generic vector');
     compare('group.reversing', group.reversing, orbit.reversing, 'orbit of a generic vector');
     checkComponents(result, c, exact, generators, orbit, r, compare);
@@ -142,7 +162,7 @@ export function checkLinear(result: Json, c: LinearCertificate, compare: Compare
   checkSigns(result, exact, compare);
 }
 
-function checkForms(result: Json, c: LinearCertificate, exact: Exact, compare: Compare): void {
+function checkForms(result: Json, c: LinearCertificate, exact: Exact, compare: Compare): boolean {
   const route = 'products of the certified matrices';
   const symmetry = (result.symmetry ?? {}) as Json;
   const listed = list(symmetry.generators);
@@ -161,9 +181,13 @@ function checkForms(result: Json, c: LinearCertificate, exact: Exact, compare: C
     compare(`${key}.symplectic`, listed[i]?.symplectic, symplectic, route);
     compare(`${key}.invariant`, listed[i]?.invariant, invariant, route);
   });
-  compare('symmetry.holds', symmetry.holds, holds, route);
-  compare('symplectic form', same(exact.form, transpose(exact.form), -1), true, route);
-  compare('Hessian', same(exact.hessian, transpose(exact.hessian), 1), true, route);
+  compare('symmetry.holds', symmetry.holds, true, 'the command');
+  compare('certificate.linear.generators', holds, true, route);
+  const skew = same(exact.form, transpose(exact.form), -1);
+  const symmetric = same(exact.hessian, transpose(exact.hessian), 1);
+  compare('certificate.linear.form', skew, true, route);
+  compare('certificate.linear.hessian', symmetric, true, route);
+  return holds && skew && symmetric && listed.length === c.generators.length;
 }
 
 /** Dimension, type, multiplicity and s(K) of each component from traces on the span of its basis under the group. */
@@ -334,7 +358,7 @@ function checkSubgroups(
     if (!Array.isArray(sub.generators)) return;
     const own: SignedMatrix[] = [];
     for (const word of sub.generators as string[]) {
-      const g = wordMatrix(word, named, c.dimension, r.p);
+      const g = wordMatrix(word, named, c.dimension, r.p, orbit.order);
       if (g === undefined) {
         compare(`zero.subgroups[${i}].generators`, word, 'a word in the generators', 'reading the word');
         return;
@@ -342,7 +366,7 @@ function checkSubgroups(
       own.push(g);
     }
     const key = `zero.subgroups[${i}]`;
-    const inner = orbitOf(own, vector, ORDER_LIMIT);
+    const inner = orbitOf(own, vector, orbit.order + 1);
     if (inner === undefined) return;
     const route = 'orbit of a generic vector under the subgroup';
     compare(`${key}.order`, sub.order, inner.order, route);
@@ -358,14 +382,14 @@ function checkSubgroups(
 }
 
 /** `r^2 s`: the rightmost letter acts first. */
-function wordMatrix(word: string, named: ReadonlyMap<string, SignedMatrix>, n: number, p: number): SignedMatrix | undefined {
+function wordMatrix(word: string, named: ReadonlyMap<string, SignedMatrix>, n: number, p: number, order: number): SignedMatrix | undefined {
   let matrix: ModularMatrix = { p, rows: n, cols: n, data: Int32Array.from({ length: n * n }, (_, i) => (i % (n + 1) === 0 ? 1 : 0)) };
   let sign: 1 | -1 = 1;
   if (word === '1') return { matrix, sign };
   for (const letter of word.split(' ')) {
     const [name, power = '1'] = letter.split('^');
     const g = named.get(name!);
-    if (g === undefined || !/^\d{1,6}$/.test(power)) return undefined;
+    if (g === undefined || !/^\d{1,6}$/.test(power) || Number(power) > order) return undefined;
     for (let k = Number(power); k > 0; k--) {
       matrix = modularMultiply(matrix, g.matrix);
       sign = (sign * g.sign) as 1 | -1;

@@ -54,7 +54,8 @@ export async function verifyResult(text: string, source: string, tolerance = 0):
   const compare = (key: string, found: unknown, expected: unknown, route: string): void => {
     checks++;
     routes.add(route);
-    if (found !== expected) wrong.push({ key, expected: show(expected), found: show(found), route });
+    const known = wrong.some((w) => w.key === key && w.route === route);
+    if (found !== expected && !known) wrong.push({ key, expected: show(expected), found: show(found), route });
   };
   compare('certificate.digest', certificate.digest, digestOf(certificate.declaration), 'SHA-256 of the declaration');
   if (certificate.linear !== undefined) {
