@@ -272,20 +272,26 @@ function submaximalBranches(forms: Forms, c: IsotropyClass, number: number): Fou
     if (unit === undefined) continue;
     const scale = norm(lift(v));
     const y = v.map((x) => x / scale);
-    const slope = j * b.value(y);
-    if (Math.abs(slope) < 1e-9 * b.size) {
+    const pull = b.gradient(y);
+    const square = norm(pull) ** 2;
+    if (square < 1e-18 * b.size ** 2) {
       undecided.push(`${typeName(c)}: the parameter does not act at first order along a critical direction`);
       continue;
     }
+    // ∇f + λ∇ℓ = 0 holds along y: λ by projection on ∇ℓ
+    const multiplier = (g: NumericPolynomial) => -g.gradient(y).reduce((s, x, i) => s + x * pull[i]!, 0) / square;
     let power = d - j;
-    let coefficient = (-d * a.value(y)) / slope;
-    if (Math.abs(a.value(y)) < 1e-9 * a.size) {
-      power++;
-      coefficient = (-(d + 1) * next.value(y)) / slope;
-      if (d + 1 > input.degree || next.isZero || Math.abs(next.value(y)) < 1e-9 * next.size) {
+    let coefficient = multiplier(a);
+    if (Math.abs(coefficient) * Math.sqrt(square) < 1e-9 * a.size) {
+      // f and ∇f vanish along y: the next form decides, if ℓ pulls along y itself
+      const slope = j * b.value(y);
+      const value = next.value(y);
+      if (d + 1 > input.degree || next.isZero || Math.abs(value) < 1e-9 * next.size || Math.abs(slope) < 1e-9 * b.size) {
         undecided.push(`${typeName(c)}: the leading forms vanish along a critical direction`);
         continue;
       }
+      power++;
+      coefficient = (-(d + 1) * value) / slope;
     }
     // for odd powers -y belongs to the same branch on the other side
     if (power % 2 === 1 && coefficient < 0) continue;

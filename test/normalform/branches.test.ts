@@ -216,6 +216,32 @@ describe('Branches', () => {
     const d = diagram(cyclic(3), sum([1, zPower(3)], [2, zPower(3, true)]), 3);
     expect(d.branches.map((b) => [b.copies, b.side, b.sides.map((s) => s.negative)])).toEqual([[3, 'both', [1, 1]]]);
   });
+  it('Z2 on the plane with a fixed line: the fold and a pair of branches off it, y^3/3 + x^2 y + mu y', () => {
+    const d = diagram(signs([-1, 1]), terms([[0, 3], 1 / 3], [[2, 1], 1]), 3, terms([[0, 1], 1]));
+    // y^2 + x^2 + mu = 0 and 2 x y = 0: four equilibria for mu < 0
+    expect(d.branches.map((b) => [b.isotropyOrder, b.copies, b.side, b.exponent, b.sides[0]!.negative]).sort()).toEqual([
+      [1, 2, 'negative', '1/2', 1],
+      [2, 1, 'negative', '1/2', 0],
+      [2, 1, 'negative', '1/2', 2],
+    ]);
+    expect(d.topologicalDegree).toEqual({ below: 0, above: 0 });
+    const ring = ringOf(signs([-1, 1]));
+    const e = equationsOf(ring, terms([[0, 3], 1 / 3], [[2, 1], 1])(ring), terms([[0, 1], 1])(ring));
+    expect(d.branches.every((b) => confirmBranch(e, b).every((c) => c.confirmed))).toBe(true);
+  });
+  it('no symmetry: the umbilic x^2 y + y^3/3 + mu (x + 2y) has four equilibria on one side or two on each', () => {
+    const h = terms([[2, 1], 1], [[0, 3], 1 / 3]);
+    const l = terms([[1, 0], 1], [[0, 1], 2]);
+    const d = diagram(trivial(2), h, 3, l);
+    const ring = ringOf(trivial(2));
+    const e = equationsOf(ring, h(ring), l(ring));
+    for (const side of [1, -1] as const) {
+      const count = d.branches.filter((b) => on(b, side) !== undefined).length;
+      expect(search(e, side * 1e-4, 1e-4, 1, 200).length).toBe(count);
+    }
+    expect(d.branches.every((b) => confirmBranch(e, b).every((c) => c.confirmed))).toBe(true);
+    expect(d.topologicalDegree!.above).toBe(d.topologicalDegree!.below);
+  });
   it('says what the terms do not decide: D_5 to degree 4, a line where h vanishes, a parameter that does not act', () => {
     const five = diagram(dihedral(5), sum([0.25, power(r2, 2)]), 4);
     expect(five.branches.every((b) => b.sides[0]!.undecided === 1)).toBe(true);
