@@ -25,11 +25,11 @@ export interface Matrix {
   readonly rows: readonly (readonly Formula[])[];
 }
 
+/** An aside explains, cites or goes into detail; a terminal leaves it out. */
 export type Block =
-  /** An aside explains and cites; a terminal leaves it out. */
-  | { readonly kind: 'paragraph'; readonly line: Line; readonly aside?: boolean }
+  | { readonly kind: 'paragraph'; readonly line: Line; readonly aside?: true }
   | { readonly kind: 'facts'; readonly rows: readonly { readonly name: string; readonly line: Line }[] }
-  | { readonly kind: 'list'; readonly items: readonly Line[] }
+  | { readonly kind: 'list'; readonly items: readonly Line[]; readonly aside?: true }
   | { readonly kind: 'table'; readonly caption: string; readonly columns: readonly Column[]; readonly rows: readonly (readonly Line[])[] }
   | { readonly kind: 'display'; readonly formula: Formula }
   /** Matrices that belong together; side by side where there is room. */

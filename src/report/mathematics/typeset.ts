@@ -19,7 +19,7 @@ const POWER = 3;
 const ATOM = 4;
 type Level = typeof RELATION | typeof SUM | typeof PRODUCT | typeof POWER | typeof ATOM;
 
-/** Sums up to this width stand on a fraction line whole; wider ones follow the fraction as a factor. */
+/** Sums and functions up to this width stand on a fraction line; wider ones follow the fraction as a factor. */
 const NARROW_SUM = 4;
 /** Words of users may be all capitals or code points. */
 const WIDE_SIGN = 0.75;
@@ -198,7 +198,8 @@ function quotient(numerator: Tree, denominator: Tree, shallow: boolean, whole: b
     return set(`${above.latex}/${under.latex}`, above.ems + under.ems + 0.5, PRODUCT, above.tall || under.tall);
   }
   const factors = numerator.kind === 'product' ? numerator.factors : [numerator];
-  const wide = (f: Tree): boolean => !whole && f.kind === 'sum' && f.terms.length > 1 && typeset(f).ems > NARROW_SUM;
+  const factor = (f: Tree): boolean => (f.kind === 'sum' && f.terms.length > 1) || (f.kind === 'call' && f.name !== 'sqrt');
+  const wide = (f: Tree): boolean => !whole && factor(f) && typeset(f).ems > NARROW_SUM;
   const behind = factors.filter(wide);
   const kept = factors.filter((f) => !wide(f));
   const above = kept.length === 0 ? set('1', 0.5, ATOM) : kept.length === 1 ? typeset(kept[0]!) : product(kept.map((f) => typeset(f)));

@@ -18,16 +18,21 @@ export interface LatexTable {
 const CELL_LINES = 7;
 /** Space between columns. */
 const GAP = 1.2;
-/** A head longer than this may be broken. */
-const HEAD = 5;
+/** Longer heads may be broken into several lines. */
+const SHORT_HEAD = 6;
+/** A table may be scaled by so much before its columns are narrowed. */
+const SCALED = 1.15;
 
 export function tableLatex(table: LatexTable): string {
   const { columns, rows } = table;
   const body = columns.map((_, k) => Math.max(1, ...rows.map((row) => table.width(row[k]!))));
-  const heads = columns.map((c) => table.width(c.head));
-  const natural = body.map((w, k) => Math.max(w, Math.min(heads[k]!, HEAD)));
+  const natural = body.map((w, k) => {
+    const head = table.width(columns[k]!.head);
+    return Math.max(w, head <= SHORT_HEAD ? head : Math.max(...headWords(columns[k]!).map((word) => table.width(word))));
+  });
   const room = table.line - GAP * (columns.length - 1);
-  const widths = shrink(natural, room);
+  // a table that is hardly too wide is scaled as a whole
+  const widths = sum(natural) <= room * SCALED ? natural : shrink(natural, room);
   if (widths === null) return records(table);
   const bulky = rows.filter((row) => row.some((cell, k) => widths[k]! < natural[k]! && table.width(cell) / widths[k]! > CELL_LINES));
   if (bulky.length === rows.length) return records(table);
@@ -40,7 +45,7 @@ export function tableLatex(table: LatexTable): string {
     return c.align === 'right' ? 'r' : c.align === 'center' ? 'c' : 'l';
   });
   const limitOf = (k: number): number => (widths[k]! < natural[k]! ? widths[k]! * 0.75 : Number.POSITIVE_INFINITY);
-  const head = columns.map((c, k) => headCell(c, k, table, widths, heads)).join(' & ');
+  const head = columns.map((c, k) => headCell(c, table, Math.max(widths[k]!, natural[k]!))).join(' & ');
   const lines = rows.map((row) => `${row.map((cell, k) => table.write(cell, limitOf(k))).join(' & ')} \\\\`);
   const heights = rows.map((row) => Math.max(1, ...row.map((cell, k) => Math.ceil((table.width(cell) * 1.1) / widths[k]! - 0.1))));
   const parts: string[] = [];
@@ -48,11 +53,11 @@ export function tableLatex(table: LatexTable): string {
     let height = 0;
     for (end = i; end < lines.length && (end === i || height + heights[end]! <= table.lines); end++) height += heights[end]!;
     end = Math.max(end, i + 1);
-    const note = i === 0 ? table.caption : `${table.caption} (continued)`;
+    const note = i === 0 ? table.caption : '(continued)';
     parts.push(
       [
-        '\\begin{center}',
-        `{\\small ${note}\\par}\\nopagebreak\\smallskip`,
+        '\\begin{center}\\begin{minipage}{\\linewidth}\\centering',
+        `{\\small ${note}\\par}\\smallskip`,
         `\\symcodimfit{\\setlength{\\extrarowheight}{1.5pt}\\setlength{\\tabcolsep}{${(GAP * 5).toFixed(0)}pt}\\begin{tabular}{@{}${specification.join('')}@{}}`,
         '\\toprule',
         `${head} \\\\`,
@@ -60,30 +65,44 @@ export function tableLatex(table: LatexTable): string {
         ...lines.slice(i, end),
         '\\bottomrule',
         '\\end{tabular}}',
-        '\\end{center}',
+        '\\end{minipage}\\end{center}',
       ].join('\n'),
     );
   }
   return parts.join('\n\n');
 }
 
-/** A head of several words may stand on two lines, so that narrow columns stay narrow. */
-function headCell(column: Column, k: number, table: LatexTable, widths: readonly number[], heads: readonly number[]): string {
-  const text = table.write(column.head, Number.POSITIVE_INFINITY);
-  if (heads[k]! <= widths[k]! + 0.5) return text;
-  const words = column.head.every((part) => typeof part === 'string') ? column.head.join('').split(' ') : [];
-  if (words.length < 2) return text;
-  const cut = Math.ceil(words.length / 2);
+/** What a head can be broken into: its words, or the whole of it where it holds a formula. */
+const headWords = (column: Column): readonly Line[] =>
+  column.head.every((part) => typeof part === 'string')
+    ? column.head
+        .join('')
+        .split(' ')
+        .map((word) => [word])
+    : [column.head];
+
+/** A head stands on as many lines as the width of its column asks for, so that narrow columns stay narrow. */
+function headCell(column: Column, table: LatexTable, width: number): string {
+  const lines: Line[] = [];
+  for (const word of headWords(column)) {
+    const last = lines.at(-1);
+    const grown: Line = last === undefined ? word : [...last, ' ', ...word];
+    if (last === undefined || table.width(grown) > width + 0.5) lines.push(word);
+    else lines[lines.length - 1] = grown;
+  }
+  const written = lines.map((line) => table.write(line, Number.POSITIVE_INFINITY));
+  if (written.length === 1) return written[0]!;
   const align = column.align === 'right' ? 'r' : column.align === 'center' ? 'c' : 'l';
-  const write = (part: readonly string[]) => table.write([part.join(' ')], Number.POSITIVE_INFINITY);
-  return `\\begin{tabular}[b]{@{}${align}@{}}${write(words.slice(0, cut))}\\\\${write(words.slice(cut))}\\end{tabular}`;
+  return `\\begin{tabular}[b]{@{}${align}@{}}${written.join('\\\\')}\\end{tabular}`;
 }
+
+const sum = (numbers: readonly number[]): number => numbers.reduce((a, b) => a + b, 0);
 
 /** Takes room from the widest columns until all fit; null where none can give any more. */
 function shrink(natural: readonly number[], room: number): readonly number[] | null {
   const widths = [...natural];
   for (;;) {
-    const total = widths.reduce((a, b) => a + b, 0);
+    const total = sum(widths);
     if (total <= room) return widths;
     const widest = widths.indexOf(Math.max(...widths));
     const others = widths.filter((_, k) => k !== widest);

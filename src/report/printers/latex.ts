@@ -18,6 +18,8 @@ export interface LatexOptions {
   readonly figures?: boolean;
 }
 
+/** Begins a new page where a heading would stand nearly alone at the end of one. */
+const NEED = '\\par\\vskip0pt plus6\\baselineskip\\penalty-250\\vskip0pt plus-6\\baselineskip\n';
 const PACKAGES = ['amsmath', 'amssymb', 'array', 'booktabs', 'graphicx', 'xcolor'] as const;
 /** Sets its argument, scaled down where it is wider than the line or nearly as high as the page. */
 const FIT = String.raw`\providecommand{\symcodimfit}[1]{\sbox0{#1}\ifdim\wd0>\linewidth\sbox0{\resizebox{\linewidth}{!}{\usebox0}}\fi\ifdim\ht0>.8\textheight\resizebox{!}{.8\textheight}{\usebox0}\else\usebox0\fi}`;
@@ -104,7 +106,7 @@ class Printer {
       const text = await this.block(block);
       if (text !== '') blocks.push(text);
     }
-    return [`\\section{${latexText(section.title)}}`, ...blocks].join('\n\n');
+    return [`${NEED}\\section{${latexText(section.title)}}`, ...blocks].join('\n\n');
   }
 
   private async block(block: Block): Promise<string> {

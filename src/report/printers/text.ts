@@ -32,7 +32,7 @@ export function printText(document: Document, width: number = DEFAULT): string {
   const block = (b: Block) => {
     switch (b.kind) {
       case 'paragraph':
-        return b.aside === true ? undefined : hang(plainLine(b.line, numbers), '', '');
+        return hang(plainLine(b.line, numbers), '', '');
       case 'facts':
         return facts(b.rows.filter((row) => !told.has(row.name)));
       case 'list':
@@ -88,6 +88,7 @@ export function printText(document: Document, width: number = DEFAULT): string {
     const filled = out.length;
     let before: Block['kind'] | null = null;
     for (const b of section.blocks) {
+      if ('aside' in b && b.aside === true) continue;
       const start = out.length;
       block(b);
       if (out.length === start) continue;

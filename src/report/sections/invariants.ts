@@ -4,8 +4,12 @@ import { type Formula, formula, list, relation, sign } from '../mathematics/inde
 import type { ReportView } from '../view.ts';
 import { count, integer, within } from './words.ts';
 
-/** Signs of polynomials in one list of a document; a reader wants no more. */
-const BUDGET = 20_000;
+/** Signs of polynomials in the lists of a document; a reader wants no more. */
+const GENERATORS = 12_000;
+const RELATIONS = 5000;
+const FIELDS = 8000;
+/** A longer expression is left to the JSON result. */
+const EXPRESSION = 8000;
 
 interface Series {
   readonly numerator: readonly number[];
@@ -81,7 +85,7 @@ export function invariantsSection(view: ReportView): Section | null {
         view.proof === undefined || view.proof === '' ? '.' : `: ${view.proof}`,
       ],
     });
-    const shown = within(generators, (g) => g.polynomial.length, BUDGET);
+    const shown = within(generators, (g) => g.polynomial.length, GENERATORS);
     const readable = shown.some((g) => g.readable !== undefined);
     blocks.push({
       kind: 'table',
@@ -98,11 +102,8 @@ export function invariantsSection(view: ReportView): Section | null {
   }
   if (view.relations !== undefined && view.relations.length > 0) {
     blocks.push({ kind: 'paragraph', line: [`${count(view.relations.length, 'relation')} among them:`] });
-    const shown = within(view.relations, (r) => r.length, BUDGET);
-    blocks.push(
-      ...shown.map((r): Block => ({ kind: 'display', formula: equation(r) })),
-      ...rest(view.relations.length - shown.length, 'relation'),
-    );
+    const shown = within(view.relations, (r) => r.length, RELATIONS);
+    blocks.push({ kind: 'list', items: shown.map((r) => [math(equation(r))]) }, ...rest(view.relations.length - shown.length, 'relation'));
   }
   if (view.equivariants !== undefined) {
     blocks.push({
@@ -111,7 +112,7 @@ export function invariantsSection(view: ReportView): Section | null {
     });
     blocks.push(...seriesBlocks('E(t)', 'E(t)', view.equivariants));
     const all = view.equivariants.generators ?? [];
-    const fields = within(all, (f) => f.field.join().length, BUDGET);
+    const fields = within(all, (f) => f.field.join().length, FIELDS);
     if (fields.length > 0)
       blocks.push({
         kind: 'table',
@@ -138,20 +139,23 @@ function equation(text: string): Formula {
 export function hamiltonianSection(view: ReportView): Section | null {
   const h = view.hamiltonian;
   if (h === undefined || h === null) return null;
-  const blocks: Block[] = [{ kind: 'display', formula: relation(formula('H'), '=', formula(h.expression)) }];
+  const blocks: Block[] = [...expressionBlocks('H', h.expression)];
   const exact = h.remainder === '0' || h.remainder === '';
-  blocks.push({
-    kind: 'paragraph',
-    line: [
+  blocks.push(
+    paragraph(
       ...(h.degree === undefined ? [] : ['Taylor terms up to degree ', integer(h.degree), '. ']),
       exact ? 'The remainder is ' : 'What the invariants do not give:',
       ...(exact ? [math(formula('0')), ', exactly.'] : []),
-    ],
-  });
-  if (!exact) blocks.push({ kind: 'display', formula: relation(formula('R'), '=', formula(h.remainder)) });
-  if (h.breaking !== undefined && h.breaking !== '' && h.breaking !== '0') {
-    blocks.push({ kind: 'paragraph', line: ['Terms that break the symmetry:'] });
-    blocks.push({ kind: 'display', formula: formula(h.breaking) });
-  }
+    ),
+  );
+  if (!exact) blocks.push(...expressionBlocks('R', h.remainder));
+  if (h.breaking !== undefined && h.breaking !== '' && h.breaking !== '0')
+    blocks.push(paragraph('Terms that break the symmetry:'), ...expressionBlocks('B', h.breaking));
   return { id: 'hamiltonian', title: 'The Hamiltonian in its invariants', blocks };
+}
+
+function expressionBlocks(name: string, expression: string): readonly Block[] {
+  if (expression.length > EXPRESSION)
+    return [paragraph(math(formula(name)), ` has ${expression.length} signs, too many to be printed; the JSON result has it.`)];
+  return [{ kind: 'display', formula: relation(formula(name), '=', formula(expression)) }];
 }

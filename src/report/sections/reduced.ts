@@ -53,9 +53,9 @@ function germRows(reduced: ReducedView): readonly { readonly name: string; reado
   const determined = reduced.determinedAt;
   const rows: { name: string; line: Line }[] = [
     { name: 'Leading degree', line: orDash(reduced.leadingDegree) },
-    { name: 'Codimension of the germ', line: orDash(reduced.codimension) },
+    { name: 'Germ codimension', line: orDash(reduced.codimension) },
     { name: 'Moduli', line: orDash(reduced.moduli) },
-    { name: 'Codimension of the stratum', line: orDash(reduced.stratumCodimension) },
+    { name: 'Stratum codimension', line: orDash(reduced.stratumCodimension) },
     {
       name: 'Determined at degree',
       line:

@@ -61,7 +61,7 @@ export function spectrumSection(view: ReportView): Section | null {
   const spectrum = view.spectrum;
   if ((spectrum === undefined || spectrum.length === 0) && view.stability === undefined) return null;
   const blocks: Block[] = [];
-  if (view.stability !== undefined) blocks.push({ kind: 'paragraph', line: [view.stability] });
+  if (view.stability !== undefined) blocks.push({ kind: 'facts', rows: [{ name: 'Stability', line: [view.stability] }] });
   if (spectrum !== undefined && spectrum.length > 0) {
     const krein = spectrum.some((e) => e.krein !== undefined);
     blocks.push({

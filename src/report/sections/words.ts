@@ -2,7 +2,7 @@
 
 import type { InertiaSummary, Motion, Value } from '../../study/result.ts';
 import { type Inline, type Line, math } from '../document.ts';
-import { formula, label, labels, list, numberText } from '../mathematics/index.ts';
+import { type Formula, formula, label, labels, list, numberText } from '../mathematics/index.ts';
 
 /** The number with its noun. */
 export const count = (n: number, one: string, many = `${one}s`): string => `${n} ${n === 1 ? one : many}`;
@@ -70,4 +70,10 @@ export function within<T>(items: readonly T[], length: (item: T) => number, budg
   let total = 0;
   const end = items.findIndex((item) => (total += length(item)) > budget);
   return end < 0 ? items : items.slice(0, Math.max(1, end));
+}
+
+/** An element of the group as a word in the generators, such as r^2 s. */
+export function groupElement(word: string): Formula {
+  const product = formula(word.trim().replace(/\s+/g, '*'));
+  return product.tree.kind === 'words' ? formula(word) : { ...product, text: word };
 }
