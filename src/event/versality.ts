@@ -37,7 +37,7 @@ export interface Family {
   /** Basis of Fix(Γ), n × f. */
   readonly fixed: Matrix<Algebraic>;
   /** x'(μ) of the declared equilibrium for each varied parameter. */
-  readonly branch: readonly (readonly Algebraic[])[];
+  readonly branch: readonly (readonly Algebraic[])[] | undefined;
   /** Continuous symmetries that move the equilibrium; `fixed` then lies in the slice. */
   readonly slice?: SliceFamily;
 }
@@ -101,13 +101,15 @@ export function versality(event: ZeroEvent, family: Family, pieces: readonly Eve
       }
     } else {
       // the declared branch, where it is one to first order
-      const holds = family.branch.every((x, j) => {
+      const branch = family.branch?.every((x, j) => {
         const sx = sparseApply(family.hessian, x);
         return sx.every((v, i) => field.isZero(field.add(v, family.gradientBy[j]![i]!)));
-      });
-      if (holds) {
+      })
+        ? family.branch
+        : undefined;
+      if (branch !== undefined) {
         alongBranch = true;
-        tangents = family.branch.map((x, j) => ({ x, mu: unit(j) }));
+        tangents = branch.map((x, j) => ({ x, mu: unit(j) }));
       }
     }
   }

@@ -46,7 +46,7 @@ export function energyExpression(declaration: Declaration, definitions: Readonly
     case 'quadratic':
       return read(energy.text, 'quadratic');
     case 'hessian':
-      return quadraticForm(energy.matrix, [...declaration.coordinates, ...declaration.momenta], read);
+      return quadraticForm(energy.matrix, declaration, read);
     case 'mechanical':
       return mechanicalEnergy(energy, declaration, read);
     case 'network':
@@ -57,12 +57,18 @@ export function energyExpression(declaration: Declaration, definitions: Readonly
 type Reader = (text: string, key: string) => Expression;
 
 /** ½ Σ m_ij x_i x_j. */
-function quadraticForm(m: MatrixText, names: readonly string[], read: Reader): Expression {
+function quadraticForm(m: MatrixText, declaration: Declaration, read: Reader): Expression {
+  const names = [...declaration.coordinates, ...declaration.momenta];
   if (m.rows !== names.length || m.cols !== names.length)
     throw new InputError(`the Hessian is ${m.rows} × ${m.cols}`, {
+      file: declaration.source,
       key: m.source,
       expected: `${names.length} × ${names.length}, for coordinates and momenta`,
     });
+  const texts = new Map(m.entries.map((e) => [e.i * m.cols + e.j, e.text]));
+  // entries that read alike need no proof of symmetry
+  if (m.entries.some((e) => texts.get(e.j * m.cols + e.i) !== e.text))
+    requireSymmetry(familyEntries({ rows: m.rows, cols: m.cols, constant: m, terms: new Map(), where: 'quadratic' }, read), declaration, 'quadratic', 1);
   return product(
     half,
     sum(m.entries.map((e) => product(read(e.text, `${m.source}[${e.i + 1}][${e.j + 1}]`), symbol(names[e.i]!), symbol(names[e.j]!)))),
@@ -148,7 +154,9 @@ function requireSymmetry(
             expected: sign === 1 ? field.format(b) : field.format(field.neg(b)),
             next:
               sign === 1
-                ? 'a non-symmetric stiffness is not conservative: it has no Hamiltonian'
+                ? key === 'quadratic'
+                  ? 'give the symmetric matrix S of H = x^T S x/2'
+                  : 'a non-symmetric stiffness is not conservative: it has no Hamiltonian'
                 : 'the symmetric part of a velocity term is damping',
           },
         );

@@ -111,7 +111,9 @@ function partOf(m: NumberMatrix, sign: 1 | -1, key: string, file: string): Numbe
             expected: String(sign * b),
             next:
               sign === 1
-                ? 'a non-symmetric stiffness is not conservative: it has no Hamiltonian'
+                ? key === 'quadratic'
+                  ? 'give the symmetric matrix S of H = x^T S x/2'
+                  : 'a non-symmetric stiffness is not conservative: it has no Hamiltonian'
                 : 'the symmetric part of a velocity term is damping',
           },
         );
@@ -160,14 +162,20 @@ function inverseMass(m: NumberMatrix, file: string): NumberMatrix {
   }
 }
 
-function quadratic(names: readonly string[], s: NumberMatrix, size: NumberMatrix, by: () => NumberMatrix[]): FloatingEnergy {
+function quadratic(
+  names: readonly string[],
+  s: NumberMatrix,
+  size: NumberMatrix,
+  common: NumberMatrix,
+  by: () => NumberMatrix[],
+): FloatingEnergy {
   const n = names.length;
   const times = (m: NumberMatrix, x: Float64Array) => numberMultiply(m, numberMatrix(n, 1, x)).data;
   return {
     names,
     gradient: (x) => times(s, x),
     hessian: () => s,
-    sizes: (x) => ({ gradient: Math.max(0, ...times(size, x.map(Math.abs))), hessian: size }),
+    sizes: (x) => ({ gradient: Math.max(0, ...times(size, x.map(Math.abs))), hessian: size, common }),
     local: (x): FloatingLocal => {
       const hessianBy = by();
       return { hessianBy, gradientBy: hessianBy.map((m) => times(m, x)) };
@@ -203,7 +211,14 @@ function mechanical(m: Evaluated, g: Evaluated | undefined, k: Evaluated, file: 
       const square = numberCombine(numberMultiply(tBy, gyro), numberMultiply(t, gyroBy));
       return assembled(numberCombine(stiffnessBy, square, 0.25), half(tBy), inverseBy);
     });
-  return { s: build(inverse, gyro, stiffness), size: absolute(size), by };
+  const level = (x: NumberMatrix) => {
+    const top = largestEntry(x);
+    return numberBuild(n, n, () => top);
+  };
+  const total = absolute(size);
+  const corner = (rows: number, cols: number) => numberBuild(n, n, (i, j) => total.data[(i + rows) * 2 * n + j + cols]!);
+  const common = assembled(level(corner(0, 0)), level(corner(0, n)), level(corner(n, n)));
+  return { s: build(inverse, gyro, stiffness), size: total, common, by };
 }
 
 /** The energy of a declaration by matrices; `values` are those of the parameters. Throws InputError. */
@@ -225,14 +240,14 @@ export function energyOfMatrices(
         expected: `${names.length} × ${names.length}, for coordinates and momenta`,
       });
     const s = evaluateFamily(family, reader, 'quadratic');
-    return quadratic(names, symmetricPart(s.value), symmetricPart(s.size), () => s.by.map(symmetricPart));
+    return quadratic(names, partOf(s.value, 1, 'quadratic', file), symmetricPart(s.size), () => s.by.map(symmetricPart));
   }
   if (energy.kind !== 'mechanical') throw new RangeError(`an energy of kind ${energy.kind} has no matrices`);
-  const { s, size, by } = mechanical(
+  const { s, size, common, by } = mechanical(
     evaluateFamily(energy.mass, reader, 'mass'),
     energy.gyroscopic === undefined ? undefined : evaluateFamily(energy.gyroscopic, reader, 'gyroscopic'),
     evaluateFamily(energy.stiffness, reader, 'stiffness'),
     file,
   );
-  return quadratic(names, s, size, by);
+  return quadratic(names, s, size, common, by);
 }

@@ -23,8 +23,8 @@ export interface LocalExpansion {
   readonly ring: PolynomialRing<Algebraic>;
   readonly higher: Polynomial<Algebraic>;
   readonly degree: number;
-  /** Derivative of the declared equilibrium by each varied parameter. */
-  readonly pointBy: readonly (readonly Algebraic[])[];
+  /** Derivative of the declared equilibrium by each varied parameter; undefined where it has none in the field. */
+  readonly pointBy: readonly (readonly Algebraic[])[] | undefined;
 }
 
 /** The expansion is floating because a coefficient contains this term. */
@@ -103,22 +103,37 @@ export function localExpansion(
   };
 }
 
-function pointDerivatives(quantities: Quantities, vary: readonly string[], field: RealField): Algebraic[][] {
+function pointDerivatives(quantities: Quantities, vary: readonly string[], field: RealField): Algebraic[][] | undefined {
   const at = new Map(vary.map((v) => [v, quantities.valueExpressions.get(v)!]));
-  const derivative = quantities.names.map((name) => {
+  const derivatives: Algebraic[][] = [];
+  for (const name of quantities.names) {
     const e = quantities.pointExpressions.get(name);
-    if (e === undefined || ![...symbolsOf(e)].some((s) => at.has(s))) return undefined;
-    const t = taylor(e, { names: vary, point: at, parameters: quantities.valueExpressions, degree: 1, field });
-    return t.kind === 'exact' && t.field === field
-      ? vary.map((_, j) =>
-          t.ring.coefficient(
-            t.polynomial,
-            vary.map((_, i) => (i === j ? 1 : 0)),
-          ),
-        )
-      : undefined;
-  });
-  return vary.map((_, j) => derivative.map((d) => d?.[j] ?? field.zero));
+    if (e === undefined || ![...symbolsOf(e)].some((s) => at.has(s))) {
+      derivatives.push(vary.map(() => field.zero));
+      continue;
+    }
+    const t = firstOrder(e, vary, at, quantities, field);
+    if (t?.kind !== 'exact' || t.field !== field) return undefined;
+    derivatives.push(
+      vary.map((_, j) =>
+        t.ring.coefficient(
+          t.polynomial,
+          vary.map((_, i) => (i === j ? 1 : 0)),
+        ),
+      ),
+    );
+  }
+  return vary.map((_, j) => derivatives.map((d) => d[j]!));
+}
+
+/** Undefined where the equilibrium is not smooth in the parameters, as sqrt(m) at a fold. */
+function firstOrder(e: Expression, vary: readonly string[], at: ReadonlyMap<string, Expression>, quantities: Quantities, field: RealField) {
+  try {
+    return taylor(e, { names: vary, point: at, parameters: quantities.valueExpressions, degree: 1, field });
+  } catch (error) {
+    if (error instanceof InputError) return undefined;
+    throw error;
+  }
 }
 
 /** D³H·v as a symmetric matrix. */

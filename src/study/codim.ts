@@ -142,7 +142,7 @@ function family(study: LinearStudy): Family {
       return cubicAlong(lifted, back);
     },
     fixed: study.slicing === undefined ? fixedSpace(action, components) : sliceFixed(study.slicing, fixedSpace(action, components)),
-    branch: local.pointBy.map((x) => x.map(move)),
+    branch: local.pointBy?.map((x) => x.map(move)),
     ...(study.slicing === undefined ? {} : { slice: { ...study.slicing.slice, form: action.form } }),
   };
 }

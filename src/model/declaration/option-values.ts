@@ -13,6 +13,9 @@ export function usage(option: string, value: string, message: string, expected: 
   return new UsageError(message, { key: `--${option}`, value: value.length > 200 ? `${value.slice(0, 200)}…` : value, expected, next });
 }
 
+const reserved = (option: string, value: string): UsageError =>
+  usage(option, value, 'pi is reserved: it is the number pi.', 'another name', 'rename it');
+
 /** Splits at commas outside brackets. */
 export function splitList(text: string): string[] {
   const parts: string[] = [];
@@ -33,6 +36,7 @@ export function splitList(text: string): string[] {
 export function nameList(option: string, value: string): string[] {
   const names = splitList(value);
   for (const name of names) {
+    if (name === 'pi') throw reserved(option, value);
     if (!isName(name))
       throw usage(
         option,
@@ -49,6 +53,7 @@ export function assignment(option: string, part: string, example: string): [stri
   const at = part.indexOf('=');
   const name = part.slice(0, Math.max(0, at)).trim();
   const text = part.slice(at + 1).trim();
+  if (at >= 0 && name === 'pi') throw reserved(option, part);
   if (at < 0 || text === '' || !isName(name))
     throw usage(option, part, `--${option} needs NAME=VALUE.`, 'a name, an equals sign, an expression', `write --${option} ${example}`);
   return [name, text];
