@@ -74,7 +74,7 @@ export function germModel<T>(input: GermInput<T>, index = 0): { model: GermModel
     if (m.length <= input.degree && m.length > 0 && x !== 0) h.set(m, x);
   });
   const generators = input.generators.generators.map((g) => ({
-    name: isCoordinate(g.polynomial) ? input.action.names[g.polynomial.monomials[0]!.charCodeAt(0)]! : g.name,
+    name: g.name,
     degree: g.degree,
     polynomial: new Map(g.polynomial.monomials.map((m, i) => [m, reduction.apply(g.polynomial.coefficients[i]!)] as const)),
   }));
@@ -88,11 +88,6 @@ export function germModel<T>(input: GermInput<T>, index = 0): { model: GermModel
     },
     modular,
   };
-}
-
-/** One coordinate, up to a factor. */
-function isCoordinate(p: Polynomial<unknown>): boolean {
-  return p.monomials.length === 1 && p.monomials[0]!.length === 1;
 }
 
 /** The model in coordinates y = m x. */

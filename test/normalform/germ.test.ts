@@ -39,7 +39,15 @@ const zPower =
   };
 const germ = (action: LinearAction, make: Make, degree: number): Germ => {
   const ring = new PolynomialRing<Algebraic>(action.field as RealField, action.names);
-  return analyseGerm({ action, generators: minimalGenerators(action), ring, h: make(ring), degree });
+  const generators = minimalGenerators(action);
+  const g = analyseGerm({ action, generators, ring, h: make(ring), degree });
+  // a generator that is a coordinate is written as that coordinate here
+  const readable = (text: string) =>
+    generators.generators.reduce(
+      (t, { name, degree: d, polynomial }) => (d === 1 ? t.replaceAll(new RegExp(`\\b${name}\\b`, 'g'), ring.format(polynomial)) : t),
+      text,
+    );
+  return { ...g, unfolding: g.unfolding.map(readable), missing: g.missing.map(readable), because: readable(g.because) };
 };
 /** codimension, moduli, stratum, determinacy. */
 const numbers = (g: Germ) => [g.codimension, g.moduli, g.stratumCodimension, g.determinedAt];
