@@ -112,7 +112,7 @@ describe('layers', () => {
 
   it('tests mirror the layers', () => {
     const folders = readdirSync(join(root, 'test'), { withFileTypes: true }).flatMap((entry) => (entry.isDirectory() ? [entry.name] : []));
-    const others = ['structure', 'support', 'data', 'bench', 'samples', 'library'];
+    const others = ['structure', 'support', 'data', 'bench', 'samples', 'library', 'acceptance'];
     for (const folder of folders) expect([...layers, ...others], relative(root, folder)).toContain(folder);
   });
 });
