@@ -4,6 +4,7 @@ import { type Algebraic, RealField, rational } from '../../src/field/index.ts';
 import { fromColumns, identity, zeroMatrix } from '../../src/linear/index.ts';
 import { doubles } from '../../src/model/expression/constants.ts';
 import { reduceToKernel } from '../../src/normalform/splitting.ts';
+import { SeriesAlgebra } from '../../src/normalform/truncated-series.ts';
 import { type Polynomial, PolynomialRing, RationalFunctionField } from '../../src/polynomial/index.ts';
 import { Q } from './actions.ts';
 import { cosineIn, ringReduction, twelveField, twelveSites, twelveSymbolic } from './rings.ts';
@@ -151,6 +152,24 @@ describe('Splitting lemma', () => {
     const u = (j: number) => fromColumns(f, [[j === 0 ? f.one : f.zero, j === 1 ? f.one : f.zero]]);
     const r = reduceToKernel({ ring: rk, dimension: 2, hamiltonian: h, kernel: u(0), complement: u(1), degree: 6 });
     expect(r.ring.format(r.h)).toBe('-k*u1^4/2');
+  });
+  it('a wide kernel takes the sparse route: y^2/2 + y |u|^2, h = -|u|^4/2', () => {
+    const names = ['y', 'u1', 'u2', 'u3', 'u4', 'u5', 'u6'];
+    const wide = new PolynomialRing<Algebraic>(Q, names);
+    const square = wide.sum([1, 2, 3, 4, 5, 6].map((i) => wide.power(wide.variable(i), 2)));
+    const h = wide.add(wide.scale(wide.power(wide.variable(0), 2), Q.fromRational(1n, 2n)), wide.mul(wide.variable(0), square));
+    const e = (j: number) => names.map((_, i) => (i === j ? Q.one : Q.zero));
+    expect(SeriesAlgebra.fits(6, 6)).toBe(false);
+    const r = reduceToKernel({
+      ring: wide,
+      dimension: 7,
+      hamiltonian: h,
+      kernel: fromColumns(Q, [1, 2, 3, 4, 5, 6].map(e)),
+      complement: fromColumns(Q, [e(0)]),
+      degree: 6,
+    });
+    const u2 = r.ring.sum([0, 1, 2, 3, 4, 5].map((i) => r.ring.power(r.ring.variable(i), 2)));
+    expect(r.ring.format(r.h)).toBe(r.ring.format(r.ring.scale(r.ring.power(u2, 2), Q.fromRational(-1n, 2n))));
   });
   it('no complement and no kernel', () => {
     const cubic = parse([
