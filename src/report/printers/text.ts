@@ -108,7 +108,7 @@ export function printText(document: Document, width: number = DEFAULT): string {
 /** What was asked for stands before what was declared. */
 function terminalOrder(sections: readonly Section[]): readonly Section[] {
   const answers = sections.filter((s) => !DECLARED.includes(s.id));
-  const event = answers.some((s) => s.id === 'zero-event' || s.id === 'events');
+  const event = answers.some((s) => ['zero-event', 'events', 'sweep'].includes(s.id));
   const context = answers.filter((s) => event && s.id === 'components');
   return [...answers.filter((s) => !context.includes(s)), ...context, ...sections.filter((s) => DECLARED.includes(s.id))];
 }

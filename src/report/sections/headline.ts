@@ -92,6 +92,17 @@ function factsOf(view: ReportView): readonly Fact[] {
   if (view.collisions !== undefined && view.collisions.length > 0)
     facts.push({ name: 'Collisions', line: [count(view.collisions.length, 'cluster'), ' off zero'] });
   if (view.stability !== undefined) facts.push({ name: 'Stability', line: [view.stability] });
+  if (view.crossings !== undefined)
+    facts.push({
+      name: 'Zero events',
+      line:
+        view.crossings.length === 0
+          ? ['none in the range']
+          : joined(
+              view.crossings.map((c) => math(relation(formula(c.parameter), c.exact === null ? '~' : '=', formula(c.exact ?? c.value)))),
+              '; ',
+            ),
+    });
   if (view.group !== undefined) {
     const { order, reversing, name } = view.group;
     facts.push({

@@ -187,7 +187,9 @@ export function shortened(name: string, length = 18): string {
   return signs.length <= length ? name : `${signs.slice(0, length - 1).join('')}…`;
 }
 
-/** The label of a component in a picture; a long one is cut. */
+/** The label of a component, or of several, in a picture; a long one is cut. */
 export function labelText(x: number, y: number, label: string, anchor: 'start' | 'middle' | 'end', size: number): Shape {
-  return text(x, y, shortened(label), anchor, size, 'ink', labelLatex(label) ?? undefined);
+  const parts = label.split(' + ').map(labelLatex);
+  const latex = parts.every((part) => part !== null) ? parts.join('\\oplus ') : undefined;
+  return text(x, y, shortened(label), anchor, size, 'ink', latex);
 }
