@@ -9,6 +9,7 @@ import type { Action } from './action.ts';
 import { type Irreducible, irreduciblesOf, type RestrictedGroup, wholeGroup } from './irreducibles.ts';
 import { genericLabels } from './labels.ts';
 import { multiplicityBasis } from './multiplicity-space.ts';
+import { representedBy } from './seed-orbits.ts';
 import { findCutters } from './subspace-search.ts';
 
 export interface Component {
@@ -57,7 +58,7 @@ export function adaptedBlocks(action: Action, components: Components): AdaptedBl
     components.whole.group,
     irreducibles.map((k) => ({ values: k.values, beta: k.beta, multiplicity: k.multiplicity })),
   );
-  const rep = { field: action.field, dimension: action.dimension, group: action.group, matrix: (e: number) => action.matrix(e) };
+  const rep = representedBy(action, components.whole);
   return components.present.map((component, i) => ({
     component,
     basis: multiplicityBasis(rep, irreducibles, i, cutters[i]!),

@@ -6,10 +6,11 @@
  */
 import type { Algebraic } from '../field/index.ts';
 import type { SymmetryClass } from '../group/index.ts';
-import { build, type Matrix, modularRank, multiply, type SparseMatrix, scale, sparseTimes } from '../linear/index.ts';
+import { type Matrix, modularRank, scale, sparseTimes } from '../linear/index.ts';
 import type { Action } from './action.ts';
 import { type Irreducible, irreduciblesOf, type RestrictedGroup, restrictedGroup } from './irreducibles.ts';
-import { coordinateMap, cutterMatrix, multiplicityBasis, type Represented } from './multiplicity-space.ts';
+import { coordinateMap, cutterMatrix, multiplicityBasis } from './multiplicity-space.ts';
+import { type Represented, representedBy } from './seed-orbits.ts';
 import { type Cutter, findCutters } from './subspace-search.ts';
 import { conjugationOnClasses, symmetryClass } from './symmetry-class.ts';
 
@@ -56,12 +57,7 @@ export function symplecticPart(action: Action): SymplecticPart {
 /** All flow blocks of an action, in the order of the irreducibles of Γ₀. */
 export function flowBlocks(action: Action, symplectic: SymplecticPart = symplecticPart(action)): FlowBlock[] {
   const { part, irreducibles } = symplectic;
-  const rep: Represented = {
-    field: action.field,
-    dimension: action.dimension,
-    group: part.group,
-    matrix: (e) => action.matrix(part.inclusion[e]!),
-  };
+  const rep = representedBy(action, part);
   const reversing = action.signs.indexOf(-1);
   const reversingElements = Array.from(action.signs, (x, i) => (x === -1 ? i : -1)).filter((i) => i >= 0);
   const partners = irreducibles.map((k) => (reversing < 0 ? k.index : twisted(action, part, irreducibles, k, reversing)));
@@ -148,12 +144,4 @@ function compressedOperators(
   collect(1, target > 1 ? ofSign(1) : [], target);
   if (withReversing) collect(-1, ofSign(-1), target);
   return out;
-}
-
-/** Restriction of a sparse form to the columns of a basis. */
-export function restrictForm(basis: Matrix<Algebraic>, form: SparseMatrix<Algebraic>): Matrix<Algebraic> {
-  return multiply(
-    build(basis.field, basis.cols, basis.rows, (i, j) => basis.data[j * basis.cols + i]!),
-    sparseTimes(form, basis),
-  );
 }

@@ -8,6 +8,8 @@ export * from './labels.ts';
 export * from './multiplicity-space.ts';
 export * from './orbit.ts';
 export * from './point-labels.ts';
+export * from './restrict-form.ts';
+export * from './seed-orbits.ts';
 export * from './slice.ts';
 export * from './slice-blocks.ts';
 export * from './slice-rotations.ts';

@@ -128,10 +128,22 @@ export function irreduciblesOf(action: Action, part: RestrictedGroup): Irreducib
   return out;
 }
 
-/** The same sparse matrix over a larger field. */
+const embedded = new WeakMap<SparseMatrix<Algebraic>, Map<RealField, SparseMatrix<Algebraic>>>();
+
+/** The same sparse matrix over a larger field; the same object each time. */
 export function embedSparse(a: SparseMatrix<Algebraic>, from: RealField, to: RealField): SparseMatrix<Algebraic> {
   if (from === to) return a;
-  return { ...a, field: to, value: a.value.map((r) => r.map((x) => to.embed(from, x))) };
+  let known = embedded.get(a);
+  if (known === undefined) {
+    known = new Map();
+    embedded.set(a, known);
+  }
+  let out = known.get(to);
+  if (out === undefined) {
+    out = { ...a, field: to, value: a.value.map((r) => r.map((x) => to.embed(from, x))) };
+    known.set(to, out);
+  }
+  return out;
 }
 
 /** The same action over a larger field; the group is kept. */

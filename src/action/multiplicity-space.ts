@@ -2,24 +2,20 @@
  * Multiplicity spaces: for each irreducible K of a subgroup acting on V an exact basis of e V_K (see
  * subspace-search.ts). The forms S and ω restricted to it carry all that happens on the component of K.
  */
-import { type Algebraic, gcd, type RealField } from '../field/index.ts';
-import type { FiniteGroup } from '../group/index.ts';
+import { type Algebraic, gcd, mulAddMod, type RealField } from '../field/index.ts';
 import {
   build,
   fromColumns,
-  identity,
   inverse,
-  kernel,
   type Matrix,
   minor,
   modularEchelon,
   multiply,
   type SparseMatrix,
-  scale,
   sparseFromMaps,
-  sparseTimes,
-  sub,
 } from '../linear/index.ts';
+import { ModularSpan, modularVector } from './modular-span.ts';
+import { cutProjector, type OrbitVectors, orbitsOf, type Represented } from './seed-orbits.ts';
 import type { Cutter } from './subspace-search.ts';
 
 /** An irreducible as the construction needs it. */
@@ -29,14 +25,6 @@ export interface PresentIrreducible {
   readonly multiplicity: number;
   /** Real character by class, exact in the field of the action. */
   readonly character: readonly Algebraic[];
-}
-
-/** Representation of a group by sparse matrices. */
-export interface Represented {
-  readonly field: RealField;
-  readonly dimension: number;
-  readonly group: FiniteGroup;
-  matrix(element: number): SparseMatrix<Algebraic>;
 }
 
 /** e = Σ λ(h) ρ(h), not divided by |H|. */
@@ -64,29 +52,6 @@ function pivotColumns(a: Matrix<Algebraic>, field: RealField): number[] {
   return modularEchelon({ p: r.p, rows: a.rows, cols: a.cols, data: Int32Array.from(a.data, (x) => r.apply(x)) }).pivots;
 }
 
-/** Basis (columns) of the column space of e: `expected` independent columns of e. */
-function columnBasis(e: SparseMatrix<Algebraic>, field: RealField, expected: number): Matrix<Algebraic> {
-  const r = field.reduction();
-  const n = e.rows;
-  const data = new Int32Array(n * n);
-  e.index.forEach((cols, i) => {
-    cols.forEach((j, k) => {
-      data[i * n + j] = r.apply(e.value[i]![k]!);
-    });
-  });
-  const { pivots } = modularEchelon({ p: r.p, rows: n, cols: n, data });
-  if (pivots.length !== expected) throw new Error(`the image of an idempotent has rank ${pivots.length}, its trace says ${expected}`);
-  const place = new Map(pivots.map((j, k) => [j, k]));
-  const out = new Array<Algebraic>(n * pivots.length).fill(field.zero);
-  e.index.forEach((cols, i) => {
-    cols.forEach((j, k) => {
-      const c = place.get(j);
-      if (c !== undefined) out[i * pivots.length + c] = e.value[i]![k]!;
-    });
-  });
-  return { field, rows: n, cols: pivots.length, data: out };
-}
-
 /** Coordinates: X with basis·X = images, for images in the span; rows chosen once. */
 export function coordinateMap(basis: Matrix<Algebraic>, field: RealField): (images: Matrix<Algebraic>) => Matrix<Algebraic> {
   const rows = pivotColumns(
@@ -106,59 +71,126 @@ export function coordinateMap(basis: Matrix<Algebraic>, field: RealField): (imag
     );
 }
 
+/** Candidates in a row that may add nothing before the next orbit is tried. */
+const PATIENCE = 6;
+
 /**
- * Basis of e V_K for the irreducible number k of `present`; columns, dimension × (multiplicity · dim eK).
- * Other irreducibles that λ lets through are separated by the scalars of class sums.
+ * Basis of e V_K for the irreducible number k of `present`; columns, dimension × (multiplicity · dim eK): images of a few
+ * basis vectors of V under e P_K ρ(g), P_K the projector onto the component. Independence is seen modulo a prime, the
+ * dimension is that of the character.
  */
 export function multiplicityBasis(rep: Represented, present: readonly PresentIrreducible[], k: number, cutter: Cutter): Matrix<Algebraic> {
-  const f = rep.field;
-  const group = rep.group;
-  const total = present.reduce((s, x, i) => s + x.multiplicity * cutter.dimensions[i]!, 0);
-  let basis = columnBasis(cutterMatrix(rep, cutter), f, total);
-  let others = present.map((_, i) => i).filter((i) => i !== k && cutter.dimensions[i]! > 0);
-  const scalar = (i: number, c: number) => {
-    // the sum over a class acts on K as |C| χ(C)/χ(1)
-    const size = f.fromRational(BigInt(group.classes[c]!.size), BigInt(present[i]!.dimension));
-    return f.mul(size, present[i]!.character[c]!);
-  };
-  while (others.length > 0) {
-    let best = -1;
-    let score = 0;
-    for (let c = 1; c < group.classes.length; c++) {
-      const mine = scalar(k, c);
-      const separated = others.filter((i) => !f.equal(scalar(i, c), mine)).length;
-      if (separated === 0) continue;
-      const value = separated / (group.classes[c]!.size + 4);
-      if (value > score) {
-        score = value;
-        best = c;
-      }
-    }
-    if (best < 0) throw new Error('two different irreducibles have the same central character');
-    const image = classSumTimes(rep, best, basis);
-    const z = coordinateMap(basis, f)(image);
-    const free = kernel(sub(z, scale(identity<Algebraic>(f, basis.cols), scalar(k, best))));
-    basis = tidy(multiply(basis, free), f);
-    others = others.filter((i) => f.equal(scalar(i, best), scalar(k, best)));
+  const key = `${present[k]!.character.map((x) => rep.field.key(x)).join(' ')} ${cutter.elements.join()} ${cutter.signs.join()}`;
+  let known = bases.get(rep);
+  if (known === undefined) {
+    known = new Map();
+    bases.set(rep, known);
   }
-  const expected = present[k]!.multiplicity * cutter.dimensions[k]!;
-  if (basis.cols !== expected) throw new Error(`a multiplicity space has dimension ${basis.cols}, its character says ${expected}`);
-  return tidy(basis, f);
+  let basis = known.get(key);
+  if (basis === undefined) {
+    basis = makeBasis(rep, present[k]!, present[k]!.multiplicity * cutter.dimensions[k]!, cutter);
+    known.set(key, basis);
+  }
+  return basis;
 }
 
-/** (real class sum)·basis: the mean of a class and of the class of inverses, times the class size. */
-function classSumTimes(rep: Represented, c: number, basis: Matrix<Algebraic>): Matrix<Algebraic> {
+/** Bases made so far: the flow and the components often ask for the same ones. */
+const bases = new WeakMap<Represented, Map<string, Matrix<Algebraic>>>();
+
+/** Coefficients c and elements x of Σ c ρ(x) with one basis vector: a column of a basis. */
+interface Recipe {
+  readonly orbit: OrbitVectors;
+  /** Elements, in the order of `coefficients`. */
+  readonly images: readonly number[];
+  readonly coefficients: readonly Algebraic[];
+}
+
+/** `expected` independent images of basis vectors under e P_K ρ(g), as sums still to be carried out. */
+function findRecipes(rep: Represented, irreducible: PresentIrreducible, expected: number, cutter: Cutter): Recipe[] {
   const f = rep.field;
-  const { group } = rep;
-  const inverseClass = group.classes[c]!.inverse;
-  let sum: Matrix<Algebraic> | undefined;
-  for (let e = 0; e < group.order; e++) {
-    const own = group.classOf[e]!;
-    if (own !== c && own !== inverseClass) continue;
-    const t = sparseTimes(rep.matrix(e), basis);
-    sum = sum === undefined ? t : { ...sum, data: sum.data.map((x, i) => f.add(x, t.data[i]!)) };
+  const { group, dimension } = rep;
+  const { orbits, reduction } = orbitsOf(rep);
+  const { p } = reduction;
+  const all = cutProjector(group, irreducible.character, cutter, f);
+  const support = all.map((_, x) => x).filter((x) => !f.isZero(all[x]!));
+  const coefficients = support.map((x) => all[x]!);
+  const reduced = coefficients.map((x) => reduction.apply(x));
+  const span = new ModularSpan(dimension, p);
+  const scratch = new Int32Array(dimension);
+  const step = strideOf(group.order);
+  const out: Recipe[] = [];
+  for (const patience of [PATIENCE, group.order])
+    for (const orbit of orbits)
+      for (let i = 0, g = 0, failures = 0; i < group.order && failures < patience; i++, g = (g + step) % group.order) {
+        if (out.length === expected) return out;
+        const images = support.map((x) => group.multiply(x, g));
+        scratch.fill(0);
+        for (let q = 0; q < images.length; q++) {
+          const v = orbit.modular[images[q]!]!;
+          for (let j = 0; j < v.length; j += 2) scratch[v[j]!] = mulAddMod(scratch[v[j]!]!, reduced[q]!, v[j + 1]!, p);
+        }
+        if (span.add(modularVector(scratch))) {
+          failures = 0;
+          out.push({ orbit, images, coefficients });
+        } else failures++;
+      }
+  if (out.length === expected) return out;
+  throw new Error(`a multiplicity space has dimension ${out.length}, its character says ${expected}`);
+}
+
+function makeBasis(rep: Represented, irreducible: PresentIrreducible, expected: number, cutter: Cutter): Matrix<Algebraic> {
+  const f = rep.field;
+  const columns = findRecipes(rep, irreducible, expected, cutter).map(({ orbit, images, coefficients }) => {
+    const column = new Array<Algebraic>(rep.dimension).fill(f.zero);
+    images.forEach((y, q) => {
+      const { at, value } = orbit.exact[y]!;
+      at.forEach((j, l) => {
+        column[j] = f.add(column[j]!, f.mul(coefficients[q]!, value[l]!));
+      });
+    });
+    return column;
+  });
+  return tidy(fromColumns(f, columns, rep.dimension), f);
+}
+
+/** The columns of `multiplicityBasis` in doubles, each up to a factor; which ones are independent is decided exactly. */
+export function numericMultiplicityColumns(
+  rep: Represented,
+  present: readonly PresentIrreducible[],
+  k: number,
+  cutter: Cutter,
+): Float64Array[] {
+  const f = rep.field;
+  const recipes = findRecipes(rep, present[k]!, present[k]!.multiplicity * cutter.dimensions[k]!, cutter);
+  return recipes.map(({ orbit, images, coefficients }) => {
+    const values = numbersOf(orbit, f);
+    const column = new Float64Array(rep.dimension);
+    for (let q = 0; q < images.length; q++) {
+      const { at } = orbit.exact[images[q]!]!;
+      const value = values[images[q]!]!;
+      const c = f.toNumber(coefficients[q]!);
+      for (let l = 0; l < at.length; l++) column[at[l]!]! += c * value[l]!;
+    }
+    return column;
+  });
+}
+
+const orbitNumbers = new WeakMap<OrbitVectors, readonly Float64Array[]>();
+
+function numbersOf(orbit: OrbitVectors, f: RealField): readonly Float64Array[] {
+  let out = orbitNumbers.get(orbit);
+  if (out === undefined) {
+    out = orbit.exact.map(({ value }) => Float64Array.from(value, (x) => f.toNumber(x)));
+    orbitNumbers.set(orbit, out);
   }
-  return inverseClass === c ? sum! : scale(sum!, f.fromRational(1n, 2n));
+  return out;
+}
+
+/** A step that visits all elements, far apart: neighbours in the numbering tend to give the same vector again. */
+function strideOf(order: number): number {
+  let step = Math.max(1, Math.round(order * 0.618));
+  while (gcd(BigInt(step), BigInt(order)) !== 1n) step++;
+  return step % order;
 }
 
 /** The same column space with integral columns, echelon from the top, common factors removed. */

@@ -101,7 +101,9 @@ export class CyclotomicField extends AbelianField {
   /** Smallest d dividing N such that all the given elements lie in Q(zeta_d). */
   leastConductor(elements: readonly Algebraic[]): number {
     const n = this.conductor;
-    return divisors(n).find((d) => this.units.every((k) => (k - 1) % d !== 0 || elements.every((a) => this.equal(this.galois(k, a), a)))) ?? n;
+    return (
+      divisors(n).find((d) => this.units.every((k) => (k - 1) % d !== 0 || elements.every((a) => this.equal(this.galois(k, a), a)))) ?? n
+    );
   }
 
   /**

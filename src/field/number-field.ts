@@ -75,6 +75,8 @@ export abstract class AbelianField implements Field<Algebraic> {
       if (a.d === 1n && b.d === 1n) return { c: [x + y], d: 1n };
       return a.d === b.d ? this.element([x + y], a.d) : this.element([x * b.d + y * a.d], a.d * b.d);
     }
+    if (this.isZero(a)) return b;
+    if (this.isZero(b)) return a;
     if (a.d === b.d) {
       const c = a.c.map((x, i) => x + b.c[i]!);
       return a.d === 1n ? { c, d: 1n } : this.element(c, a.d);
@@ -98,6 +100,8 @@ export abstract class AbelianField implements Field<Algebraic> {
       if (a.d === 1n && b.d === 1n) return { c: [x * y], d: 1n };
       return this.element([x * y], a.d * b.d);
     }
+    if (a === this.one) return b;
+    if (b === this.one) return a;
     const c = this.product(a.c, b.c);
     if (a.d === 1n && b.d === 1n) return { c, d: 1n };
     return this.element(c, a.d * b.d);

@@ -65,6 +65,10 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
   readonly #masked: readonly bigint[]; // product of the radicals in a mask
   readonly #units: readonly number[];
   readonly #values: number[];
+  readonly #cosines = new Map<string, Algebraic | undefined>();
+  readonly #roots = new Map<bigint, Algebraic | undefined>();
+  readonly #embeddings = new Map<RealField, (Algebraic | undefined)[]>();
+  readonly #reductions = new Map<number, Reduction>();
 
   private constructor(conductor: number, radicals: readonly bigint[]) {
     const cyclotomic = CyclotomicField.of(conductor);
@@ -151,6 +155,13 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
       num = (num * ((j + 1) / 2)) % j;
       den = j;
     }
+    const key = `${num}/${den}/${sign}`;
+    if (!this.#cosines.has(key)) this.#cosines.set(key, this.#makeCos(num, den, sign));
+    return this.#cosines.get(key);
+  }
+
+  /** sign cos(2 pi num/den) for a reduced fraction, den not 2 mod 4. */
+  #makeCos(num: number, den: number, sign: bigint): Algebraic | undefined {
     const half = (x: Algebraic) =>
       this.element(
         x.c.map((y) => y * sign),
@@ -201,6 +212,11 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
   }
 
   #sqrtPrime(p: bigint): Algebraic | undefined {
+    if (!this.#roots.has(p)) this.#roots.set(p, this.#makeSqrtPrime(p));
+    return this.#roots.get(p);
+  }
+
+  #makeSqrtPrime(p: bigint): Algebraic | undefined {
     const index = this.radicals.indexOf(p);
     if (index >= 0) {
       const c = this.zero.c.slice();
@@ -225,17 +241,29 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
   /** The image of an element of a subfield of this family; throws RangeError if it does not lie in here. */
   embed(from: RealField, a: Algebraic): Algebraic {
     if (from === this) return a;
+    let images = this.#embeddings.get(from);
+    if (images === undefined) {
+      images = new Array<Algebraic | undefined>(from.degree).fill(undefined);
+      this.#embeddings.set(from, images);
+    }
     let out = this.zero;
-    a.c.forEach((x, i) => {
-      if (x === 0n) return;
-      const k = i % from.#m;
-      const cosine = k === 0 ? this.one : this.cos(k, from.conductor);
-      const root = this.sqrt(rational(from.#masked[(i / from.#m) | 0]!));
-      if (cosine === undefined || root === undefined) throw new RangeError(`${from.name} does not lie in ${this.name}`);
-      const factor = k === 0 ? x : 2n * x;
-      out = this.add(out, this.mul(this.fromInteger(factor), this.mul(cosine, root)));
-    });
-    return this.mul(out, this.fromRational(1n, a.d));
+    for (let i = 0; i < a.c.length; i++) {
+      const x = a.c[i]!;
+      if (x === 0n) continue;
+      images[i] ??= this.#imageOfBasis(from, i);
+      const image = images[i]!;
+      out = this.add(out, this.element(x === 1n ? image.c : image.c.map((y) => x * y), image.d));
+    }
+    return a.d === 1n ? out : this.element(out.c, out.d * a.d);
+  }
+
+  #imageOfBasis(from: RealField, i: number): Algebraic {
+    const k = i % from.#m;
+    const cosine = k === 0 ? this.one : this.cos(k, from.conductor);
+    const root = this.sqrt(rational(from.#masked[(i / from.#m) | 0]!));
+    if (cosine === undefined || root === undefined) throw new RangeError(`${from.name} does not lie in ${this.name}`);
+    const image = this.mul(cosine, root);
+    return k === 0 ? image : this.add(image, image);
   }
 
   /** The real element of a cyclotomic field, or undefined if it is not real or not in here. */
@@ -477,6 +505,15 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
 
   /** A reduction into GF(p): p = 1 mod 4N with every adjoined root. `index` picks the prime. */
   reduction(index = 0): Reduction {
+    let out = this.#reductions.get(index);
+    if (out === undefined) {
+      out = this.#makeReduction(index);
+      this.#reductions.set(index, out);
+    }
+    return out;
+  }
+
+  #makeReduction(index: number): Reduction {
     const n = lcmInt(4, this.conductor);
     for (let i = 0, found = -1; ; i++) {
       const p = primeCongruentToOne(n, i);

@@ -6,3 +6,4 @@ export * from './inertia.ts';
 export * from './matrix.ts';
 export * from './modular.ts';
 export * from './sparse.ts';
+export * from './symmetric.ts';

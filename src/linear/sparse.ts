@@ -103,16 +103,25 @@ export function sparseApply<T>(a: SparseMatrix<T>, v: readonly T[]): T[] {
 export function sparseTimes<T>(a: SparseMatrix<T>, b: Matrix<T>): Matrix<T> {
   if (a.cols !== b.rows) throw new ShapeError(`${a.rows} x ${a.cols} times ${b.rows} x ${b.cols}`);
   const f = a.field;
+  const rows = new Array<number[] | undefined>(b.rows).fill(undefined);
+  const nonzero = (k: number): number[] => {
+    let list = rows[k];
+    if (list === undefined) {
+      list = [];
+      for (let j = 0; j < b.cols; j++) if (!f.isZero(b.data[k * b.cols + j]!)) list.push(j);
+      rows[k] = list;
+    }
+    return list;
+  };
   const out = new Array<T>(a.rows * b.cols).fill(f.zero);
-  a.index.forEach((cols, i) => {
-    cols.forEach((k, q) => {
-      const x = a.value[i]![q]!;
-      for (let j = 0; j < b.cols; j++) {
-        const y = b.data[k * b.cols + j]!;
-        if (!f.isZero(y)) out[i * b.cols + j] = f.add(out[i * b.cols + j]!, f.mul(x, y));
-      }
-    });
-  });
+  for (let i = 0; i < a.rows; i++) {
+    const cols = a.index[i]!;
+    const vals = a.value[i]!;
+    for (let q = 0; q < cols.length; q++) {
+      const k = cols[q]!;
+      for (const j of nonzero(k)) out[i * b.cols + j] = f.add(out[i * b.cols + j]!, f.mul(vals[q]!, b.data[k * b.cols + j]!));
+    }
+  }
   return { field: f, rows: a.rows, cols: b.cols, data: out };
 }
 
