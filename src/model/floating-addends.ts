@@ -37,6 +37,8 @@ export function addends(e: Expression, limit = ADDEND_LIMIT): Expression[] {
 export interface TermSizes {
   readonly gradient: number;
   readonly hessian: NumberMatrix;
+  /** Where entries come from matrices of measured numbers: the largest entry of the matrix each comes from, to which its noise is relative. */
+  readonly common?: NumberMatrix;
 }
 
 /** `values` are those of the other names. Terms that are not finite are left out: the sum itself is checked elsewhere. */

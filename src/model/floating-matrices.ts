@@ -240,7 +240,9 @@ export function energyOfMatrices(
         expected: `${names.length} × ${names.length}, for coordinates and momenta`,
       });
     const s = evaluateFamily(family, reader, 'quadratic');
-    return quadratic(names, partOf(s.value, 1, 'quadratic', file), symmetricPart(s.size), () => s.by.map(symmetricPart));
+    const top = largestEntry(s.size);
+    const common = numberBuild(names.length, names.length, () => top);
+    return quadratic(names, partOf(s.value, 1, 'quadratic', file), symmetricPart(s.size), common, () => s.by.map(symmetricPart));
   }
   if (energy.kind !== 'mechanical') throw new RangeError(`an energy of kind ${energy.kind} has no matrices`);
   const { s, size, common, by } = mechanical(

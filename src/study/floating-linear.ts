@@ -4,6 +4,7 @@
  */
 import { type Action, type Component, type Components, componentsOfBlock, type SymplecticPart, symplecticPart } from '../action/index.ts';
 import { InputError } from '../errors/index.ts';
+import { blocksKey } from '../event/floating/readings.ts';
 import { balanceScaling, type CanonicalPair } from '../event/floating/scaling.ts';
 import { decideZeroEvent, type FloatingZero } from '../event/floating/zero.ts';
 import { zeroCodimensionOfPartition } from '../event/partition-codimension.ts';
@@ -75,7 +76,7 @@ function canonicalCells(action: Action): CanonicalPair[] {
 }
 
 /** Diagonal scaling to like units, and S, ω and the scale in the new coordinates. */
-function balancedForms(p: FloatingPrepared, action: Action) {
+function balancedForms(p: FloatingPrepared, action: Action, terms: NumberMatrix) {
   const n = action.dimension;
   const sparse = numberSparse(action.form, action.field);
   const w = numberMatrix(n, n);
@@ -84,7 +85,6 @@ function balancedForms(p: FloatingPrepared, action: Action) {
       w.data[i * n + j] = sparse.value[i]![k]!;
     });
   });
-  const terms = p.sizes.hessian;
   const monomial = sparse.index.every((cols) => cols.length === 1);
   const scaling = new Float64Array(n).fill(1);
   if (monomial) {
@@ -200,12 +200,15 @@ function blockZero(
   return { block, components, raw, transform, s, w, scale, zero, counts, partition, formula, doubt };
 }
 
-/** The blocks of a floating model and what happens at zero on each. */
-export function floatingLinear(prepared: FloatingPrepared & { readonly action: Action; readonly components: Components }): FloatingStudy {
+/** Everything measured against the given sizes of the terms. */
+function measured(
+  prepared: FloatingPrepared & { readonly action: Action; readonly components: Components },
+  symplectic: SymplecticPart,
+  terms: NumberMatrix,
+): FloatingStudy {
   const { action, components } = prepared;
-  const { scaling, hessian, form, scale } = balancedForms(prepared, action);
+  const { scaling, hessian, form, scale } = balancedForms(prepared, action, terms);
   const numeric = numericAction(action, scaling);
-  const symplectic = symplecticPart(action);
   const slice = prepared.neutral === undefined ? undefined : floatingSlice(prepared.neutral, numeric, scaling, form);
   const whole = floatingBlocks(action, symplectic, numeric);
   const own = slice === undefined ? whole : whole.map((b) => ({ ...b, basis: cutBasis(slice, b.basis) })).filter((b) => b.basis.length > 0);
@@ -230,4 +233,24 @@ export function floatingLinear(prepared: FloatingPrepared & { readonly action: A
     blocks,
     ...(slice === undefined ? {} : { slice }),
   };
+}
+
+/**
+ * The blocks of a floating model and what happens at zero on each. Numbers from matrices are measured against the largest entry of their
+ * matrix, and once more entry by entry, as if small entries were due to units and not to noise; where that gives another answer,
+ * the block is undecided.
+ */
+export function floatingLinear(prepared: FloatingPrepared & { readonly action: Action; readonly components: Components }): FloatingStudy {
+  const symplectic = symplecticPart(prepared.action);
+  const { hessian, common } = prepared.sizes;
+  const study = measured(prepared, symplectic, common ?? hessian);
+  if (common === undefined) return study;
+  const other = measured(prepared, symplectic, hessian);
+  const blocks = study.blocks.map((b, i): FloatingBlockZero => {
+    const [here, there] = [blocksKey(b.zero.blocks), blocksKey(other.blocks[i]!.zero.blocks)];
+    if (b.doubt !== null || here === there) return b;
+    const doubt = `the blocks at zero are ${here} if small entries of the matrices are noise, and ${there} if they are due to units; give masses and stiffness as matrices of their own, or in like units`;
+    return { ...b, doubt };
+  });
+  return { ...study, blocks };
 }

@@ -22,7 +22,7 @@ import {
 } from './floating-action.ts';
 import { labelledComponents } from './labels.ts';
 import { type FloatingNeutral, floatingNeutral } from './neutral-floating.ts';
-import type { GeneratorCheck, NotExact } from './prepare.ts';
+import { formFailure, type GeneratorCheck, type NotExact } from './prepare.ts';
 
 /** A declared point that polishing moves by more than this share of 1 + |x| is not near an equilibrium. */
 export const LONGEST_STEP = 1e-2;
@@ -68,7 +68,9 @@ export function toleranceOf(text: string | undefined): number {
 
 function energyOf(source: NotExact, values: ReadonlyMap<string, number>): FloatingEnergy {
   const { declaration, quantities, hamiltonian } = source;
-  if (hamiltonian === undefined) return energyOfMatrices(declaration, quantities.definitions, values, declaration.vary);
+  const { kind } = declaration.energy;
+  if (hamiltonian === undefined || kind === 'hessian' || kind === 'mechanical')
+    return energyOfMatrices(declaration, quantities.definitions, values, declaration.vary);
   return energyOfExpression(hamiltonian, quantities.names, values);
 }
 
@@ -203,7 +205,8 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
   const generators = quantities.generators.map((g, i): GeneratorCheck => {
     const sign = signs[i];
     const matrix = numberSparse(g.matrix, field);
-    const fail = (text: string, invariant: boolean): GeneratorCheck => ({ ...base, invariant, reason: text });
+    const reason = formFailure(g.name, sign, g.declared);
+    const fail = (text: string): GeneratorCheck => ({ ...base, invariant: false, reason: reason ?? text });
     const base = {
       name: g.name,
       where: g.where,
@@ -211,23 +214,20 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
       sign,
       ...(g.declared === undefined ? {} : { declared: g.declared }),
       invariant: true,
+      ...(reason === undefined ? {} : { reason }),
     };
-    if (sign === undefined) return fail(`${g.name} is neither symplectic nor antisymplectic: ρᵀWρ is neither W nor −W`, true);
-    if (g.declared !== undefined && g.declared !== (sign === -1))
-      return fail(
-        `${g.name} is declared ${g.declared ? 'to reverse time' : 'not to reverse time'}, but ρᵀWρ = ${sign === 1 ? 'W' : '−W'}`,
-        true,
-      );
     const moved = applyNumeric(matrix, declared);
     const where = moved.findIndex((x, k) => Math.abs(x - declared[k]!) > LONGEST_STEP * (1 + length(declared)));
-    if (where >= 0) return fail(`${g.name} moves the equilibrium: ${quantities.names[where]} changes`, false);
+    if (where >= 0) return fail(`${g.name} moves the equilibrium: ${quantities.names[where]} changes`);
     const difference = numberCombine(congruenceNumeric(matrix, hessian), hessian, -1);
     const worst = difference.data.reduce((best, x, k) => (Math.abs(x) > Math.abs(difference.data[best]!) ? k : best), 0);
-    if (Math.abs(difference.data[worst] ?? 0) > tolerance * scale) {
+    // the terms of ρᵀSρ before they cancel, where ρ mixes coordinates
+    const spread = { index: matrix.index, value: matrix.value.map((row) => row.map(Math.abs)) };
+    const bound = Math.max(scale, largestEntry(congruenceNumeric(spread, sizes.hessian)));
+    if (Math.abs(difference.data[worst] ?? 0) > tolerance * bound) {
       const [a, b] = [Math.floor(worst / n), worst % n];
       return fail(
-        `H is not invariant under ${g.name}: the coefficient of ${a === b ? `${quantities.names[a]}^2` : `${quantities.names[b]}*${quantities.names[a]}`} changes by ${(difference.data[worst]! / (a === b ? 2 : 1)).toPrecision(3)}, terms of size ${scale.toPrecision(3)}`,
-        false,
+        `H is not invariant under ${g.name}: the coefficient of ${a === b ? `${quantities.names[a]}^2` : `${quantities.names[b]}*${quantities.names[a]}`} changes by ${(difference.data[worst]! / (a === b ? 2 : 1)).toPrecision(3)}, terms of size ${bound.toPrecision(3)}`,
       );
     }
     if (local.higher === undefined) return base;
@@ -249,7 +249,7 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
     });
     if (top < 0) return base;
     const term = { ...change, monomials: [change.monomials[top]!], coefficients: [change.coefficients[top]!] };
-    return fail(`H is not invariant under ${g.name}: H∘ρ − H contains ${ring.format(term)}`, false);
+    return fail(`H is not invariant under ${g.name}: H∘ρ − H contains ${ring.format(term)}`);
   });
   const neutral = floatingNeutral(source, { point: equilibrium.point, hessian, local, scale, tolerance }, generators);
   return {
