@@ -20,8 +20,25 @@ import { freeUnfoldingForms, quadraticText, unfoldingForms } from '../event/unfo
 import { type Family, versality } from '../event/versality.ts';
 import { type BlockForms, blockForms, motionOf, type ZeroEvent, zeroEvent } from '../event/zero-event.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
-import { type SubgroupClass, subgroupClasses } from '../group/index.ts';
-import { above, add, dense, fromColumns, identity, image, inertia, inverse, kernel, type Matrix, multiply, type SparseMatrix, scale, sparse, sub, transpose } from '../linear/index.ts';
+import { isSubconjugate, type SubgroupClass, subgroupClasses } from '../group/index.ts';
+import {
+  above,
+  add,
+  dense,
+  fromColumns,
+  identity,
+  image,
+  inertia,
+  inverse,
+  kernel,
+  type Matrix,
+  multiply,
+  type SparseMatrix,
+  scale,
+  sparse,
+  sub,
+  transpose,
+} from '../linear/index.ts';
 import { formDerivatives } from '../model/form-family.ts';
 import { cubicAlong } from '../model/local.ts';
 import { linearCertificate } from './certificate.ts';
@@ -134,7 +151,10 @@ function family(study: LinearStudy): Family {
   return {
     field: to,
     hessian: embedSparse(local.hessian, from, to),
-    hessianBy: canonicalDerivatives(study, local.hessianBy.map((m) => embedSparse(m, from, to))),
+    hessianBy: canonicalDerivatives(
+      study,
+      local.hessianBy.map((m) => embedSparse(m, from, to)),
+    ),
     gradientBy: local.gradientBy.map((g) => g.map(move)),
     cubicAlong: (v) => {
       const back = v.map((x) => x);
@@ -303,15 +323,30 @@ export function subgroupSummaries(
 ): SubgroupSummary[] {
   const characters = eventCharacters(action, part, blocks);
   const words = elementWords(action);
-  return subgroupCodimensions(action, subgroupsOf(action), characters).map((x) => ({
+  const classes = subgroupsOf(action);
+  const covers = coveringClasses(action, classes);
+  return subgroupCodimensions(action, classes, characters).map((x, i) => ({
     order: x.order,
     reversing: x.reversing,
     conjugates: x.conjugates,
     codimension: x.codimension,
     motion: motionOf(x.codimension, semisimple),
     generators: x.generators.map(words),
+    ...(covers === undefined ? {} : { coveredBy: covers[i]! }),
   }));
 }
+
+/** For each class the numbers of those next above it, up to conjugacy; undefined where there are too many to be drawn. */
+function coveringClasses(action: Action, classes: readonly SubgroupClass[]): number[][] | undefined {
+  if (classes.length > COVER_CLASSES) return undefined;
+  const above = classes.map((a, i) =>
+    classes.flatMap((b, j) => (j !== i && b.order > a.order && b.order % a.order === 0 && isSubconjugate(action.group, a, b) ? [j] : [])),
+  );
+  return above.map((list) => list.filter((j) => !list.some((k) => above[k]!.includes(j))));
+}
+
+/** Inclusions among more classes of subgroups than this are not worked out. */
+const COVER_CLASSES = 60;
 
 /** The same where continuous symmetries fix the equilibrium: they are kept under every subgroup. */
 function continuousSubgroups(study: LinearStudy, slicing: SliceStudy): SubgroupSummary[] {

@@ -83,6 +83,10 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       return { result: await branchesResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
     }
     case 'reduce': {
+      if (options.elliptic === true) {
+        const [{ linearStudy }, { ellipticResult }] = await Promise.all([import('./codim.ts'), import('./elliptic.ts')]);
+        return { result: ellipticResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
+      }
       const [{ linearStudy }, { reduceResult }] = await Promise.all([import('./codim.ts'), import('./reduce.ts')]);
       return { result: reduceResult(linearStudy(prepared), parameters, declaration.degree), status: 0, notes: [] };
     }
