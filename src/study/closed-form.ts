@@ -135,8 +135,9 @@ export function squareRoot(x: Algebraic, field: RealField): ClosedForm | undefin
 
 /** √(a + b√r) = √u ± √v with rational u, v, where (a² − b²r) is the square of a rational. */
 function denested(x: Algebraic, field: RealField): ClosedForm | undefined {
-  if (field.degree !== 2) return undefined;
-  const bar = field.automorphism(1, x);
+  const terms = x.c.flatMap((c, i) => (c === 0n ? [] : [i]));
+  if (field.conductor !== 1 || terms.length !== 2 || terms[0] !== 0) return undefined;
+  const bar = { c: x.c.map((c, i) => (i === 0 ? c : -c)), d: x.d };
   const norm = field.mul(x, bar);
   const trace = field.add(x, bar);
   const rationalOf = (y: Algebraic) => (y.c.every((c, i) => i === 0 || c === 0n) ? rational(y.c[0]!, y.d) : undefined);

@@ -212,6 +212,7 @@ export function sweepFamily(declaration: Declaration): SweepFamily {
   const flow = flowBlocks(action, symplectic);
   const family = exact.kind === 'exact' ? exact.embed(field) : undefined;
   if (family !== undefined) requireInvariant(family, action, at);
+  else requireInvariantValues(hamiltonian, quantities, action, ranges, at);
   return {
     declaration: at,
     range,
@@ -269,6 +270,38 @@ function requireInvariant(family: RationalFamily, action: Action, declaration: D
           expected: 'a generator that leaves H invariant along the whole range',
           next: 'see all of it with symcodim check',
         });
+}
+
+/** Places at which an H that is not exact is compared with its images, and by how much they may differ. */
+const PROBES = 4;
+const INVARIANCE = 1e-9;
+
+function requireInvariantValues(
+  hamiltonian: Expression,
+  quantities: Quantities,
+  action: Action,
+  ranges: readonly Range[],
+  declaration: Declaration,
+): void {
+  const { field } = quantities;
+  const h = compileNumeric(hamiltonian, [...quantities.names, ...ranges.map((r) => r.parameter)]);
+  const start = quantities.point.map((x) => field.toNumber(x));
+  for (let k = 0; k < PROBES; k++) {
+    const x = start.map((v, i) => v + 0.05 * Math.sin(1 + 7 * k + i * i + 3 * i));
+    const mu = ranges.map((r) => r.from + ((k + 0.37) / PROBES) * (r.to - r.from));
+    const value = h([...x, ...mu]);
+    for (const g of action.generators) {
+      const image = g.matrix.index.map((cols, i) => cols.reduce((s, j, q) => s + action.field.toNumber(g.matrix.value[i]![q]!) * x[j]!, 0));
+      const other = h([...image, ...mu]);
+      if (!Number.isFinite(value) || !Number.isFinite(other) || Math.abs(value - other) <= INVARIANCE * (1 + Math.abs(value))) continue;
+      throw new NotInvariantError(`H is not invariant under ${g.name}: ${value} becomes ${other}`, {
+        file: declaration.source,
+        value: g.name,
+        expected: 'a generator that leaves H invariant along the whole range',
+        next: 'see all of it with symcodim check',
+      });
+    }
+  }
 }
 
 type ExactFamily =

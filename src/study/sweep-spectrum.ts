@@ -17,6 +17,8 @@ export interface BlockEigenvalue {
 
 /** Real parts below this share of the modulus are rounding. */
 const AXIS = 1e-7;
+/** Eigenvalues below this share of the largest entry of L are zero: the root of the rounding of their square. */
+const ZERO = 1e-7;
 
 export function flowMatrix(s: NumberMatrix, w: NumberMatrix): NumberMatrix {
   return numberSolve(numberTranspose(w), s);
@@ -28,9 +30,11 @@ export function blockEigenvalues(s: NumberMatrix, w: NumberMatrix): BlockEigenva
   if (s.rows === 2) {
     const area = w.data[1]!;
     const square = -(s.data[0]! * s.data[3]! - s.data[1]! * s.data[2]!) / (area * area);
+    const unit = Math.max(...s.data.map(Math.abs)) / Math.abs(area);
+    if (Math.abs(square) <= ZERO * ZERO * unit * unit) return [{ re: 0, im: 0, sign: 0 }];
     const size = Math.sqrt(Math.abs(square));
     if (square > 0) return [{ re: size, im: 0, sign: 0 }];
-    return [{ re: 0, im: size, sign: square === 0 ? 0 : s.data[0]! + s.data[3]! > 0 ? 1 : -1 }];
+    return [{ re: 0, im: size, sign: s.data[0]! + s.data[3]! > 0 ? 1 : -1 }];
   }
   const l = flowMatrix(s, w);
   const scale = l.data.reduce((m, x) => Math.max(m, Math.abs(x)), 0);
@@ -39,8 +43,8 @@ export function blockEigenvalues(s: NumberMatrix, w: NumberMatrix): BlockEigenva
     .filter((_, i) => i % 2 === 0)
     .map(({ re, im }): BlockEigenvalue => {
       const size = Math.hypot(re, im);
-      const a = Math.abs(re) <= AXIS * size || size <= 1e-14 * scale ? 0 : Math.abs(im) <= AXIS * size ? Math.abs(re) : im < 0 ? -re : re;
-      const b = Math.abs(im) <= AXIS * size ? 0 : Math.abs(im);
+      const a = Math.abs(re) <= AXIS * size || size <= ZERO * scale ? 0 : Math.abs(im) <= AXIS * size ? Math.abs(re) : im < 0 ? -re : re;
+      const b = Math.abs(im) <= AXIS * size || size <= ZERO * scale ? 0 : Math.abs(im);
       return { re: a, im: b, sign: a === 0 && b > 0 ? kreinSign(s, l, b, scale) : 0 };
     });
 }

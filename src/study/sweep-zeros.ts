@@ -4,7 +4,7 @@
  * points of the curve, one by one, so that double eigenvalues are not lost.
  */
 import type { Algebraic } from '../field/index.ts';
-import { largestEntry, type Matrix, minor, modularEchelon } from '../linear/index.ts';
+import { largestEntry, type Matrix, minor, modularEchelon, type NumberMatrix } from '../linear/index.ts';
 import { symmetricEigen } from '../linear/spectral.ts';
 import type { Univariate } from '../polynomial/index.ts';
 import type { ClosedForm } from './closed-form.ts';
@@ -64,7 +64,10 @@ export function zerosOfFamily(family: SweepFamily, blocks: (p: CurvePoint) => Bl
     if (poles.length > 1 && Math.abs(poles.reduceRight((s, c) => s * t.value + field.toNumber(c), 0)) < 1e-12) return [];
     const at = blocks(point);
     // a minor of a block that is singular everywhere may vanish without a further zero
-    const components = t.blocks.map((b) => b.block).filter((i) => rankOf(at.component(i)) < ranks[i]!);
+    const scale = Math.max(...family.adapted.map((_, i) => largestEntry(at.component(i))));
+    const components = t.blocks
+      .map((b) => b.block)
+      .filter((i) => ranks[i] === family.adapted[i]!.basis.cols || rankOf(at.component(i), scale) < ranks[i]!);
     if (components.length === 0) return [];
     return [
       {
@@ -80,8 +83,8 @@ export function zerosOfFamily(family: SweepFamily, blocks: (p: CurvePoint) => Bl
   return { zeros, singular };
 }
 
-function rankOf(m: { readonly rows: number; readonly data: Float64Array; readonly cols: number }): number {
-  const cut = 1e-10 * largestEntry(m);
+function rankOf(m: NumberMatrix, scale: number): number {
+  const cut = 1e-10 * scale;
   return symmetricEigen(m.data, m.rows).values.filter((x) => Math.abs(x) > cut).length;
 }
 
