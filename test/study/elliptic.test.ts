@@ -15,7 +15,7 @@ describe('reduce --elliptic', () => {
   });
   it('Hénon–Heiles on q1 = p1 = 0: −5/12 I² − 235/432 I³ (one-degree-of-freedom reduction)', async () => {
     const b = await elliptic('coordinates: [q1, q2]\nmomenta: [p1, p2]\nhamiltonian: (p1^2+p2^2+q1^2+q2^2)/2 + q1^2*q2 - q2^3/3', 6);
-    expect(b.actions).toContain('-5*I1^2/12');
+    expect(b.actions.replaceAll(' ', '')).toContain('-5*I1^2/12');
     expect(b.actions.replaceAll(' ', '')).toContain('-235*I2^3/432');
     expect(b.resonances).toMatchObject([{ relation: [1, -1], order: 2, generator: 'z1*conj(z2)' }]);
     expect(b.stability).toMatch(/nonlinearly stable/);
