@@ -13,7 +13,16 @@ export interface Culprit {
   readonly next?: string;
 }
 
-export type ErrorKind = 'usage' | 'input' | 'shape' | 'not-a-group' | 'not-symplectic' | 'not-invariant' | 'not-an-equilibrium' | 'undecided' | 'limit';
+export type ErrorKind =
+  | 'usage'
+  | 'input'
+  | 'shape'
+  | 'not-a-group'
+  | 'not-symplectic'
+  | 'not-invariant'
+  | 'not-an-equilibrium'
+  | 'undecided'
+  | 'limit';
 
 /** Base of all errors that are somebody's input or a stated limit, never a defect of the program. */
 export class SymcodimError extends Error {

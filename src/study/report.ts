@@ -1,6 +1,7 @@
 /** `report`: every stage that applies to the model, each with the result of its own command. */
-import type { Declaration } from '../model/declaration/index.ts';
+
 import { SymcodimError } from '../errors/index.ts';
+import type { Declaration } from '../model/declaration/index.ts';
 import type { OutcomeStatus, StudyOptions } from './outcome.ts';
 import type { CodimResult, StudyResult } from './result.ts';
 import type { Answer } from './study.ts';
@@ -14,7 +15,11 @@ export interface ReportResult extends StudyResult {
   readonly left: readonly { readonly stage: string; readonly reason: string }[];
 }
 
-type Stage = (stage: 'check' | 'components' | 'codim' | 'invariants' | 'reduce' | 'branches', declaration: Declaration, options: StudyOptions) => Promise<Answer>;
+type Stage = (
+  stage: 'check' | 'components' | 'codim' | 'invariants' | 'reduce' | 'branches',
+  declaration: Declaration,
+  options: StudyOptions,
+) => Promise<Answer>;
 
 /** Runs the stages. Throws what `codim` throws; a later stage that is out of reach is left out with its reason. */
 export async function reportAnswer(run: Stage, declaration: Declaration, options: StudyOptions): Promise<Answer> {
@@ -22,7 +27,12 @@ export async function reportAnswer(run: Stage, declaration: Declaration, options
   const result = codim.result as CodimResult;
   const stages: StudyResult[] = [result];
   const left: { stage: string; reason: string }[] = [];
-  const wanted = ['components', 'invariants', ...(result.zero === null && options.elliptic !== true ? [] : ['reduce']), ...(result.zero === null ? [] : ['branches'])] as const;
+  const wanted = [
+    'components',
+    'invariants',
+    ...(result.zero === null && options.elliptic !== true ? [] : ['reduce']),
+    ...(result.zero === null ? [] : ['branches']),
+  ] as const;
   for (const stage of wanted as readonly ('components' | 'invariants' | 'reduce' | 'branches')[]) {
     try {
       stages.push((await run(stage, declaration, options)).result);
@@ -32,5 +42,10 @@ export async function reportAnswer(run: Stage, declaration: Declaration, options
     }
   }
   const whole: ReportResult = { ...result, command: 'report', verdict: result.verdict, stages, left };
-  return { result: whole, status: codim.status as OutcomeStatus, stages, notes: [...codim.notes, ...left.map((l) => `${l.stage} is left out: ${l.reason}`)] };
+  return {
+    result: whole,
+    status: codim.status as OutcomeStatus,
+    stages,
+    notes: [...codim.notes, ...left.map((l) => `${l.stage} is left out: ${l.reason}`)],
+  };
 }

@@ -6,14 +6,14 @@ import {
   type Algebraic,
   CyclotomicField,
   cyclotomicPolynomial,
+  mulAddMod,
   PrimeField,
   primeCongruentToOne,
-  mulAddMod,
   type Rational,
   RealField,
-  ratioToNumber,
   rational,
   rationals,
+  ratioToNumber,
   sqrtMod,
   totient,
 } from '../../src/field/index.ts';
@@ -23,7 +23,9 @@ import { fieldLaws } from '../support/field-laws.ts';
 const small = fc.bigInt({ min: -30n, max: 30n });
 const fraction: fc.Arbitrary<Rational> = fc.tuple(small, fc.bigInt({ min: 1n, max: 12n })).map(([n, d]) => rational(n, d));
 const elementsOf = (field: AbelianField): fc.Arbitrary<Algebraic> =>
-  fc.tuple(fc.array(small, { minLength: field.degree, maxLength: field.degree }), fc.bigInt({ min: 1n, max: 9n })).map(([c, d]) => field.element(c, d));
+  fc
+    .tuple(fc.array(small, { minLength: field.degree, maxLength: field.degree }), fc.bigInt({ min: 1n, max: 9n }))
+    .map(([c, d]) => field.element(c, d));
 
 const demands = [
   {},
@@ -100,7 +102,15 @@ describe('real fields', () => {
   it('square roots square to what they are roots of, in radical and in cyclotomic fields (Gauss 1811)', () => {
     for (const demand of [{ squareRoots: [2n, 3n, 5n, 7n] }, { cosines: [840] }]) {
       const f = RealField.of(demand);
-      for (const [n, d] of [[2n, 1n], [3n, 4n], [5n, 9n], [7n, 1n], [21n, 2n], [12n, 1n], [0n, 1n]] as const) {
+      for (const [n, d] of [
+        [2n, 1n],
+        [3n, 4n],
+        [5n, 9n],
+        [7n, 1n],
+        [21n, 2n],
+        [12n, 1n],
+        [0n, 1n],
+      ] as const) {
         const r = f.sqrt(rational(n, d))!;
         expect(f.equal(f.mul(r, r), f.fromRational(n, d))).toBe(true);
         expect(f.sign(r)).toBe(n === 0n ? 0 : 1);
@@ -123,7 +133,14 @@ describe('real fields', () => {
   it('the characters of a cyclotomic field come down to the least real field', () => {
     const c = CyclotomicField.of(30);
     const f = RealField.of({ squareRoots: [5n] });
-    for (const [power, value] of [[6, (Math.sqrt(5) - 1) / 2], [3, (Math.sqrt(5) + 1) / 2], [12, (-Math.sqrt(5) - 1) / 2], [10, -1], [15, -2], [0, 2]] as const) {
+    for (const [power, value] of [
+      [6, (Math.sqrt(5) - 1) / 2],
+      [3, (Math.sqrt(5) + 1) / 2],
+      [12, (-Math.sqrt(5) - 1) / 2],
+      [10, -1],
+      [15, -2],
+      [0, 2],
+    ] as const) {
       const x = f.fromCyclotomic(c, c.add(c.root(power), c.root(-power)));
       expect(x === undefined ? Number.NaN : f.toNumber(x)).toBeCloseTo(value, 12);
     }

@@ -42,9 +42,14 @@ import {
 
 const Q = RealField.of();
 const K = RealField.of({ squareRoots: [5n] });
-const entry = (f: RealField) => fc.tuple(...Array.from({ length: f.degree }, () => fc.integer({ min: -3, max: 3 }))).map((c) => f.element(c.map(BigInt), 1n));
+const entry = (f: RealField) =>
+  fc.tuple(...Array.from({ length: f.degree }, () => fc.integer({ min: -3, max: 3 }))).map((c) => f.element(c.map(BigInt), 1n));
 const matrices = (f: RealField, rows: fc.Arbitrary<number>, cols: fc.Arbitrary<number>): fc.Arbitrary<Matrix<Algebraic>> =>
-  fc.tuple(rows, cols).chain(([r, c]) => fc.array(entry(f), { minLength: r * c, maxLength: r * c }).map((data) => ({ field: f as Field<Algebraic>, rows: r, cols: c, data })));
+  fc
+    .tuple(rows, cols)
+    .chain(([r, c]) =>
+      fc.array(entry(f), { minLength: r * c, maxLength: r * c }).map((data) => ({ field: f as Field<Algebraic>, rows: r, cols: c, data })),
+    );
 const size = fc.integer({ min: 0, max: 5 });
 const run = { numRuns: 60, seed: 20261201 };
 
@@ -84,10 +89,14 @@ for (const f of [Q, K])
       ));
     it('the intersection of two spaces has the dimension that the formula says', () =>
       fc.assert(
-        fc.property(matrices(f, fc.constant(4), fc.integer({ min: 0, max: 3 })), matrices(f, fc.constant(4), fc.integer({ min: 0, max: 3 })), (a, b) => {
-          const [u, v] = [image(a), image(b)];
-          expect(intersection(u, v).cols).toBe(u.cols + v.cols - rank(beside(u, v)));
-        }),
+        fc.property(
+          matrices(f, fc.constant(4), fc.integer({ min: 0, max: 3 })),
+          matrices(f, fc.constant(4), fc.integer({ min: 0, max: 3 })),
+          (a, b) => {
+            const [u, v] = [image(a), image(b)];
+            expect(intersection(u, v).cols).toBe(u.cols + v.cols - rank(beside(u, v)));
+          },
+        ),
         run,
       ));
     it('inertia is invariant under congruence (Sylvester 1852) and agrees with the rank', () =>
@@ -151,7 +160,15 @@ describe('sparse and modular routines agree with dense exact ones', () => {
         expect(modularRank(m)).toBe(rank(build(Q, a.rows, a.cols, (i, j) => a.data[i * a.cols + j]!)));
         const k = modularKernel(m);
         expect(k.rows).toBe(a.cols - modularRank(m));
-        const product = modularMultiply(m, { p, rows: a.cols, cols: k.rows, data: Int32Array.from({ length: a.cols * k.rows }, (_, t) => k.data[(t % Math.max(1, k.rows)) * a.cols + Math.floor(t / Math.max(1, k.rows))]!) });
+        const product = modularMultiply(m, {
+          p,
+          rows: a.cols,
+          cols: k.rows,
+          data: Int32Array.from(
+            { length: a.cols * k.rows },
+            (_, t) => k.data[(t % Math.max(1, k.rows)) * a.cols + Math.floor(t / Math.max(1, k.rows))]!,
+          ),
+        });
         expect(product.data.every((x) => x === 0)).toBe(true);
       }),
       run,
