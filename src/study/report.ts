@@ -1,5 +1,4 @@
 /** `report`: every stage that applies to the model, each with the result of its own command. */
-
 import { SymcodimError } from '../errors/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import type { OutcomeStatus, StudyOptions } from './outcome.ts';
@@ -16,7 +15,7 @@ export interface ReportResult extends StudyResult {
 }
 
 type Stage = (
-  stage: 'check' | 'components' | 'codim' | 'invariants' | 'reduce' | 'branches',
+  stage: 'components' | 'codim' | 'invariants' | 'reduce' | 'branches' | 'sweep',
   declaration: Declaration,
   options: StudyOptions,
 ) => Promise<Answer>;
@@ -32,8 +31,9 @@ export async function reportAnswer(run: Stage, declaration: Declaration, options
     'invariants',
     ...(result.zero === null && options.elliptic !== true ? [] : ['reduce']),
     ...(result.zero === null ? [] : ['branches']),
+    ...(declaration.range.size === 0 ? [] : ['sweep']),
   ] as const;
-  for (const stage of wanted as readonly ('components' | 'invariants' | 'reduce' | 'branches')[]) {
+  for (const stage of wanted as readonly ('components' | 'invariants' | 'reduce' | 'branches' | 'sweep')[]) {
     try {
       stages.push((await run(stage, declaration, options)).result);
     } catch (error) {
