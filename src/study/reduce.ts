@@ -126,7 +126,10 @@ export function reducedSummary<C>(study: LinearStudy, reduction: Reduction<C>, p
       .map((g) => ({ name: g.name, polynomial: generators.spaces.ring.format(g.polynomial) })),
     ...(analysis.conditions === null || analysis.conditions.length === 0 ? {} : { conditions: analysis.conditions }),
     ...(analysis.moduliTerms.length === 0 ? {} : { moduliTerms: analysis.moduliTerms }),
-    because: analysis.because,
+    because:
+      analysis.stratumCodimension !== null && analysis.stratumCodimension > parameters
+        ? `${analysis.because}; terms that the declared symmetry allows are missing, which a symmetry that was not declared would explain (symcodim check --find looks for one)`
+        : analysis.because,
     polynomial: ring.format(germ),
     ...motion,
     generic: analysis.stratumCodimension === null ? null : analysis.stratumCodimension <= parameters,

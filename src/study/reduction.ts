@@ -16,7 +16,7 @@ import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, Rati
 import type { LinearStudy } from './codim.ts';
 
 /** Degrees tried until the germ is determined, where none is asked for. */
-const DEGREES = [4, 6, 8];
+const DEGREES = [4, 6, 8, 10];
 /** On kernels of more dimensions the series are cut at degree 6. */
 const WIDE_KERNEL = 3;
 /** Phase spaces beyond this dimension are not expanded to high degree. */
