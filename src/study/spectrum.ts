@@ -1,7 +1,8 @@
 /** Spectrum, collisions and stability of an exact model: eigenvalues by component with their Krein signatures, and what they mean in words. */
 import { blockRoots } from '../event/block-spectrum.ts';
 import { type ClusterPlace, type Collision, collisionsOf } from '../event/collisions.ts';
-import { eigenvalueOf, exactPlaces, genericMultiplicity } from '../event/collisions-exact.ts';
+import { eigenvalueOf, exactPlaces } from '../event/collisions-exact.ts';
+import { genericMultiplicity } from '../event/collisions-suspects.ts';
 import { inertia } from '../linear/index.ts';
 import type { LinearStudy } from './codim.ts';
 import type { CodimResult, CollisionSummary, InertiaSummary, SpectrumEntry } from './result.ts';
