@@ -19,7 +19,7 @@ const planar = [
 const runs = [
   ['--help'],
   ['codim', ...planar, '--vary', 'mu', '--json'],
-  ['report', ...planar, '--latex', '-'],
+  ['report', ...planar, '--vary', 'mu', '--latex', '-'],
   ...(existsSync(sample) ? [['codim', sample]] : []),
 ];
 

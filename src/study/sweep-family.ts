@@ -8,7 +8,6 @@ import {
   type AdaptedBlock,
   adaptedBlocks,
   type Components,
-  componentsOf,
   componentsOfBlock,
   embedAction,
   embedSparse,
@@ -48,6 +47,7 @@ import {
 import { type Quantities, rationalNear, readQuantities } from '../model/quantities.ts';
 import { factorsOf, type Polynomial, type PolynomialRing, type Univariate, UnivariateRing } from '../polynomial/index.ts';
 import { fixedSpace } from './codim.ts';
+import { labelledComponents } from './labels.ts';
 
 /** Values of the parameter at which the curves of a picture are computed, where nothing else is said. */
 export const DEFAULT_STEPS = 200;
@@ -207,7 +207,7 @@ export function sweepFamily(declaration: Declaration): SweepFamily {
   const exact = rationalFamily(h, quantities, range.parameter, at);
   const field = exact.kind === 'exact' ? RealField.join(small.field, exact.field) : small.field;
   const action = embedAction(small, field);
-  const components = componentsOf(action);
+  const components = labelledComponents(at, action);
   const symplectic = symplecticPart(action);
   const flow = flowBlocks(action, symplectic);
   const family = exact.kind === 'exact' ? exact.embed(field) : undefined;
