@@ -11,6 +11,7 @@ import {
   numberIdentity,
   numberMultiply,
   numberSolve,
+  symmetricEigenvalues,
   toNumberMatrix,
 } from '../linear/index.ts';
 import { RealRoots, UnivariateRing } from '../polynomial/index.ts';
@@ -26,43 +27,6 @@ export interface SquareRoot {
   readonly y: ComplexRoot;
   readonly multiplicity: number;
   readonly krein: 1 | -1 | undefined;
-}
-
-/** Eigenvalues of a symmetric matrix, ascending, by cyclic rotations (C. G. J. Jacobi 1846, from memory). */
-export function jacobiEigenvalues(a: NumberMatrix): Float64Array {
-  const n = a.rows;
-  const d = Float64Array.from(a.data);
-  for (let sweep = 0; sweep < 40; sweep++) {
-    let off = 0;
-    let all = 0;
-    for (let i = 0; i < n; i++)
-      for (let j = 0; j < n; j++) {
-        const x = d[i * n + j]! ** 2;
-        all += x;
-        if (i !== j) off += x;
-      }
-    if (off <= 1e-30 * all) break;
-    for (let p = 0; p < n; p++)
-      for (let q = p + 1; q < n; q++) {
-        const x = d[p * n + q]!;
-        if (x === 0) continue;
-        const theta = (d[q * n + q]! - d[p * n + p]!) / (2 * x);
-        const t = (theta >= 0 ? 1 : -1) / (Math.abs(theta) + Math.sqrt(theta * theta + 1));
-        const c = 1 / Math.sqrt(t * t + 1);
-        const s = t * c;
-        for (let k = 0; k < n; k++) {
-          const [u, v] = [d[k * n + p]!, d[k * n + q]!];
-          d[k * n + p] = c * u - s * v;
-          d[k * n + q] = s * u + c * v;
-        }
-        for (let k = 0; k < n; k++) {
-          const [u, v] = [d[p * n + k]!, d[q * n + k]!];
-          d[p * n + k] = c * u - s * v;
-          d[q * n + k] = s * u + c * v;
-        }
-      }
-  }
-  return Float64Array.from({ length: n }, (_, i) => d[i * n + i]!).sort();
 }
 
 /** Lower triangular c with c cᵀ = s, for positive definite s. */
@@ -85,7 +49,7 @@ function definiteRoots(s: NumberMatrix, w: NumberMatrix, sign: 1 | -1): SquareRo
   const transposed = numberBuild(n, n, (i, j) => c.data[j * n + i]!);
   const form = numberBuild(n, n, (i, j) => w.data[j * n + i]!);
   const skew = numberMultiply(transposed, numberSolve(form, c));
-  const values = jacobiEigenvalues(numberMultiply(skew, skew));
+  const values = symmetricEigenvalues(numberMultiply(skew, skew));
   const out: { y: number; multiplicity: number }[] = [];
   for (let i = 0; i < n; i += 2) {
     const y = (values[i]! + values[i + 1]!) / 2;

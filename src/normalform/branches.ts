@@ -8,10 +8,11 @@
  * the next form that is not fixes the direction.
  */
 import type { RealField } from '../field/index.ts';
+import { numberMatrix, symmetricEigenvalues } from '../linear/index.ts';
 import { axialBranches } from './axial-branches.ts';
 import type { Branch, BranchDiagram, BranchInput, Forms } from './branch.ts';
 import { isotropyLattice } from './isotropy.ts';
-import { NumericPolynomial, symmetricEigenvalues } from './numeric-polynomial.ts';
+import { NumericPolynomial } from './numeric-polynomial.ts';
 import { submaximalBranches } from './submaximal-branches.ts';
 
 export type { Branch, BranchDiagram, BranchInput, BranchSide } from './branch.ts';
@@ -53,7 +54,7 @@ function degrees({ input }: Forms, branches: readonly Branch[], undecided: reado
   let above = 0;
   if (order === 2) {
     const quadratic = input.ring.homogeneousPart(l, 2);
-    const values = symmetricEigenvalues(NumericPolynomial.of(input.ring, quadratic).hessian(new Float64Array(n)), n);
+    const values = symmetricEigenvalues(numberMatrix(n, n, NumericPolynomial.of(input.ring, quadratic).hessian(new Float64Array(n))));
     if (values.some((x) => Math.abs(x) < 1e-9)) return null;
     const negative = values.filter((x) => x < 0).length;
     above += (-1) ** negative;

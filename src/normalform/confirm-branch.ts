@@ -1,7 +1,7 @@
 /** A predicted branch looked for on the full equations ∇H(x, mu) = 0 by Newton's iteration, close to the event. */
-import type { NumberMatrix } from '../linear/index.ts';
+import { type NumberMatrix, symmetricEigenvalues } from '../linear/index.ts';
 import type { Branch } from './branches.ts';
-import { newton, norm, symmetricEigenvalues } from './numeric-polynomial.ts';
+import { newton, norm } from './numeric-polynomial.ts';
 
 export interface FullEquations {
   readonly dimension: number;
@@ -67,6 +67,6 @@ function search(
   const moved = norm(end.point.map((x, i) => x - start[i]!));
   const near = moved <= 0.35 * norm(shift);
   const confirmed = end.converged && near;
-  const index = confirmed ? symmetricEigenvalues(hessian(end.point, mu + step).data, n).filter((x) => x < 0).length : null;
+  const index = confirmed ? symmetricEigenvalues(hessian(end.point, mu + step)).filter((x) => x < 0).length : null;
   return { side, confirmed, step, point: confirmed ? end.point : null, residual: end.residual, index };
 }

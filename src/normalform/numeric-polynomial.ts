@@ -83,43 +83,6 @@ export class NumericPolynomial {
   }
 }
 
-/** Eigenvalues of a small symmetric matrix, ascending, by Jacobi's rotations (C. G. J. Jacobi 1846). */
-export function symmetricEigenvalues(matrix: Float64Array, n: number): Float64Array {
-  const a = matrix.slice();
-  for (let sweep = 0; sweep < 60; sweep++) {
-    let off = 0;
-    let all = 0;
-    for (let i = 0; i < n; i++)
-      for (let j = 0; j < n; j++) {
-        all += a[i * n + j]! ** 2;
-        if (i !== j) off += a[i * n + j]! ** 2;
-      }
-    if (off <= 1e-32 * all) break;
-    for (let p = 0; p < n; p++)
-      for (let q = p + 1; q < n; q++) {
-        const apq = a[p * n + q]!;
-        if (apq === 0) continue;
-        const theta = (a[q * n + q]! - a[p * n + p]!) / (2 * apq);
-        const t = (theta >= 0 ? 1 : -1) / (Math.abs(theta) + Math.sqrt(theta * theta + 1));
-        const c = 1 / Math.sqrt(t * t + 1);
-        const s = t * c;
-        for (let k = 0; k < n; k++) {
-          const x = a[k * n + p]!;
-          const y = a[k * n + q]!;
-          a[k * n + p] = c * x - s * y;
-          a[k * n + q] = s * x + c * y;
-        }
-        for (let k = 0; k < n; k++) {
-          const x = a[p * n + k]!;
-          const y = a[q * n + k]!;
-          a[p * n + k] = c * x - s * y;
-          a[q * n + k] = s * x + c * y;
-        }
-      }
-  }
-  return Float64Array.from({ length: n }, (_, i) => a[i * n + i]!).sort();
-}
-
 export interface NewtonResult {
   readonly point: Float64Array;
   /** Length of the residual. */

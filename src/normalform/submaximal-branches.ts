@@ -2,11 +2,11 @@
  * Branches in fixed spaces of dimension two and more: critical directions of the leading form, or of the first form that is not a
  * function of the invariant quadratic form; signatures by Newton's iteration on the truncated potential.
  */
-import { numberMatrix } from '../linear/index.ts';
+import { numberMatrix, symmetricEigenvalues } from '../linear/index.ts';
 import { type Branch, type BranchSide, exponentText, type Forms, type Found, nothing, restricted, typeName } from './branch.ts';
 import { criticalDirections, dependentGradients } from './critical-directions.ts';
 import type { IsotropyClass } from './isotropy.ts';
-import { NumericPolynomial, newton, norm, symmetricEigenvalues } from './numeric-polynomial.ts';
+import { NumericPolynomial, newton, norm } from './numeric-polynomial.ts';
 
 /** How many elements fix u, and whether u lies in the orbit of w. */
 function stabiliserOrder(forms: Forms, u: Float64Array): number {
@@ -155,7 +155,7 @@ function signatureAlong(
     );
     const moved = norm(end.point.map((x, i) => x - start[i]!));
     if (moved > 0.5 * s) return { positive: 0, negative: 0, undecided: n };
-    const values = symmetricEigenvalues(hessian(end.point), n);
+    const values = symmetricEigenvalues(numberMatrix(n, n, hessian(end.point)));
     const largest = Math.max(Math.abs(values[0]!), Math.abs(values[n - 1]!));
     const cut = largest * 1e-11;
     patterns.push([values.filter((x) => x > cut).length, values.filter((x) => x < -cut).length]);
