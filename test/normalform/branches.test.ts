@@ -1,8 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import type { LinearAction } from '../../src/invariant/linear-action.ts';
+import { symmetricEigenvalues } from '../../src/linear/index.ts';
 import { type Branch, branchDiagram } from '../../src/normalform/branches.ts';
 import { confirmBranch } from '../../src/normalform/confirm-branch.ts';
-import { newton, norm, symmetricEigenvalues } from '../../src/normalform/numeric-polynomial.ts';
+import { newton, norm } from '../../src/normalform/numeric-polynomial.ts';
 import { cyclic, dihedral, octahedral, octahedralFull, signs, symmetric, tetrahedralFull, trivial } from './actions.ts';
 import {
   equationsOf,
@@ -123,7 +124,7 @@ describe('Golubitsky, Stewart, Schaeffer 1988, ch. XIII; Melbourne 1986 (places 
           1e-12,
         );
         expect(end.converged).toBe(true);
-        expect(symmetricEigenvalues(e.hessian(end.point, mu).data, e.dimension).filter((v) => v < 0).length).toBe(on(b, side)!.negative);
+        expect(symmetricEigenvalues(e.hessian(end.point, mu)).filter((v) => v < 0).length).toBe(on(b, side)!.negative);
         return [Number(norm(end.point).toFixed(5)), on(b, side)!.negative, b.copies];
       });
     expect(rows.sort((x, y) => x[0]! - y[0]!)).toEqual(expected);

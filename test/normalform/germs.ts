@@ -2,9 +2,9 @@
 import type { Algebraic, RealField } from '../../src/field/index.ts';
 import { minimalGenerators } from '../../src/invariant/generators.ts';
 import type { LinearAction } from '../../src/invariant/linear-action.ts';
-import { numberIdentity, numberMatrix } from '../../src/linear/index.ts';
+import { numberIdentity, numberMatrix, symmetricEigenvalues } from '../../src/linear/index.ts';
 import type { FullEquations } from '../../src/normalform/confirm-branch.ts';
-import { NumericPolynomial, newton, norm, randomSource, symmetricEigenvalues } from '../../src/normalform/numeric-polynomial.ts';
+import { NumericPolynomial, newton, norm, randomSource } from '../../src/normalform/numeric-polynomial.ts';
 import { type Polynomial, PolynomialRing } from '../../src/polynomial/index.ts';
 
 export type Ring = PolynomialRing<Algebraic>;
@@ -86,7 +86,7 @@ export function search(e: FullEquations, mu: number, low: number, high: number, 
     out.push({
       point: end.point,
       radius,
-      index: symmetricEigenvalues(e.hessian(end.point, mu).data, e.dimension).filter((v) => v < 0).length,
+      index: symmetricEigenvalues(e.hessian(end.point, mu)).filter((v) => v < 0).length,
     });
   }
   return out;

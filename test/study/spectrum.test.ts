@@ -1,7 +1,5 @@
 /** Spectra, collisions and stability of whole models, each with the published source of its numbers. */
 import { describe, expect, it } from 'vitest';
-import { jacobiEigenvalues } from '../../src/event/block-spectrum.ts';
-import { numberBuild } from '../../src/linear/index.ts';
 import { type Declaration, readModelFile, readModelText } from '../../src/model/declaration/index.ts';
 import type { CodimResult } from '../../src/study/result.ts';
 import { stabilityWords } from '../../src/study/spectrum.ts';
@@ -116,16 +114,5 @@ describe('stability in words', () => {
     expect(stabilityWords({ ...facts, inertia: { positive: 0, zero: 2, negative: 0 } })).toMatch(/vanishes/);
     expect(stabilityWords({ ...facts, inertia: { positive: 0, zero: 0, negative: 0 } })).toMatch(/Nothing moves/);
     expect(stabilityWords({ ...facts, complete: false })).toMatch(/open/);
-  });
-});
-
-describe('Jacobi’s method', () => {
-  it('the path of n springs with fixed ends: 4 sin²(kπ/2(n + 1)) (J. L. Lagrange, from memory)', () => {
-    const n = 12;
-    const values = jacobiEigenvalues(numberBuild(n, n, (i, j) => (i === j ? 2 : Math.abs(i - j) === 1 ? -1 : 0)));
-    values.forEach((x, k) => {
-      expect(x).toBeCloseTo(4 * Math.sin(((k + 1) * Math.PI) / (2 * (n + 1))) ** 2, 12);
-    });
-    expect(jacobiEigenvalues(numberBuild(0, 0, () => 0))).toHaveLength(0);
   });
 });
