@@ -13,6 +13,7 @@ import { type EventNumbers, exactEvent, floatingEvent, inertiaAt, type Observati
 import { formatRational, type SweepFamily, sweepFamily } from './sweep-family.ts';
 import { type ZeroChart, zeroChart } from './sweep-grid.ts';
 import { type Zeros, zerosOfFamily, zerosOnCurve } from './sweep-zeros.ts';
+import { thresholdFormulas } from './threshold-formula.ts';
 
 /** A zero event on the way. */
 export interface Crossing {
@@ -20,6 +21,8 @@ export interface Crossing {
   readonly value: number;
   /** In closed form, or null. */
   readonly exact: string | null;
+  /** In the other parameters, where there are some. */
+  readonly formula?: string;
   /** Defining polynomial of a value without closed form, and the value to 30 digits. */
   readonly polynomial?: string;
   readonly digits?: string;
@@ -79,7 +82,12 @@ export async function sweepResult(declaration: Declaration, options: SweepOption
   const place = locator(family, curve);
   const zeros = family.rational === undefined ? zerosOnCurve(family, curve, blocks) : zerosOfFamily(family, blocks);
   tell(0.3);
-  const crossings = crossingsOf(family, zeros, place, blocks);
+  const formulas = await thresholdFormulas(family, [...new Set(zeros.zeros.flatMap((z) => z.components))]);
+  const crossings = crossingsOf(family, zeros, place, blocks).map((c, k): Crossing => {
+    const near = (f: { readonly value: number }) => Math.abs(f.value - c.value) <= 1e-12 * Math.max(1, Math.abs(c.value));
+    const found = formulas.get(zeros.zeros[k]!.components[0]!)?.find(near);
+    return found === undefined || found.text === c.exact ? c : { ...c, formula: found.text };
+  });
   tell(0.5);
   const tracks = await tracksOf(family, curve, blocks, (share) => tell(0.5 + 0.3 * share));
   const collisions = sweepCollisions(family, curve, blocks, tracks);

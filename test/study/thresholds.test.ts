@@ -84,6 +84,27 @@ describe('oscillator in a turning frame: k = W²', () => {
   });
 });
 
+describe('formulas in the other parameters', () => {
+  const formulas = async (hamiltonian: string, set: Record<string, string>, range: Record<string, [string, string]>, rest = {}) =>
+    (await sweepResult(declareOptions({ hamiltonian, set, range, ...rest }))).crossings.map((c) => c.formula ?? null);
+  const turning = '(p1^2+p2^2)/2 + k*(q1^2+q2^2)/2 - W*(q1*p2-q2*p1)';
+  const group = { group: 'cyclic:5', on: [['q1', 'q2']] };
+
+  it('k = W² and W = √k for the oscillator in a turning frame', async () => {
+    expect(await formulas(turning, { W: '3/2' }, { k: ['1', '3'] }, group)).toEqual(['W^2']);
+    expect(await formulas(turning, { k: '2' }, { W: ['1', '3'] }, group)).toEqual(['sqrt(k)']);
+  });
+
+  it('a quotient, two square roots, and none of degree three or without other parameters', async () => {
+    expect(await formulas('p^2/2 + (a*mu + b)*q^2/2', { a: '3', b: '-1' }, { mu: ['-1', '1'] })).toEqual(['-b/a']);
+    const two = await formulas('(p1^2+p2^2)/2 + (a*q1^2 + b*q2^2)/2 + mu*q1*q2', { a: '2', b: '3' }, { mu: ['-3', '3'] });
+    expect(two).toHaveLength(2);
+    for (const text of two) expect(text).toMatch(/sqrt/);
+    expect(await formulas('p^2/2 + (mu^3 - a)*q^2/2', { a: '2' }, { mu: ['-3', '3'] })).toEqual([null]);
+    expect(await formulas('p^2/2 + (mu - 1)*q^2/2', {}, { mu: ['-3', '3'] })).toEqual([null]);
+  });
+});
+
 describe('rings of equal vortices (T. H. Havelock 1931)', () => {
   it.each([3, 4, 5, 6, 7, 8, 9, 10, 11, 12])('N = %i: λ² of mode k is k(N - k)(k(N - k) - 2(N - 1))/4', async (n) => {
     const { paths, singular } = await sweepResult(steps(declareObject(vortexRing(n)), 2));
