@@ -44,6 +44,18 @@ export interface Quantities {
 
 /** Reads all numbers of a declaration. Throws InputError for what cannot be read. */
 export function readQuantities(declaration: Declaration): Quantities {
+  let out = known.get(declaration);
+  if (out === undefined) {
+    out = makeQuantities(declaration);
+    known.set(declaration, out);
+  }
+  return out;
+}
+
+/** Declarations read before; none changes after it was made. */
+const known = new WeakMap<Declaration, Quantities>();
+
+function makeQuantities(declaration: Declaration): Quantities {
   const names = [...declaration.coordinates, ...declaration.momenta];
   const half = declaration.coordinates.length;
   const file = declaration.source;

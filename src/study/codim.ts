@@ -75,6 +75,18 @@ export interface LinearStudy {
 
 /** Runs the linear analysis. Throws the errors of `check` where the model is not what it claims. */
 export function linearStudy(prepared: Prepared): LinearStudy {
+  let out = linearStudies.get(prepared);
+  if (out === undefined) {
+    out = makeLinearStudy(prepared);
+    linearStudies.set(prepared, out);
+  }
+  return out;
+}
+
+/** The stages of a report share one analysis. */
+const linearStudies = new WeakMap<Prepared, LinearStudy>();
+
+function makeLinearStudy(prepared: Prepared): LinearStudy {
   requireHolds(prepared);
   const given = actionOf(prepared);
   const slicing = sliceStudy(prepared, given);

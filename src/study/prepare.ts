@@ -57,8 +57,22 @@ export function isExact(p: Prepared | NotExact): p is Prepared {
   return 'local' in p;
 }
 
-/** Reads and checks a model. Throws InputError for what cannot be read; checks that fail are recorded, not thrown. */
+const preparedModels = new WeakMap<Declaration, Prepared | NotExact>();
+
+/**
+ * Reads and checks a model, once for each declaration. Throws InputError for what cannot be read; checks that fail are
+ * recorded, not thrown.
+ */
 export function prepare(declaration: Declaration): Prepared | NotExact {
+  let out = preparedModels.get(declaration);
+  if (out === undefined) {
+    out = makePrepared(declaration);
+    preparedModels.set(declaration, out);
+  }
+  return out;
+}
+
+function makePrepared(declaration: Declaration): Prepared | NotExact {
   const quantities = readQuantities(declaration);
   const file = declaration.source;
   requireNondegenerate(quantities, declaration);

@@ -6,6 +6,7 @@ import {
   type Algebraic,
   CyclotomicField,
   cyclotomicPolynomial,
+  isPrime,
   mulAddMod,
   PrimeField,
   primeCongruentToOne,
@@ -202,5 +203,24 @@ describe('integers and primes', () => {
     expect(ratioToNumber(10n ** 400n, 3n * 10n ** 400n)).toBeCloseTo(1 / 3, 15);
     expect(ratioToNumber(-(2n ** 60n), 1n)).toBe(-(2 ** 60));
     expect(ratioToNumber(0n, 5n)).toBe(0);
+  });
+});
+
+describe('Primality below 2^31', () => {
+  const byDivision = (n: number) => {
+    if (n < 2) return false;
+    for (let p = 2; p * p <= n; p++) if (n % p === 0) return false;
+    return true;
+  };
+  it('as by trial division: the first numbers, and random ones (fast-check)', () => {
+    for (let n = 0; n < 6000; n++) expect(isPrime(n)).toBe(byDivision(n));
+    fc.assert(
+      fc.property(fc.integer({ min: 0, max: 2 ** 31 - 1 }), (n) => isPrime(n) === byDivision(n)),
+      { numRuns: 200 },
+    );
+  });
+  it('strong pseudoprimes to the bases 2, 3 and 5, and the largest prime (Pomerance, Selfridge, Wagstaff 1980)', () => {
+    for (const n of [2047, 1373653, 25326001, 161304001, 960946321, 1157839381]) expect(isPrime(n)).toBe(false);
+    expect(isPrime(2 ** 31 - 1)).toBe(true);
   });
 });
