@@ -6,3 +6,5 @@ export * from './number-field.ts';
 export * from './prime.ts';
 export * from './rational.ts';
 export * from './real-field.ts';
+export * from './reduction.ts';
+export * from './square-free.ts';

@@ -7,12 +7,16 @@
  * product of adjoined primes. The adjoined primes do not ramify in the cyclotomic part, so the two parts
  * are linearly disjoint and the basis is one (ramification of Q(sqrt p) at p; from memory).
  */
-import { cyclotomicPolynomial, gcdInt, isqrt, lcmInt } from './arithmetic.ts';
+import { gcdInt, isqrt, lcmInt } from './arithmetic.ts';
+import { reductionTable } from './cosine-table.ts';
 import { CyclotomicField } from './cyclotomic.ts';
 import type { OrderedField } from './field.ts';
 import { AbelianField, type Algebraic } from './number-field.ts';
-import { invMod, mulAddMod, mulMod, powModInt, primeCongruentToOne, reduceBigint, rootOfUnity, sqrtMod } from './prime.ts';
+import { powModInt } from './prime.ts';
 import { gcd, type Rational, rational, ratioToNumber } from './rational.ts';
+import { LATEX_STYLE, MODEL_STYLE, type NumberStyle, writeSum } from './real-writing.ts';
+import { makeReduction, type Reduction } from './reduction.ts';
+import { squareFree } from './square-free.ts';
 import { cosFixed } from './trigonometry.ts';
 
 /** What a field must contain: 2 cos(2 pi/n) for each n, the square root of each integer. */
@@ -26,32 +30,6 @@ export const DEGREE_LIMIT = 512;
 
 const cache = new Map<string, RealField>();
 const normalConductor = (n: number) => (n % 4 === 2 ? n / 2 : n);
-
-/** Square-free kernel and square part of n >= 1: n = free * square^2, with the primes of free. */
-export function squareFree(n: bigint): { primes: bigint[]; square: bigint; complete: boolean } {
-  const primes: bigint[] = [];
-  let square = 1n;
-  let complete = true;
-  for (let p = 2n; p * p <= n; p += p === 2n ? 1n : 2n) {
-    if (p > 1_000_000n) {
-      complete = false;
-      break;
-    }
-    let e = 0;
-    while (n % p === 0n) {
-      n /= p;
-      e++;
-    }
-    square *= p ** BigInt(e >> 1);
-    if (e & 1) primes.push(p);
-  }
-  if (n > 1n) {
-    const r = isqrt(n);
-    if (r * r === n) square *= r;
-    else primes.push(n);
-  }
-  return { primes, square, complete };
-}
 
 export class RealField extends AbelianField implements OrderedField<Algebraic> {
   readonly name: string;
@@ -433,159 +411,35 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
   }
 
   format(a: Algebraic): string {
-    const cosine = (k: number, n: number) => {
-      const g = gcdInt(2 * k, n);
-      return `cos(${(2 * k) / g === 1 ? '' : `${(2 * k) / g}*`}pi/${n / g})`;
-    };
-    return this.#write(
-      a,
-      (r) => `sqrt(${r})`,
-      cosine,
-      '*',
-      (num, den) => `${num}/${den}`,
-    );
+    return this.#write(a, MODEL_STYLE);
   }
   latex(a: Algebraic): string {
-    const cosine = (k: number, n: number) => {
-      const g = gcdInt(2 * k, n);
-      return `\\cos\\tfrac{${(2 * k) / g === 1 ? '' : (2 * k) / g}\\pi}{${n / g}}`;
-    };
-    return this.#write(
-      a,
-      (r) => `\\sqrt{${r}}`,
-      cosine,
-      '',
-      (num, den) => {
-        const negative = num.startsWith('-') && !/ [+-] /.test(num);
-        return `${negative ? '-' : ''}\\tfrac{${negative ? num.slice(1) : num}}{${den}}`;
-      },
-    );
+    return this.#write(a, LATEX_STYLE);
   }
-
-  #write(
-    a: Algebraic,
-    root: (r: bigint) => string,
-    cosine: (k: number, n: number) => string,
-    times: string,
-    over: (numerator: string, denominator: string) => string,
-  ): string {
-    const terms: Array<{ x: bigint; body: string }> = [];
+  #write(a: Algebraic, style: NumberStyle): string {
     const q = this.quadraticForm(a);
-    let d = a.d;
     if (q !== undefined) {
-      d = (q.u.d * q.v.d) / gcd(q.u.d, q.v.d);
-      if (q.u.n !== 0n) terms.push({ x: (q.u.n * d) / q.u.d, body: '' });
-      terms.push({ x: (q.v.n * d) / q.v.d, body: root(q.w) });
-    } else
-      a.c.forEach((x, i) => {
-        if (x === 0n) return;
-        const k = i % this.#m;
-        const mask = (i / this.#m) | 0;
-        const parts = [...(k === 0 ? [] : [cosine(k, this.conductor)]), ...(mask === 0 ? [] : [root(this.#masked[mask]!)])];
-        terms.push({ x: k === 0 ? x : 2n * x, body: parts.join(times) });
-      });
-    if (terms.length === 0) return '0';
-    if (terms.length === 1) {
-      const { x, body } = terms[0]!;
-      const g = gcd(x, d);
-      const n = x / g;
-      const den = d / g;
-      const num = body === '' ? `${n}` : n === 1n ? body : n === -1n ? `-${body}` : `${n}${times}${body}`;
-      return den === 1n ? num : over(num, `${den}`);
+      const d = (q.u.d * q.v.d) / gcd(q.u.d, q.v.d);
+      const constant = q.u.n === 0n ? [] : [{ x: (q.u.n * d) / q.u.d, body: '' }];
+      return writeSum([...constant, { x: (q.v.n * d) / q.v.d, body: style.root(q.w) }], d, style);
     }
-    let sum = '';
-    for (const { x, body } of terms) {
-      const n = x < 0n ? -x : x;
-      const t = body === '' ? `${n}` : n === 1n ? body : `${n}${times}${body}`;
-      sum += sum === '' ? (x < 0n ? `-${t}` : t) : x < 0n ? ` - ${t}` : ` + ${t}`;
-    }
-    if (d === 1n) return sum;
-    return times === '' ? over(sum, `${d}`) : `(${sum})/${d}`;
+    const terms = a.c.flatMap((x, i) => {
+      if (x === 0n) return [];
+      const k = i % this.#m;
+      const mask = (i / this.#m) | 0;
+      const parts = [...(k === 0 ? [] : [style.cosine(k, this.conductor)]), ...(mask === 0 ? [] : [style.root(this.#masked[mask]!)])];
+      return [{ x: k === 0 ? x : 2n * x, body: parts.join(style.times) }];
+    });
+    return writeSum(terms, a.d, style);
   }
 
   /** A reduction into GF(p): p = 1 mod 4N with every adjoined root. `index` picks the prime. */
   reduction(index = 0): Reduction {
     let out = this.#reductions.get(index);
     if (out === undefined) {
-      out = this.#makeReduction(index);
+      out = makeReduction(this.conductor, this.radicals, this.#m, this.degree, index);
       this.#reductions.set(index, out);
     }
     return out;
   }
-
-  #makeReduction(index: number): Reduction {
-    const n = lcmInt(4, this.conductor);
-    for (let i = 0, found = -1; ; i++) {
-      const p = primeCongruentToOne(n, i);
-      const roots = this.radicals.map((r) => sqrtMod(reduceBigint(r, p), p));
-      if (roots.some((r) => r === undefined || r === 0) || ++found < index) continue;
-      const zeta = this.#m === 1 ? 1 : powModInt(rootOfUnity(n, p), n / this.conductor, p);
-      const images = new Int32Array(this.degree);
-      const inverse = invMod(zeta, p);
-      for (let j = 0; j < this.degree; j++) {
-        const k = j % this.#m;
-        const mask = (j / this.#m) | 0;
-        let v = k === 0 ? 1 : (powModInt(zeta, k, p) + powModInt(inverse, k, p)) % p;
-        roots.forEach((r, b) => {
-          if (mask & (1 << b)) v = mulMod(v, r!, p);
-        });
-        images[j] = v;
-      }
-      return new Reduction(p, images);
-    }
-  }
-}
-
-/** A ring homomorphism from a real field (elements with denominators prime to p) into GF(p). */
-export class Reduction {
-  readonly p: number;
-  readonly #images: Int32Array;
-  constructor(p: number, images: Int32Array) {
-    this.p = p;
-    this.#images = images;
-  }
-  /** The image in [0, p). Throws RangeError if p divides the denominator. */
-  apply(a: Algebraic): number {
-    const p = this.p;
-    let v = 0;
-    for (let i = 0; i < a.c.length; i++) if (a.c[i] !== 0n) v = mulAddMod(v, reduceBigint(a.c[i]!, p), this.#images[i]!, p);
-    return a.d === 1n ? v : mulMod(v, invMod(reduceBigint(a.d, p), p), p);
-  }
-}
-
-/** 2cos(2 pi k/N), 0 <= k < N, over the basis 1, c_1, …, c_{m-1}. */
-function reductionTable(n: number, m: number): number[][] {
-  // Over the power basis of Q(zeta_N), zeta^k + zeta^-k; the c_j with j < m are triangular there up to sign,
-  // so solve by the recursion c_{k+1} = c_1 c_k - c_{k-1} with the minimal relation found from Phi_N.
-  const rows: number[][] = [];
-  const unit = (j: number, v: number) => Array.from({ length: m }, (_, i) => (i === j ? v : 0));
-  for (let k = 0; k < m; k++) rows.push(unit(k, k === 0 ? 2 : 1));
-  // Phi_N is palindromic of degree 2m: a_0 c_m + … : sum over i of a_{m-i} c_i = 0 (a_m counted once)
-  const phi = cyclotomicPolynomial(n);
-  const relation = new Array<number>(m).fill(0);
-  relation[0] = -phi[m]!;
-  for (let i = 1; i < m; i++) relation[i] = -phi[m - i]!;
-  rows.push(relation); // c_m, since phi[0] = phi[2m] = 1
-  for (let k = m + 1; k < n; k++) {
-    // c_k = c_1 c_{k-1} - c_{k-2}
-    const prev = rows[k - 1]!;
-    const out = new Array<number>(m).fill(0);
-    for (let i = 0; i < m; i++) {
-      const x = prev[i]!;
-      if (x === 0) continue;
-      if (i === 0) {
-        if (m > 1) out[1] = out[1]! + x;
-        else out[0] = out[0]! + x * relation[0]!;
-        continue;
-      }
-      // c_1 c_i = c_{i+1} + c_{i-1}
-      if (i + 1 < m) out[i + 1] = out[i + 1]! + x;
-      else for (let l = 0; l < m; l++) out[l] = out[l]! + x * relation[l]!;
-      out[i - 1] = out[i - 1]! + (i === 1 ? 2 * x : x);
-    }
-    const before = rows[k - 2]!;
-    for (let i = 0; i < m; i++) out[i] = out[i]! - before[i]!;
-    rows.push(out);
-  }
-  return rows;
 }
