@@ -122,6 +122,8 @@ export interface ReportView {
   readonly group?: StudyResult['group'];
   readonly equilibrium?: StudyResult['equilibrium'];
   readonly symmetry?: StudyResult['symmetry'];
+  /** Degree of the Taylor terms to which invariance was compared; 'all' where H was compared as a whole. */
+  readonly invarianceDegree?: number | 'all';
   readonly found?: FoundSymmetry;
   readonly caution?: string;
   readonly components?: readonly ComponentSummary[];

@@ -14,8 +14,9 @@ import { polynomialDegree } from '../model/polynomial-energy.ts';
 import { type Quantities, readQuantities } from '../model/quantities.ts';
 import type { Polynomial, PolynomialRing } from '../polynomial/index.ts';
 import { type NeutralSymmetry, neutralSymmetry } from './neutral.ts';
+import { type RationalInvariance, rationalInvariance } from './rational-invariance.ts';
 
-/** Degree to which invariance of an H that is no polynomial is checked. */
+/** Degree to which invariance of an H that is no quotient of polynomials is checked. */
 export const INVARIANCE_DEGREE = 4;
 
 export interface GeneratorCheck {
@@ -37,7 +38,7 @@ export interface Prepared {
   readonly field: RealField;
   readonly form: SparseMatrix<Algebraic>;
   readonly generators: readonly GeneratorCheck[];
-  /** To which degree invariance was checked, or 'all' for a polynomial. */
+  /** To which degree invariance was checked, or 'all' for a polynomial or a quotient of polynomials. */
   readonly invarianceDegree: number | 'all';
   readonly equilibriumHolds: boolean;
   readonly symmetryHolds: boolean;
@@ -104,19 +105,25 @@ function makePrepared(declaration: Declaration): Prepared | NotExact {
   const embed = (m: SparseMatrix<Algebraic>) => embedSparse(m, quantities.field, field);
   const form = embed(quantities.form);
   const point = quantities.point.map((x) => field.embed(quantities.field, x));
-  const series = invarianceSeries(hamiltonian, quantities, local);
+  const values = new Map([...quantities.values].map(([k, v]) => [k, field.embed(quantities.field, v)]));
+  const series = invarianceSeries(hamiltonian, quantities, local, declaration.degree);
+  const rational =
+    series.degree === 'all' || quantities.generators.length === 0
+      ? undefined
+      : rationalInvariance(hamiltonian, quantities.names, values, field);
   const generators = quantities.generators.map((g): GeneratorCheck => {
     const matrix = embed(g.matrix);
     const sign = signOf(matrix, form);
-    const reason = failureOf(g.name, matrix, sign, g.declared, point, local, series, quantities.names);
+    const broken = invarianceFailure(g.name, matrix, point, local, series, quantities.names, rational);
+    const reason = formFailure(g.name, sign, g.declared) ?? broken;
     return {
       name: g.name,
       where: g.where,
       matrix,
       sign,
       ...(g.declared === undefined ? {} : { declared: g.declared }),
-      invariant: reason?.kind !== 'invariance',
-      ...(reason === undefined ? {} : { reason: reason.text }),
+      invariant: broken === undefined,
+      ...(reason === undefined ? {} : { reason }),
     };
   });
   const neutral = neutralSymmetry(declaration, quantities, hamiltonian, field, form, point, generators);
@@ -128,7 +135,7 @@ function makePrepared(declaration: Declaration): Prepared | NotExact {
     field,
     form,
     generators,
-    invarianceDegree: series.degree,
+    invarianceDegree: rational === undefined ? series.degree : 'all',
     equilibriumHolds: local.gradient.every((x) => field.isZero(x)),
     symmetryHolds: generators.every((g) => g.reason === undefined),
     ...(neutral === undefined ? {} : { neutral }),
@@ -157,10 +164,10 @@ interface Series {
 }
 
 /** H to the degree that its invariance is checked to. */
-function invarianceSeries(h: Expression, quantities: Quantities, local: LocalExpansion): Series {
+function invarianceSeries(h: Expression, quantities: Quantities, local: LocalExpansion, asked = 0): Series {
   const degree = polynomialDegree(h, new Set(quantities.names));
-  const wanted = degree ?? INVARIANCE_DEGREE;
-  const kind = degree === undefined ? INVARIANCE_DEGREE : ('all' as const);
+  const wanted = degree ?? Math.max(INVARIANCE_DEGREE, asked);
+  const kind = degree === undefined ? wanted : ('all' as const);
   if (wanted <= local.degree) return { degree: kind, ring: local.ring, polynomial: local.higher };
   const t = taylor(h, {
     names: quantities.names,
@@ -174,51 +181,45 @@ function invarianceSeries(h: Expression, quantities: Quantities, local: LocalExp
   return { degree: kind, ring: t.ring, polynomial: t.ring.sub(t.polynomial, low) };
 }
 
-interface Failure {
-  readonly kind: 'form' | 'declared' | 'invariance';
-  readonly text: string;
+/** How a generator fails to be what is declared of it, apart from H; undefined where it does not. */
+export function formFailure(name: string, sign: 1 | -1 | undefined, declared: boolean | undefined): string | undefined {
+  if (sign === undefined) return `${name} is neither symplectic nor antisymplectic: ρᵀWρ is neither W nor −W`;
+  if (declared === undefined || declared === (sign === -1)) return undefined;
+  return `${name} is declared ${declared ? 'to reverse time' : 'not to reverse time'}, but ρᵀWρ = ${sign === 1 ? 'W' : '−W'}`;
 }
 
-function failureOf(
+/** How a generator fails to leave H and the point invariant; undefined where it does not. */
+function invarianceFailure(
   name: string,
   matrix: SparseMatrix<Algebraic>,
-  sign: 1 | -1 | undefined,
-  declared: boolean | undefined,
   point: readonly Algebraic[],
   local: LocalExpansion,
   series: Series,
   names: readonly string[],
-): Failure | undefined {
+  rational: RationalInvariance | undefined,
+): string | undefined {
   const { field } = local;
-  if (sign === undefined) return { kind: 'form', text: `${name} is neither symplectic nor antisymplectic: ρᵀWρ is neither W nor −W` };
-  if (declared !== undefined && declared !== (sign === -1))
-    return {
-      kind: 'declared',
-      text: `${name} is declared ${declared ? 'to reverse time' : 'not to reverse time'}, but ρᵀWρ = ${sign === 1 ? 'W' : '−W'}`,
-    };
   const moved = sparseApply(matrix, point).findIndex((x, i) => !field.equal(x, point[i]!));
-  if (moved >= 0) return { kind: 'invariance', text: `${name} moves the equilibrium: ${names[moved]} changes` };
+  if (moved >= 0) return `${name} moves the equilibrium: ${names[moved]} changes`;
   const image = sparseCongruence(matrix, local.hessian);
-  if (!sparseEquals(image, local.hessian)) return { kind: 'invariance', text: quadraticDifference(name, image, local.hessian, names) };
+  if (!sparseEquals(image, local.hessian)) return quadraticDifference(name, image, local.hessian, names);
   // gradients: ρᵀ∇H = ∇H
   const transposed = matrix.index.flatMap((cols, i) => cols.map((j, k) => [j, i, matrix.value[i]![k]!] as const));
   const gradient = new Array<Algebraic>(names.length).fill(field.zero);
   for (const [j, i, v] of transposed) gradient[j] = field.add(gradient[j]!, field.mul(v, local.gradient[i]!));
   const off = gradient.findIndex((x, i) => !field.equal(x, local.gradient[i]!));
   if (off >= 0)
-    return {
-      kind: 'invariance',
-      text: `H is not invariant under ${name}: the linear term of ${names[off]} changes by ${field.format(field.sub(gradient[off]!, local.gradient[off]!))}`,
-    };
-  if (series.polynomial.monomials.length === 0) return undefined;
+    return `H is not invariant under ${name}: the linear term of ${names[off]} changes by ${field.format(field.sub(gradient[off]!, local.gradient[off]!))}`;
+  const beyond =
+    rational === undefined || rational(matrix)
+      ? undefined
+      : `H is not invariant under ${name}: H∘ρ − H is a rational function that is not zero, though its Taylor terms up to degree ${series.degree} vanish`;
+  if (series.polynomial.monomials.length === 0) return beyond;
   const difference = series.ring.sub(series.ring.linearSubstitution(series.polynomial, dense(matrix)), series.polynomial);
-  if (series.ring.isZero(difference)) return undefined;
+  if (series.ring.isZero(difference)) return beyond;
   const terms = difference.monomials.length;
   const worst = { ...difference, monomials: difference.monomials.slice(0, 1), coefficients: difference.coefficients.slice(0, 1) };
-  return {
-    kind: 'invariance',
-    text: `H is not invariant under ${name}: H∘ρ − H contains ${series.ring.format(worst)}${terms > 1 ? ` and ${terms - 1} more term${terms > 2 ? 's' : ''}` : ''}`,
-  };
+  return `H is not invariant under ${name}: H∘ρ − H contains ${series.ring.format(worst)}${terms > 1 ? ` and ${terms - 1} more term${terms > 2 ? 's' : ''}` : ''}`;
 }
 
 function quadraticDifference(name: string, image: SparseMatrix<Algebraic>, s: SparseMatrix<Algebraic>, names: readonly string[]): string {

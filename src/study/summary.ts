@@ -31,7 +31,7 @@ export function generatorSummaries(p: Pick<Prepared, 'generators'>): GeneratorSu
     name: g.name,
     reversing: g.sign === -1,
     symplectic: g.sign !== undefined,
-    invariant: g.invariant && g.sign !== undefined,
+    invariant: g.invariant,
     ...(g.reason === undefined ? {} : { reason: g.reason }),
   }));
 }

@@ -10,7 +10,9 @@ describe.concurrent('names of coordinates', () => {
     expect(names(await json('components --quadratic "q10^2 + q2^2 + p2^2"'))).toBe('q2,q10 | p2,p10');
   });
   it('paired by their endings, bare q and p included', async () => {
-    expect(names(await json('components --quadratic "qa^2 + q^2 + p^2 + pa*q_x"'))).toMatch(/^q,q_x,qa \| p,p_x,pa$|^q,qa,q_x \| p,pa,p_x$/);
+    expect(names(await json('components --quadratic "qa^2 + q^2 + p^2 + pa*q_x"'))).toMatch(
+      /^q,q_x,qa \| p,p_x,pa$|^q,qa,q_x \| p,pa,p_x$/,
+    );
   });
   it('names in --on count, even where the expression lacks them', async () => {
     const r = await json('components --group dihedral:3 --action ring --on q1,q2,q3 --quadratic "0"');
@@ -97,10 +99,26 @@ describe.concurrent('--group, --action, --on', () => {
     // q1^2 q2 + q2^2 q3 + ... is invariant under the shift either way, not under s.
     const chiral = 'q1^2*q2 + q2^2*q3 + q3^2*q4 + q4^2*q1';
     const r = await json(`check --group dihedral:4 --action ring --on q1,q2,q3,q4 --hamiltonian "${chiral}"`, '', 1);
-    expect(r.symmetry.generators.map((g: { name: string; invariant: boolean }) => `${g.name} ${g.invariant}`)).toEqual(['r true', 's false']);
+    expect(r.symmetry.generators.map((g: { name: string; invariant: boolean }) => `${g.name} ${g.invariant}`)).toEqual([
+      'r true',
+      's false',
+    ]);
     // s fixes sites 1 and 3: H = q1^4 + q3^2 has it, H = q2^2 has not
     const one = await json('check --group dihedral:4 --action ring --on q1,q2,q3,q4 --hamiltonian "q1^4 + q3^2"', '', 1);
     expect(one.symmetry.generators[1]).toMatchObject({ name: 's', invariant: true });
+  });
+  it('invariance of a quotient of polynomials is decided as a whole', async () => {
+    const line = (h: string) => `check --group reflection --on q1 --hamiltonian "${h}"`;
+    expect((await json(line('p1^2 + q1^2/(1 + q1^2)'))).symmetry.holds).toBe(true);
+    // odd terms from degree 21 on
+    const odd = await json(line('p1^2 + q1^2 + q1^21/(1 + q1^2)'), '', 1);
+    expect(odd.symmetry.generators[0]).toMatchObject({ symplectic: true, invariant: false });
+    await json(line('p1^2 + q1^2 + q1^41'), '', 1);
+    // not rational: Taylor terms up to a degree that the result states, 4 or that of --degree
+    const near = await json(line('p1^2 + cos(q1) + sin(q1)^5'));
+    expect(near.invarianceDegree).toBe(4);
+    const far = await json(`${line('p1^2 + cos(q1) + sin(q1)^5')} --degree 6`, '', 1);
+    expect([far.invarianceDegree, far.symmetry.holds]).toEqual([6, false]);
   });
   it('reflection: -1 on each listed coordinate', async () => {
     const r = await json('components --group reflection --on q1,q2 --quadratic "q1*q2 + q3^2"');
@@ -158,12 +176,18 @@ describe.concurrent('--reversing and --time-reversal', () => {
     expect(r.group).toMatchObject({ order: 2, reversing: 1 });
     expect(r.zero.codimension).toBe(1);
     // class 4 with k = 1: [1, 1] costs k(k+1) − k^2 + ... by hand: dim P = 2, the orbit of 0 is a point
-    expect((await json('codim --time-reversal --quadratic "0*q1" --parameters 5')).zero).toMatchObject({ codimension: 2, codimensionWithoutSymmetry: 3 });
+    expect((await json('codim --time-reversal --quadratic "0*q1" --parameters 5')).zero).toMatchObject({
+      codimension: 2,
+      codimensionWithoutSymmetry: 3,
+    });
   });
   it('--reversing with the plane (q, p): the mirror turns time round', async () => {
     const r = await json('codim --group dihedral:5 --on q1,p1 --reversing s --quadratic "0*q1*p1"');
     expect(r.group).toMatchObject({ order: 10, reversing: 5 });
-    expect(r.symmetry.generators).toMatchObject([{ name: 'r', reversing: false }, { name: 's', reversing: true, symplectic: true }]);
+    expect(r.symmetry.generators).toMatchObject([
+      { name: 'r', reversing: false },
+      { name: 's', reversing: true, symplectic: true },
+    ]);
     expect(components(r)).toEqual(['2 real 1 true']);
     expect(await refusal('codim --group dihedral:5 --on q1,p1 --quadratic "0*q1*p1"')).toMatch(/check/);
     expect(await refusal('codim --group dihedral:5 --on q1,p1 --reversing r --quadratic "0*q1*p1"')).toMatch(/\br\b/);
@@ -208,7 +232,12 @@ describe.concurrent('parameters', () => {
     const none = await json(line, '', 1);
     expect([none.verdict.parameters, none.verdict.answer, none.verdict.versal, none.zero.codimension]).toEqual([1, 'not generic', null, 3]);
     const three = await json(`${line} --parameters 3`);
-    expect([three.verdict.parameters, three.verdict.answer, three.verdict.versal, three.zero.motion]).toEqual([3, 'generic', null, 'degenerate']);
+    expect([three.verdict.parameters, three.verdict.answer, three.verdict.versal, three.zero.motion]).toEqual([
+      3,
+      'generic',
+      null,
+      'degenerate',
+    ]);
     const two = await json(`${line} --vary mu --parameters 3`);
     expect([two.verdict.answer, two.verdict.versal]).toEqual(['generic', false]);
     await refusal(`${line} --parameters -1`);
@@ -252,7 +281,11 @@ describe.concurrent('use of the command line', () => {
     await refusal('codim --quadratic "q1^2+p1^2" --order-limit 0');
   });
   it('--order-limit', async () => {
-    expect(await refusal('components --group symmetric:5 --action permutation --on q1,q2,q3,q4,q5 --quadratic "0" --order-limit 119')).toMatch(/119/);
-    expect((await json('components --group symmetric:5 --action permutation --on q1,q2,q3,q4,q5 --quadratic "0" --order-limit 120')).group.order).toBe(120);
+    expect(
+      await refusal('components --group symmetric:5 --action permutation --on q1,q2,q3,q4,q5 --quadratic "0" --order-limit 119'),
+    ).toMatch(/119/);
+    expect(
+      (await json('components --group symmetric:5 --action permutation --on q1,q2,q3,q4,q5 --quadratic "0" --order-limit 120')).group.order,
+    ).toBe(120);
   });
 });

@@ -117,6 +117,17 @@ export function symmetrySection(view: ReportView): Section | null {
         ...(reasons ? [[g.reason ?? '–']] : []),
       ]),
     });
+    if (typeof view.invarianceDegree === 'number')
+      blocks.push({
+        kind: 'paragraph',
+        line: [
+          'The invariance of ',
+          math(formula('H')),
+          ' was compared on its Taylor terms up to degree ',
+          integer(view.invarianceDegree),
+          '; --degree goes further.',
+        ],
+      });
   }
   return { id: 'symmetry', title: 'Symmetry', blocks };
 }

@@ -2,7 +2,21 @@
  * The linear theory by brute force: spaces of invariant forms by linear equations, codimension as
  * dim P − rank(T ↦ [JT, L]) on the generalised kernel (Arnold 1971; Galin 1982), subgroups by closing sets of elements.
  */
-import { characteristic, distinctRoots, echelon, identity, inverse, kernel, type Mat, P, plus, rank, reduce, times, transpose } from './modular.ts';
+import {
+  characteristic,
+  distinctRoots,
+  echelon,
+  identity,
+  inverse,
+  kernel,
+  type Mat,
+  P,
+  plus,
+  rank,
+  reduce,
+  times,
+  transpose,
+} from './modular.ts';
 
 export interface Signed {
   readonly matrix: Mat;
@@ -50,7 +64,10 @@ function restrict(basis: Mat, model: LinearModel): LinearModel {
   const square = inverse(pivots.map((p) => b[p]!));
   const map = (g: Mat): Mat => {
     const image = times(g, b);
-    return times(square, pivots.map((p) => image[p]!));
+    return times(
+      square,
+      pivots.map((p) => image[p]!),
+    );
   };
   return { w: form(model.w), s: form(model.s), generators: model.generators.map((g) => ({ matrix: map(g.matrix), sign: g.sign })) };
 }
@@ -234,7 +251,9 @@ export function bruteForce(model: LinearModel, integerS: Mat): Expected {
   const chi = characteristic(l);
   const eigenvalues = distinctRoots(chi) - (e0.length > 0 ? 1 : 0);
   const nullity = n - rank(model.s);
-  const sorted = symmetricEigenvalues(integerS).sort((a, b) => Math.abs(a) - Math.abs(b)).slice(nullity);
+  const sorted = symmetricEigenvalues(integerS)
+    .sort((a, b) => Math.abs(a) - Math.abs(b))
+    .slice(nullity);
   return {
     dimP: whole.dimP,
     dimG: whole.dimG,

@@ -43,7 +43,8 @@ export function times(a: Mat, b: Mat): Mat {
   });
 }
 /** Product over the integers. */
-export const timesExact = (a: Mat, b: Mat): Mat => a.map((row) => (b[0] ?? []).map((_, j) => row.reduce((s, x, k) => s + x * b[k]![j]!, 0)));
+export const timesExact = (a: Mat, b: Mat): Mat =>
+  a.map((row) => (b[0] ?? []).map((_, j) => row.reduce((s, x, k) => s + x * b[k]![j]!, 0)));
 export const plus = (a: Mat, b: Mat, factor = 1): Mat => a.map((row, i) => row.map((x, j) => x + factor * b[i]![j]!));
 
 /** Reduced row echelon form with its pivot columns. */

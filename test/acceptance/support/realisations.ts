@@ -57,7 +57,10 @@ export function directSum(...list: Mat[]): Mat {
   }
   return out;
 }
-const corner = (a: Mat, b: Mat): Mat => [...a.map((row) => [...row.map(() => 0), ...row]), ...b.map((row) => [...row, ...row.map(() => 0)])];
+const corner = (a: Mat, b: Mat): Mat => [
+  ...a.map((row) => [...row.map(() => 0), ...row]),
+  ...b.map((row) => [...row, ...row.map(() => 0)]),
+];
 const one2 = identity(2);
 // Multiplication from the left by i and j and from the right by i and j on R^4 = H, basis 1, i, j, k.
 export const LI: Mat = directSum(R4, R4);
@@ -100,8 +103,26 @@ export const ABSTRACT: readonly Abstract[] = [
   { name: 'C3', signs: [[1]], representations: [[s1], [R3]] },
   { name: 'C4', signs: plain, representations: [[s1], [m1], [R4]] },
   { name: 'C6', signs: plain, representations: [[s1], [m1], [R3], [R6]] },
-  { name: 'D3', signs: two.slice(0, 2), representations: [[s1, s1], [s1, m1], [R3, swap]] },
-  { name: 'D4', signs: two, representations: [[s1, s1], [s1, m1], [m1, s1], [m1, m1], [R4, flip]] },
+  {
+    name: 'D3',
+    signs: two.slice(0, 2),
+    representations: [
+      [s1, s1],
+      [s1, m1],
+      [R3, swap],
+    ],
+  },
+  {
+    name: 'D4',
+    signs: two,
+    representations: [
+      [s1, s1],
+      [s1, m1],
+      [m1, s1],
+      [m1, m1],
+      [R4, flip],
+    ],
+  },
   {
     name: 'D6',
     signs: two,
@@ -113,23 +134,74 @@ export const ABSTRACT: readonly Abstract[] = [
       [R6, swap],
     ],
   },
-  { name: 'Q8', signs: two, representations: [[s1, s1], [m1, s1], [s1, m1], [LI, LJ]] },
+  {
+    name: 'Q8',
+    signs: two,
+    representations: [
+      [s1, s1],
+      [m1, s1],
+      [s1, m1],
+      [LI, LJ],
+    ],
+  },
   // a of order 6, x of order 4 with x² = a³: a(u, v) = (ζu, ζ̄v), x(u, v) = (−v, u)
   {
     name: 'Dic3',
     signs: two.slice(0, 2),
-    representations: [[s1, s1], [s1, m1], [R3, swap], [directSum(R6, inverseR6), corner(negative(one2), one2)]],
+    representations: [
+      [s1, s1],
+      [s1, m1],
+      [R3, swap],
+      [directSum(R6, inverseR6), corner(negative(one2), one2)],
+    ],
   },
-  { name: 'C3 x C2', signs: two.slice(0, 2), representations: [[s1, s1], [s1, m1], [R3, one2], [R3, negative(one2)]] },
-  { name: 'C4 x C2', signs: two, representations: [[s1, m1], [R4, one2], [R4, negative(one2)]] },
-  { name: 'D3 x C2', signs: two.slice(0, 2).flatMap((s) => [[...s, 1] as (1 | -1)[], [...s, -1] as (1 | -1)[]]), representations: [[s1, s1, m1], [R3, swap, one2], [R3, swap, negative(one2)]] },
+  {
+    name: 'C3 x C2',
+    signs: two.slice(0, 2),
+    representations: [
+      [s1, s1],
+      [s1, m1],
+      [R3, one2],
+      [R3, negative(one2)],
+    ],
+  },
+  {
+    name: 'C4 x C2',
+    signs: two,
+    representations: [
+      [s1, m1],
+      [R4, one2],
+      [R4, negative(one2)],
+    ],
+  },
+  {
+    name: 'D3 x C2',
+    signs: two.slice(0, 2).flatMap((s) => [[...s, 1] as (1 | -1)[], [...s, -1] as (1 | -1)[]]),
+    representations: [
+      [s1, s1, m1],
+      [R3, swap, one2],
+      [R3, swap, negative(one2)],
+    ],
+  },
   {
     name: 'Q8 x C2',
     signs: two.flatMap((s) => [[...s, 1] as (1 | -1)[], [...s, -1] as (1 | -1)[]]),
-    representations: [[s1, s1, m1], [LI, LJ, identity(4)], [LI, LJ, negative(identity(4))]],
+    representations: [
+      [s1, s1, m1],
+      [LI, LJ, identity(4)],
+      [LI, LJ, negative(identity(4))],
+    ],
   },
   // Central product of the quaternion group with C4, acting from both sides; also by its quotients.
-  { name: 'Q8 o C4', signs: two.flatMap((s) => [[...s, 1] as (1 | -1)[], [...s, -1] as (1 | -1)[]]), representations: [[s1, s1, m1], [m1, s1, s1], [LI, LJ, RJ]] },
+  {
+    name: 'Q8 o C4',
+    signs: two.flatMap((s) => [[...s, 1] as (1 | -1)[], [...s, -1] as (1 | -1)[]]),
+    representations: [
+      [s1, s1, m1],
+      [m1, s1, s1],
+      [LI, LJ, RJ],
+    ],
+  },
 ];
 
 export interface RandomModel extends LinearModel {
@@ -137,7 +209,10 @@ export interface RandomModel extends LinearModel {
   readonly generators: readonly Signed[];
 }
 const combine = (basis: readonly Mat[], coefficients: readonly number[], n: number): Mat =>
-  basis.reduce((s, x, i) => plus(s, x, coefficients[i]!), identity(n).map((row) => row.map(() => 0)));
+  basis.reduce(
+    (s, x, i) => plus(s, x, coefficients[i]!),
+    identity(n).map((row) => row.map(() => 0)),
+  );
 /** From residues to small integers, where they are small fractions times a common factor; undefined otherwise. */
 function integral(x: Mat): Mat | undefined {
   for (const factor of [1, 2, 3, 4, 6, 12]) {
@@ -180,7 +255,11 @@ export function randomModel(seed: number, limit = 8, only?: string): RandomModel
   if (skew.some((x) => x === undefined) || even.some((x) => x === undefined)) return undefined;
   let w: Mat | undefined;
   for (let tries = 0; tries < 8 && w === undefined; tries++) {
-    const candidate = combine(skew as Mat[], skew.map(() => random.below(5) - 2), n);
+    const candidate = combine(
+      skew as Mat[],
+      skew.map(() => random.below(5) - 2),
+      n,
+    );
     if (rank(candidate) === n) w = candidate;
   }
   if (w === undefined) return undefined;
@@ -190,7 +269,11 @@ export function randomModel(seed: number, limit = 8, only?: string): RandomModel
   const attempts = kind === 0 ? 1 : 24;
   for (let tries = 0; tries < attempts && kind !== 7; tries++) {
     const sparse = random.below(2) === 0;
-    const candidate = combine(even as Mat[], even.map(() => (sparse && random.below(2) === 0 ? 0 : random.below(3) - 1)), n);
+    const candidate = combine(
+      even as Mat[],
+      even.map(() => (sparse && random.below(2) === 0 ? 0 : random.below(3) - 1)),
+      n,
+    );
     const nullity = n - rank(candidate);
     // A long chain over a small kernel is the rare case: prefer it.
     const chain = nullity === 0 ? 0 : generalisedKernel(flow(w, candidate)).length;
