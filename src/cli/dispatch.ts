@@ -15,6 +15,10 @@ async function answer(invocation: Invocation, world: World): Promise<Outcome> {
     const { groupsOutcome } = await import('../study/groups-command.ts');
     return groupsOutcome(argument, invocation.orderLimit);
   }
+  if (command === 'verify') {
+    const { verifyOutcome } = await import('../study/verify.ts');
+    return verifyOutcome(await textOf(argument!, world), argument!, invocation.tolerance);
+  }
   const [{ declare }, { runCommand }] = await Promise.all([import('../model/declaration/options.ts'), import('./run-command.ts')]);
   const declaration = declare(await sourceOf(argument, world), invocation.uses);
   const progress = invocation.output.quiet ? {} : { progress: world.progress };
@@ -26,6 +30,12 @@ async function sourceOf(argument: string | undefined, world: World): Promise<Mod
   if (argument !== STANDARD_INPUT) return { path: argument };
   const { readAll } = await import('./standard-input.ts');
   return { text: await readAll(world.input()) };
+}
+
+async function textOf(argument: string, world: World): Promise<string> {
+  if (argument === STANDARD_INPUT) return (await import('./standard-input.ts')).readAll(world.input());
+  const { MODEL_BYTES, readTextFile } = await import('../model/declaration/text-file.ts');
+  return readTextFile(argument, MODEL_BYTES);
 }
 
 async function stream(invocation: Invocation, world: World): Promise<number> {

@@ -5,7 +5,7 @@ import { columns, wrapParagraph } from './wrap.ts';
 /** Exit statuses, in the words of help, man page and README. */
 export const exitStatuses: readonly (readonly [status: number, meaning: string])[] = [
   [0, 'answered'],
-  [1, 'answered, and the answer is no: check finds a failure, the zero event is not generic (codim, report)'],
+  [1, 'answered, and the answer is no: check finds a failure, the zero event is not generic (codim, report), verify disagrees'],
   [2, 'wrong use or wrong input; the message says where and what to do'],
   [3, 'undecided at the stated tolerance'],
   [70, 'a defect of the program'],

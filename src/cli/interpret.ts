@@ -25,6 +25,7 @@ export function interpret(command: CommandName, operands: readonly string[], typ
     study: { find: given(typed, 'find'), elliptic: given(typed, 'elliptic') },
     output: outputOptions(typed),
     ...(orderLimit === undefined ? {} : { orderLimit }),
+    ...(command === 'verify' ? relative(typed, 'tolerance') : {}),
     ...(command === 'batch' ? { batch: batchOptions(typed) } : {}),
   };
 }
@@ -97,6 +98,15 @@ function whole(typed: readonly Typed[], name: string, least: number): number | u
   const number = /^\d{1,9}$/.test(entry.value) ? Number(entry.value) : Number.NaN;
   if (!(number >= least)) throw malformed(entry.option, entry.value, `a whole number of at least ${least}`);
   return number;
+}
+
+/** A tolerance from 0 to below 1. */
+function relative(typed: readonly Typed[], name: string): { readonly tolerance?: number } {
+  const entry = single(typed, name);
+  if (entry?.value === undefined) return {};
+  const tolerance = /^[0-9.]+(?:[eE][+-]?[0-9]{1,3})?$/.test(entry.value) ? Number(entry.value) : Number.NaN;
+  if (!(tolerance >= 0 && tolerance < 1)) throw malformed(entry.option, entry.value, 'a number from 0 to below 1');
+  return { tolerance };
 }
 
 function batchOptions(typed: readonly Typed[]): NonNullable<Invocation['batch']> {

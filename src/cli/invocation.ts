@@ -20,7 +20,7 @@ export interface OutputOptions {
 
 export interface Invocation {
   readonly command: CommandName;
-  /** MODEL, NAME or SHELL. */
+  /** MODEL, NAME, RESULT or SHELL. */
   readonly argument?: string;
   /** Options that declare the model or settle how it is studied, in the order typed; the model layer reads them. */
   readonly uses: readonly OptionUse[];
@@ -29,6 +29,8 @@ export interface Invocation {
   readonly output: OutputOptions;
   /** Of `groups`: largest order that is enumerated. */
   readonly orderLimit?: number;
+  /** Of `verify`: how far floating numbers may differ, relative. */
+  readonly tolerance?: number;
   /** Only of `batch`: the command that answers each line, and the number of threads. */
   readonly batch?: { readonly command: CommandName; readonly jobs?: number };
 }

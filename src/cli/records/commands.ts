@@ -80,6 +80,13 @@ export const commands: readonly CommandRecord[] = [
     ],
   },
   {
+    name: 'verify',
+    argument: { name: 'RESULT', required: true, short: 'a result file in JSON, or - for standard input', completion: 'file' },
+    short: 're-checks a result file by an independent route',
+    long: 'Reads a result that --json wrote and checks every number of it by other routes than those that made it: orders by orbits, Jordan blocks by ranks modulo other primes, codimensions by brute force where the space is small, and a new study of the model that the file carries. Exit status 1 names each number that disagrees.',
+    examples: ['symcodim codim samples/three-resonator-ring.yaml --json > ring.json && symcodim verify ring.json'],
+  },
+  {
     name: 'groups',
     argument: {
       name: 'NAME',

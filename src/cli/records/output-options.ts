@@ -9,7 +9,7 @@ export const outputOptions: readonly OptionRecord[] = [
     short: 'the result as JSON on standard output, and nothing else there',
     long: 'Prints the result as JSON on standard output and nothing else there. Exact values are strings, floating ones numbers.',
     example: '--json',
-    commands: [...modelCommands, 'groups'],
+    commands: [...modelCommands, 'groups', 'verify'],
   },
   {
     name: 'latex',
@@ -66,7 +66,7 @@ export const outputOptions: readonly OptionRecord[] = [
     short: 'no text, no remarks, no progress; errors are still told',
     long: 'Prints no text, remarks or progress. What --json or a FILE of - asks for is still written, and errors are still told.',
     example: '--quiet',
-    commands: [...modelCommands, 'groups', 'batch'],
+    commands: [...modelCommands, 'groups', 'verify', 'batch'],
   },
   {
     name: 'no-color',

@@ -14,6 +14,7 @@ export const commandNames = [
   'branches',
   'sweep',
   'report',
+  'verify',
   'groups',
   'batch',
   'completions',

@@ -82,7 +82,7 @@ export const studyOptions: readonly OptionRecord[] = [
     long: 'The tolerance of decisions on floating data, relative to the scale of the whole Hessian. What does not stand clear of it is reported as undecided, with exit status 3.',
     example: '--tolerance 1e-8',
     model: true,
-    commands: all,
+    commands: [...all, 'verify'],
   },
   {
     name: 'floating',
