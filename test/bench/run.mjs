@@ -37,7 +37,7 @@ const median = (list) => {
   return sorted.length % 2 === 1 ? sorted[k] : (sorted[k - 1] + sorted[k]) / 2;
 };
 const written = (s) => (s === undefined ? '–' : s < 0.1 ? `${(1000 * s).toFixed(s < 0.01 ? 2 : 1)} ms` : `${s.toFixed(2)} s`);
-const widths = [34, 11, 11, 11, 11, 9, 9];
+const widths = [39, 11, 11, 11, 11, 9, 9];
 const line = (cells) => `${cells.map((c, i) => (i === 0 ? c.padEnd(widths[i]) : c.padStart(widths[i]))).join(' ')}\n`;
 const out = (text) => process.stdout.write(text);
 
