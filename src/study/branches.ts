@@ -11,7 +11,7 @@ import { type Branch, branchDiagram } from '../normalform/branches.ts';
 import { type Confirmation, confirmBranch, type FullEquations } from '../normalform/confirm-branch.ts';
 import type { IsotropyLattice } from '../normalform/isotropy.ts';
 import { factorsOf, type Polynomial } from '../polynomial/index.ts';
-import type { LinearStudy } from './codim.ts';
+import type { LinearStudy } from './linear-study.ts';
 import { type Reduction, reductionOf } from './reduction.ts';
 import type { StudyResult } from './result.ts';
 import { groupSummary, head, linearText } from './summary.ts';

@@ -8,7 +8,7 @@ import { type AdaptedBlock, adaptedBlocks, embedSparse, restrictForm } from '../
 import type { Algebraic, RealField } from '../field/index.ts';
 import { dense, kernel, type Matrix, modularEchelon, type SparseMatrix } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
-import type { LinearStudy } from './codim.ts';
+import type { LinearStudy } from './linear-study.ts';
 
 /** Entries that are not zero, rows and columns counted from 1. */
 export type EntryTexts = readonly (readonly [number, number, string])[];

@@ -5,7 +5,7 @@ import { column, dense, sparseTimes } from '../linear/index.ts';
 import { taylor } from '../model/expression/index.ts';
 import { birkhoffNormalForm } from '../normalform/birkhoff.ts';
 import { birkhoffSummary } from '../normalform/birkhoff-text.ts';
-import type { LinearStudy } from './codim.ts';
+import type { LinearStudy } from './linear-study.ts';
 import type { StudyResult, Value } from './result.ts';
 import { groupSummary, head } from './summary.ts';
 

@@ -4,7 +4,7 @@ import type { Reading } from '../event/floating/readings.ts';
 import { zeroCodimensionOfPartition } from '../event/partition-codimension.ts';
 import { motionOf } from '../event/zero-event.ts';
 import { symmetricEigen } from '../linear/spectral.ts';
-import { subgroupSummaries } from './codim.ts';
+import { subgroupSummaries } from './subgroup-summaries.ts';
 import { floatingComponentBases, restrictNumeric } from './floating-action.ts';
 import { doubtOf, eventSpaces, type FloatingVersality, floatingVersality } from './floating-event.ts';
 import { type FloatingBlockZero, type FloatingStudy, floatingLinear } from './floating-linear.ts';

@@ -4,7 +4,7 @@ import { rewriteInInvariants } from '../invariant/index.ts';
 import { at, column, inverse as invert, transpose } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
-import type { LinearStudy } from './codim.ts';
+import type { LinearStudy } from './linear-study.ts';
 import { type Reduction, reductionOf, symbolicReductionOf } from './reduction.ts';
 import type { StudyResult } from './result.ts';
 import { groupSummary, head, linearText } from './summary.ts';

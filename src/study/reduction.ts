@@ -13,7 +13,7 @@ import { polynomialDegree } from '../model/polynomial-energy.ts';
 import { analyseGerm, type Germ } from '../normalform/germ.ts';
 import { type ReducedHamiltonian, reduceToKernel } from '../normalform/splitting.ts';
 import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
-import type { LinearStudy } from './codim.ts';
+import type { LinearStudy } from './linear-study.ts';
 
 /** Degrees tried until the germ is determined, where none is asked for. */
 const DEGREES = [4, 6, 8, 10];

@@ -1,9 +1,9 @@
 /** `report`: every stage that applies to the model, each with the result of its own command. */
 import { SymcodimError } from '../errors/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
+import type { Answer } from './answer.ts';
 import type { OutcomeStatus, StudyOptions } from './outcome.ts';
 import type { CodimResult, StudyResult } from './result.ts';
-import type { Answer } from './study.ts';
 
 /** A report is one document; its result is that of `codim` with the other stages beside it. */
 export interface ReportResult extends StudyResult {

@@ -4,7 +4,7 @@ import { type ClusterPlace, type Collision, collisionsOf } from '../event/collis
 import { eigenvalueOf, exactPlaces } from '../event/collisions-exact.ts';
 import { genericMultiplicity } from '../event/collisions-suspects.ts';
 import { inertia } from '../linear/index.ts';
-import type { LinearStudy } from './codim.ts';
+import type { LinearStudy } from './linear-study.ts';
 import type { CodimResult, CollisionSummary, InertiaSummary, SpectrumEntry } from './result.ts';
 
 export type SpectrumSummary = Required<Pick<CodimResult, 'collisions' | 'spectrum' | 'stability'>>;

@@ -1,21 +1,15 @@
 /** The commands as functions: a declaration in, a result and its status out. */
 import { UsageError } from '../errors/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
+import type { Answer } from './answer.ts';
 import { certified } from './certificate.ts';
 import type { OutcomeStatus, StudyCommand, StudyOptions } from './outcome.ts';
 import { isExact, prepare } from './prepare.ts';
 import type { StudyResult } from './result.ts';
 
-export interface Answer {
-  readonly result: StudyResult;
-  readonly status: OutcomeStatus;
-  readonly text?: string;
-  /** Stage results that a report is made of. */
-  readonly stages?: readonly StudyResult[];
-  readonly notes: readonly string[];
-}
-
 export const VERDICT_STATUS: Readonly<Record<string, OutcomeStatus>> = { generic: 0, 'no event': 0, 'not generic': 1, undecided: 3 };
+
+export type { Answer } from './answer.ts';
 
 /** Answers a command, with a certificate for `verify`. Throws the typed errors of the library for wrong input. */
 export async function study(command: StudyCommand, declaration: Declaration, options: StudyOptions = {}): Promise<Answer> {
@@ -50,7 +44,10 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
   }
   const parameters = options.parameters ?? declaration.parameterCount;
   if (command === 'reduce' && declaration.unset.length > 0 && options.elliptic !== true) {
-    const [{ linearStudy }, { symbolicReduceResult, withStandIns }] = await Promise.all([import('./codim.ts'), import('./reduce.ts')]);
+    const [{ linearStudy }, { symbolicReduceResult, withStandIns }] = await Promise.all([
+      import('./linear-study.ts'),
+      import('./reduce.ts'),
+    ]);
     const { declaration: stated, symbols } = withStandIns(declaration);
     const prepared = prepare(stated);
     if (isExact(prepared))
@@ -74,20 +71,20 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       return { result, status: result.equilibrium.holds && result.symmetry.holds ? 0 : 1, notes: [] };
     }
     case 'codim': {
-      const { codimResult, linearStudy } = await import('./codim.ts');
+      const [{ codimResult }, { linearStudy }] = await Promise.all([import('./codim.ts'), import('./linear-study.ts')]);
       const result = codimResult(linearStudy(prepared), parameters);
       return { result, status: VERDICT_STATUS[result.verdict.answer]!, notes: [] };
     }
     case 'branches': {
-      const [{ linearStudy }, { branchesResult }] = await Promise.all([import('./codim.ts'), import('./branches.ts')]);
+      const [{ linearStudy }, { branchesResult }] = await Promise.all([import('./linear-study.ts'), import('./branches.ts')]);
       return { result: await branchesResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
     }
     case 'reduce': {
       if (options.elliptic === true) {
-        const [{ linearStudy }, { ellipticResult }] = await Promise.all([import('./codim.ts'), import('./elliptic.ts')]);
+        const [{ linearStudy }, { ellipticResult }] = await Promise.all([import('./linear-study.ts'), import('./elliptic.ts')]);
         return { result: ellipticResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
       }
-      const [{ linearStudy }, { reduceResult }] = await Promise.all([import('./codim.ts'), import('./reduce.ts')]);
+      const [{ linearStudy }, { reduceResult }] = await Promise.all([import('./linear-study.ts'), import('./reduce.ts')]);
       return { result: reduceResult(linearStudy(prepared), parameters, declaration.degree), status: 0, notes: [] };
     }
     default:

@@ -46,7 +46,7 @@ import {
 } from '../model/expression/index.ts';
 import { type Quantities, rationalNear, readQuantities } from '../model/quantities.ts';
 import { factorsOf, type Polynomial, type PolynomialRing, type Univariate, UnivariateRing } from '../polynomial/index.ts';
-import { fixedSpace } from './codim.ts';
+import { fixedSpace } from './linear-study.ts';
 import { labelledComponents } from './labels.ts';
 
 /** Values of the parameter at which the curves of a picture are computed, where nothing else is said. */

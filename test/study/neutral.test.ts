@@ -2,8 +2,9 @@
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
 import { readModelFile, readModelText } from '../../src/model/declaration/index.ts';
-import { codimResult, linearStudy } from '../../src/study/codim.ts';
+import { codimResult } from '../../src/study/codim.ts';
 import { floatingCodimResult, floatingStudy } from '../../src/study/floating.ts';
+import { linearStudy } from '../../src/study/linear-study.ts';
 import { isExact, prepare } from '../../src/study/prepare.ts';
 import type { CodimResult } from '../../src/study/result.ts';
 
