@@ -10,26 +10,16 @@
  *     J. Eagon 1971), and products of generators are found that are a basis, their degrees rebuilding Molien's series.
  */
 import { LimitError } from '../errors/index.ts';
-import type { Algebraic } from '../field/index.ts';
-import type { Polynomial } from '../polynomial/index.ts';
 import { binomial } from './dimensions.ts';
 import { Sampler, SPARE_POINTS, Span } from './evaluation.ts';
+import type { Generator } from './generator.ts';
 import { compositions } from './graded-monomials.ts';
 import type { LinearAction } from './linear-action.ts';
 import { boxSize, numeratorPieces, type Parameter, PowerProducts, planParameters, total } from './parameter-plan.ts';
 import { areIndependent } from './parameters.ts';
 import { bySimplicity, difference, type FoundGenerator, type Piece, PieceSearch } from './piece-search.ts';
-import { nameGenerators, type Readable } from './readable.ts';
+import { nameGenerators } from './readable.ts';
 import { InvariantSpaces } from './reynolds.ts';
-
-export interface Generator {
-  readonly name: string;
-  readonly degree: number;
-  /** Degrees in the blocks of the action. */
-  readonly degrees: readonly number[];
-  readonly polynomial: Polynomial<Algebraic>;
-  readonly readable: Readable;
-}
 
 export interface GeneratorSet {
   readonly spaces: InvariantSpaces;

@@ -2,6 +2,7 @@
 export * from './degrees.ts';
 export * from './dimensions.ts';
 export * from './equivariants.ts';
+export * from './generator.ts';
 export * from './generators.ts';
 export * from './letters.ts';
 export * from './linear-action.ts';
@@ -9,7 +10,7 @@ export * from './molien.ts';
 export type { Parameter } from './parameter-plan.ts';
 export * from './parameters.ts';
 export * from './primitive.ts';
-export { type ComplexCoordinate, complexCoordinates, describeElement, type Readable } from './readable.ts';
+export { type ComplexCoordinate, complexCoordinates, describeElement } from './readable.ts';
 export * from './relations.ts';
 export * from './rewrite.ts';
 export * from './reynolds.ts';

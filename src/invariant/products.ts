@@ -1,7 +1,7 @@
 /** Products of generators: enumeration by multidegree, order, expansion. */
 import type { Algebraic } from '../field/index.ts';
 import { type Monomial, type Polynomial, type PolynomialRing, UNIT } from '../polynomial/index.ts';
-import type { Generator } from './generators.ts';
+import type { Generator } from './generator.ts';
 import { difference, keyOf } from './piece-search.ts';
 
 /** A product of generators as a monomial in their numbers. */

@@ -1,18 +1,9 @@
 /** Names and readable forms of invariants: in real coordinates always, in z and z̄ where the action has planes. */
 import { factorsOf, type Monomial } from '../polynomial/index.ts';
-import type { Generator } from './generators.ts';
+import type { Generator, Readable } from './generator.ts';
 import { total } from './parameter-plan.ts';
 import type { FoundGenerator } from './piece-search.ts';
 import type { BasisElement, InvariantSpaces } from './reynolds.ts';
-
-export interface Readable {
-  /** The polynomial in real coordinates. */
-  readonly real: string;
-  readonly realLatex: string;
-  /** E.g. `|z|^2`, `Re(z^2*w)`; undefined where the action has no planes or the form is not short. */
-  readonly complex: string | undefined;
-  readonly complexLatex: string | undefined;
-}
 
 /** What the complex coordinates mean: `z = q1 + i*q2`. */
 export interface ComplexCoordinate {
