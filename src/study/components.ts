@@ -20,6 +20,7 @@ import {
 } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import { formOf, type MeasuredBlock, measuredBlocks } from './capacity.ts';
+import { type BlockDeterminant, determinantOf } from './factored-block.ts';
 import { labelledComponents } from './labels.ts';
 import { partnersOf } from './partners.ts';
 import { isExact, type NotExact, prepare } from './prepare.ts';
@@ -42,6 +43,8 @@ export interface Structure {
   blocks(basis: Matrix<Algebraic>, form: Matrix<Algebraic> | undefined): Blocks | undefined;
   /** Parameters that stay symbols in the blocks. */
   readonly symbols: readonly string[];
+  /** The determinant of S on the columns of a basis made of `cut` alike ones; absent where S is floating. */
+  determinant?(basis: Matrix<Algebraic>, cut: number): Promise<BlockDeterminant>;
 }
 
 export interface Blocks {
@@ -82,6 +85,7 @@ export async function structureOf(declaration: Declaration): Promise<Structure> 
       const j = mapMatrix(poisson(form), f, (x) => f.fromConstant(x));
       return { s: texts(s), l: texts(multiply(j, s)) };
     },
+    ...(hessian === undefined ? {} : { determinant: (basis, cut) => determinantOf(hessian, model, basis, cut) }),
   };
 }
 
@@ -156,26 +160,28 @@ export function readableBasis(basis: Matrix<Algebraic>, field: RealField): Matri
 const formsOf = (basis: Matrix<Algebraic>, names: readonly string[], field: RealField): string[] =>
   Array.from({ length: basis.cols }, (_, j) => linearText(column(basis, j), names, field));
 
-function componentList(s: Structure): ComponentSummary[] {
+async function componentList(s: Structure): Promise<ComponentSummary[]> {
   const { action, names } = s;
   const f = action.field;
   const plain = componentSummaries(s.components);
   const blocks = adaptedBlocks(action, s.components);
   const bases = blocks.map((b) => readableBasis(b.basis, f));
   const partners = action.dimension > PARTNER_DIMENSION ? undefined : partnersOf(action, s.components, bases);
-  return blocks.map((b, i): ComponentSummary => {
+  const list: ComponentSummary[] = [];
+  for (const [i, b] of blocks.entries()) {
     const basis = bases[i]!;
     const shown = basis.cols > BLOCK_LIMIT ? undefined : s.blocks(basis, undefined);
-    return {
+    list.push({
       ...plain[i]!,
       basis: formsOf(basis, names, f),
       copies: b.component.irreducible.dimension / b.cut,
       ...(partners === undefined || partners[i]!.length === 0
         ? {}
         : { partners: partners[i]!.map((p) => ({ basis: formsOf(p.basis, names, f), factor: f.format(p.factor) })) }),
-      ...(shown === undefined ? {} : { block: shown.s }),
-    };
-  });
+      ...(shown === undefined ? {} : { block: shown.s, ...(await s.determinant?.(basis, b.cut)) }),
+    });
+  }
+  return list;
 }
 
 function classOf(s: Structure, m: MeasuredBlock): ClassSummary {
@@ -210,7 +216,7 @@ export async function componentsResult(declaration: Declaration): Promise<Compon
     command: 'components',
     ...head,
     ...(structure.symbols.length === 0 ? {} : { symbols: structure.symbols }),
-    components: componentList(structure),
+    components: await componentList(structure),
     classes: blocks.map((b) => classOf(structure, b)),
   };
 }

@@ -45,6 +45,24 @@ export interface ComponentSummary {
   readonly copies?: number;
   /** Bases of the other spaces; S on them is `factor` times the block. */
   readonly partners?: readonly { readonly basis: readonly string[]; readonly factor: Value }[];
+  /** Determinant of the block in factors. */
+  readonly determinant?: string;
+  /** Where it vanishes, in the first parameter that varies. */
+  readonly thresholds?: readonly ThresholdSummary[];
+}
+
+/** A zero of the determinant of a component. */
+export interface ThresholdSummary {
+  readonly parameter: string;
+  /** In the language of models, or null where there is no closed form. */
+  readonly exact: string | null;
+  /** Null where it depends on parameters that have no value. */
+  readonly value: number | null;
+  /** What vanishes there, and the value to 30 digits, where there is no closed form. */
+  readonly polynomial?: string;
+  readonly digits?: string;
+  /** Whether the determinant changes its sign (that of S on one of the alike spaces of the block); it touches zero otherwise. */
+  readonly signChange: boolean;
 }
 
 /** One block of the flow: what `classes` of the contract lists, with the block of L. */

@@ -23,6 +23,8 @@ export interface SymbolicHessian {
   readonly matrix: SparseMatrix<Coefficient>;
   /** Parameters that occur in it. */
   readonly symbols: readonly string[];
+  /** Parameters that are symbols, whether they occur or not. */
+  readonly kept: readonly string[];
   /** Constants without exact value that stay symbols too. */
   readonly atoms: readonly string[];
 }
@@ -197,12 +199,12 @@ function shownHessian(
       const m = overCoefficients(embedSparse(g.matrix, open.field, wide.field), wide.coefficients);
       return sparseEquals(sparseCongruence(m, found.matrix), found.matrix);
     });
-    if (invariant && wide.field === open.field) return found;
+    if (invariant && wide.field === open.field) return { ...found, kept: keep };
   }
-  return hessianOf(open, q.names.length);
+  return { ...hessianOf(open, q.names.length), kept: declaration.unset };
 }
 
-function hessianOf(e: SymbolicExpansion, n: number): SymbolicHessian {
+function hessianOf(e: SymbolicExpansion, n: number): Omit<SymbolicHessian, 'kept'> {
   const f = e.coefficients;
   const rows = Array.from({ length: n }, () => new Map<number, Coefficient>());
   e.polynomial.monomials.forEach((m, k) => {
