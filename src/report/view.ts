@@ -174,6 +174,16 @@ export function viewOf(results: ResultObject | readonly ResultObject[]): ReportV
       // a sweep lists collisions along the parameter, every other command those at the point
       const key = name === 'collisions' && result.command === 'sweep' ? 'meetings' : name;
       if (value !== undefined && !Object.hasOwn(merged, key)) merged[key] = value;
+      else if (key === 'components') merged[key] = withDeterminants(merged[key] as ComponentSummary[], value as ComponentSummary[]);
     }
   return { ...(merged as Omit<ReportView, 'commands'>), commands: list.map((result) => result.command) };
+}
+
+/** Determinants from the stage that has them. */
+function withDeterminants(list: readonly ComponentSummary[], from: readonly ComponentSummary[] | undefined): readonly ComponentSummary[] {
+  return list.map((component) => {
+    const { determinant, thresholds } = from?.find((other) => other.label === component.label) ?? {};
+    if (component.determinant !== undefined || determinant === undefined) return component;
+    return { ...component, determinant, ...(thresholds === undefined ? {} : { thresholds }) };
+  });
 }

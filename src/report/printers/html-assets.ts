@@ -46,7 +46,6 @@ math{font-size:1.05em}
 figure{margin:1.2rem 0;overflow-x:auto}
 figure svg{max-width:100%;height:auto;color:var(--ink);display:block}
 figcaption,.caution,.note{color:var(--soft);font-size:.9rem}
-.caution{border-top:1px solid var(--rule);margin-top:2.5rem;padding-top:.8rem}
 .cite{white-space:nowrap}
 @media (max-width:52rem){body{display:block}nav{position:static}dl div{grid-template-columns:1fr}}
 @media print{:root{--ink:#000;--soft:#444;--paper:#fff;--panel:#fff;--rule:#bbb;--link:#000;--yes:#000;--no:#000;--open:#000}body{display:block;max-width:none;padding:0;font-size:10pt}nav,.skip{display:none}.headline{border:1px solid #000}h2{break-after:avoid}figure,tr,.display{break-inside:avoid}.table,.display,figure{overflow:visible}a{text-decoration:none}}

@@ -69,8 +69,8 @@ export async function printHtml(document: Document): Promise<string> {
 <nav aria-label="Contents"><h2>Contents</h2><ol>${contents.map(([id, name]) => `<li><a href="#${id}">${escapeXml(name)}</a></li>`).join('')}</ol></nav>
 <main id="content">
 ${document.headline === null ? '' : writer.headline(document.headline)}
-${sections.join('\n')}
 ${document.caution === null ? '' : `<p class="caution" role="note">${escapeXml(document.caution)}</p>`}
+${sections.join('\n')}
 </main>
 <script>${SCRIPT}</script>
 </body>

@@ -31,6 +31,7 @@ export async function printLatex(document: Document, options: LatexOptions = {})
   const printer = new Printer(numbersOf(document), options.figures !== false, options.fragment === true ? FRAGMENT : PAGE);
   const body: string[] = [];
   if (document.headline !== null) body.push(printer.headline(document));
+  if (document.caution !== null) body.push(`\\noindent{\\small\\itshape ${latexText(document.caution)}\\par}`);
   for (const section of document.sections) body.push(await printer.section(section));
   const sources = sourcesOf(document);
   if (sources.length > 0)
@@ -40,7 +41,6 @@ export async function printLatex(document: Document, options: LatexOptions = {})
       ...sources.map((source, i) => `\\item[{[${i + 1}]}] ${latexText(source)}`),
       '\\end{list}',
     );
-  if (document.caution !== null) body.push(`\\medskip\\noindent{\\small\\itshape ${latexText(document.caution)}\\par}`);
   const content = body.join('\n\n');
   if (options.fragment === true)
     return [

@@ -41,10 +41,10 @@ export function printMarkdown(document: Document): string {
       out.push(`**${escapeMarkdown(headline.answer)}.**${headline.sentence === '' ? '' : ` ${escapeMarkdown(headline.sentence)}`}`);
     if (headline.facts.length > 0) out.push(facts(headline.facts));
   }
+  if (document.caution !== null) out.push(`> ${escapeMarkdown(document.caution)}`);
   for (const section of document.sections) out.push(`## ${escapeMarkdown(section.title)}`, ...section.blocks.map(block));
   const sources = sourcesOf(document);
   if (sources.length > 0) out.push('## References', sources.map((source, i) => `${i + 1}. ${escapeMarkdown(source)}`).join('\n'));
-  if (document.caution !== null) out.push(`> ${escapeMarkdown(document.caution)}`);
   return `${out.filter((part) => part !== '').join('\n\n')}\n`;
 }
 

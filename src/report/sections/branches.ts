@@ -87,6 +87,7 @@ function branchBlocks(branches: readonly BranchView[], view: ReportView): readon
       kind: 'table',
       caption: view.parameter === undefined ? 'Branches of equilibria.' : `Branches of equilibria along ${view.parameter}.`,
       columns: [
+        column('branch', 'right'),
         column('isotropy order', 'right'),
         ...(axial ? [column('axial')] : []),
         column('copies', 'right'),
@@ -97,13 +98,14 @@ function branchBlocks(branches: readonly BranchView[], view: ReportView): readon
         ...(stability ? [column('stability')] : []),
         column('confirmed'),
       ],
-      rows: branches.map((b): readonly Line[] => [
+      rows: branches.map((b, i): readonly Line[] => [
+        [integer(i + 1)],
         [integer(b.isotropyOrder)],
         ...(axial ? [[b.axial === undefined ? '–' : yesNo(b.axial)]] : []),
         [integer(b.copies)],
         direction(b),
         [typeof b.side === 'number' ? value(b.side) : b.side],
-        ...(exponents ? [b.exponent === undefined ? DASH : [math(formula(b.exponent))]] : []),
+        ...(exponents ? [[b.exponent ?? '–']] : []),
         orDash(b.morseIndex),
         ...(stability ? [[b.stability ?? '–']] : []),
         [b.confirmed === null || b.confirmed === undefined ? 'not tried' : b.confirmed ? 'yes' : 'not found'],
@@ -126,11 +128,11 @@ function branchBlocks(branches: readonly BranchView[], view: ReportView): readon
       ),
     );
   }
-  if (view.diagram !== undefined)
+  if (view.diagram !== undefined && branches.length > 0)
     blocks.push({
       kind: 'figure',
       figure: view.diagram,
-      caption: 'Branches of equilibria against the parameter; solid where stable, dashed where not.',
+      caption: 'Branches of equilibria against the parameter, by their number in the table; solid where stable, dashed where not.',
     });
   return blocks;
 }

@@ -4,6 +4,7 @@ import type { Value } from '../../study/result.ts';
 import { type Block, type Column, cite, column, joined, type Line, type Matrix, math, paragraph, type Section } from '../document.ts';
 import { algebra, formula, label, latexLabel, sign } from '../mathematics/index.ts';
 import type { ReportView } from '../view.ts';
+import { determinantBlocks } from './determinants.ts';
 import { DASH, inertia, integer, components as labelLine, pair, yesNo } from './words.ts';
 
 /** Blocks with more rows than this, or bases and blocks longer than so many signs, are left to the JSON result. */
@@ -61,6 +62,7 @@ export function componentsSection(view: ReportView): Section | null {
       caption: 'Blocks of S in a symmetry-adapted basis; copies of one component have equal blocks.',
     });
   for (const c of list) blocks.push(...basisBlocks([c.label], c.basis), ...matrixBlocks([c.label], [['S', 'S', c.block]]));
+  blocks.push(...determinantBlocks(list));
   return { id: 'components', title: 'Components', blocks };
 }
 

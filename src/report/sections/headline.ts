@@ -111,7 +111,7 @@ function factsOf(view: ReportView): readonly Fact[] {
         ...(name === undefined ? [] : [`${name}, `]),
         'order ',
         integer(order),
-        ...(reversing > 0 ? [', of which ', integer(reversing), ' reverse time'] : []),
+        ...(reversing > 0 ? [', of which ', integer(reversing), reversing === 1 ? ' reverses time' : ' reverse time'] : []),
       ],
     });
   }

@@ -10,6 +10,8 @@ const RELATIONS = 5000;
 const FIELDS = 8000;
 /** A longer expression is left to the JSON result. */
 const EXPRESSION = 8000;
+/** A longer polynomial is not printed in a table: its terms are counted. */
+const CELL = 700;
 
 interface Series {
   readonly numerator: readonly number[];
@@ -85,7 +87,7 @@ export function invariantsSection(view: ReportView): Section | null {
         view.proof === undefined || view.proof === '' ? '.' : `: ${view.proof}`,
       ],
     });
-    const shown = within(generators, (g) => g.polynomial.length, GENERATORS);
+    const shown = within(generators, (g) => Math.min(CELL, g.polynomial.length), GENERATORS);
     const readable = shown.some((g) => g.readable !== undefined);
     blocks.push({
       kind: 'table',
@@ -94,7 +96,7 @@ export function invariantsSection(view: ReportView): Section | null {
       rows: shown.map((g): readonly Line[] => [
         [math(formula(g.name))],
         [integer(g.degree)],
-        [math(formula(g.polynomial))],
+        polynomialCell(g.polynomial),
         ...(readable ? [g.readable === undefined ? ['–'] : [math(formula(g.readable))]] : []),
       ]),
     });
@@ -112,17 +114,40 @@ export function invariantsSection(view: ReportView): Section | null {
     });
     blocks.push(...seriesBlocks('E(t)', 'E(t)', view.equivariants));
     const all = view.equivariants.generators ?? [];
-    const fields = within(all, (f) => f.field.join().length, FIELDS);
+    const fields = within(all, (f) => Math.min(CELL, f.field.join().length), FIELDS);
     if (fields.length > 0)
       blocks.push({
         kind: 'table',
         caption: 'Generators of the equivariant vector fields as a module over the invariants.',
         columns: [column('degree', 'right'), column('field')],
-        rows: fields.map((f) => [[integer(f.degree)], [math(list(f.field.map((x) => formula(x))))]]),
+        rows: fields.map((f) => [[integer(f.degree)], fieldCell(f.field)]),
       });
     blocks.push(...rest(all.length - fields.length, 'field'));
   }
   return { id: 'invariants', title: 'Invariants', blocks };
+}
+
+/** Terms of a polynomial in the language of model files: signs outside of brackets part them. */
+function terms(polynomial: string): number {
+  let depth = 0;
+  let found = 1;
+  for (let i = 0; i < polynomial.length; i++) {
+    const c = polynomial[i];
+    if (c === '(') depth++;
+    else if (c === ')') depth--;
+    else if (depth === 0 && (c === '+' || c === '-') && polynomial[i - 1] === ' ') found++;
+  }
+  return found;
+}
+
+function polynomialCell(polynomial: string): Line {
+  return polynomial.length > CELL ? [`${count(terms(polynomial), 'term')}, in the JSON result`] : [math(formula(polynomial))];
+}
+
+function fieldCell(field: readonly string[]): Line {
+  if (field.join().length <= CELL) return [math(list(field.map((x) => formula(x))))];
+  const all = field.filter((x) => x !== '0').reduce((sum, x) => sum + terms(x), 0);
+  return [`${count(all, 'term')}, in the JSON result`];
 }
 
 /** What a list leaves out. */

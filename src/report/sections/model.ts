@@ -89,7 +89,9 @@ export function symmetrySection(view: ReportView): Section | null {
               ...(group.reversing > 0
                 ? [
                     integer(group.reversing),
-                    ' of its elements reverse time and are antisymplectic ',
+                    group.reversing === 1
+                      ? ' of its elements reverses time and is antisymplectic '
+                      : ' of its elements reverse time and are antisymplectic ',
                     cite('hoveijn-lamb-roberts-2003'),
                     '.',
                   ]

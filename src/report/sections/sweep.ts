@@ -1,5 +1,5 @@
 /** Along a parameter: where components meet zero or collide, and the pictures of it. */
-import { type Block, column, type Line, math, paragraph, type Section } from '../document.ts';
+import { type Block, column, joined, type Line, math, paragraph, type Section } from '../document.ts';
 import { formula, label, relation, sign } from '../mathematics/index.ts';
 import type { CrossingView, ReportView } from '../view.ts';
 import { components, inertia, integer, orDash, pair, yesNo } from './words.ts';
@@ -7,8 +7,16 @@ import { components, inertia, integer, orDash, pair, yesNo } from './words.ts';
 export function sweepSection(view: ReportView): Section | null {
   if (view.crossings === undefined) return null;
   const blocks: Block[] = [...rangeBlocks(view), ...crossingBlocks(view.crossings), ...meetingBlocks(view)];
-  for (const name of view.singular ?? [])
-    blocks.push(paragraph('The block of ', math(label(name)), ' is singular for every value of the parameter.'));
+  const singular = view.singular ?? [];
+  if (singular.length > 0)
+    blocks.push(
+      paragraph(
+        singular.length === 1 ? 'The block of ' : 'The blocks of ',
+        ...joined(singular.map((name) => math(label(name)))),
+        singular.length === 1 ? ' is' : ' are',
+        ' singular for every value of the parameter.',
+      ),
+    );
   if (view.ends !== undefined && view.ends.length > 0) blocks.push({ kind: 'list', items: view.ends.map((words) => [words]) });
   if (view.paths !== undefined)
     blocks.push({
@@ -42,10 +50,11 @@ function rangeBlocks(view: ReportView): readonly Block[] {
 }
 
 function place(c: CrossingView): Line {
-  const value = math(formula(c.value));
-  return c.exact === null || c.exact === undefined
-    ? [math(relation(formula(c.parameter), '~', formula(c.value)))]
-    : [math(relation(formula(c.parameter), '=', formula(c.exact))), ' ', math(sign('~', '\\approx', 1)), ' ', value];
+  if (c.exact === null || c.exact === undefined) return [math(relation(formula(c.parameter), '~', formula(c.value)))];
+  const exact = math(relation(formula(c.parameter), '=', formula(c.exact)));
+  // an integer says it all
+  if (/^-?\d+$/.test(c.exact)) return [exact];
+  return [exact, ' ', math(sign('~', '\\approx', 1)), ' ', math(formula(c.value))];
 }
 
 function crossingBlocks(crossings: readonly CrossingView[]): readonly Block[] {
