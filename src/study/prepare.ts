@@ -8,7 +8,7 @@ import type { Algebraic, RealField } from '../field/index.ts';
 import { dense, modularRank, rank, type SparseMatrix, sparseApply, sparseCongruence, sparseEquals } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import { energyExpression, floatingSource } from '../model/energy.ts';
-import { type Expression, formatExpression, taylor } from '../model/expression/index.ts';
+import { type Expression, formatExpression, taylor, tidy } from '../model/expression/index.ts';
 import { type LocalExpansion, localExpansion } from '../model/local.ts';
 import { polynomialDegree } from '../model/polynomial-energy.ts';
 import { type Quantities, readQuantities } from '../model/quantities.ts';
@@ -281,5 +281,5 @@ export interface Stated {
 export function energyText(p: Stated): string | undefined {
   const { energy } = p.declaration;
   if (energy.kind === 'hamiltonian' || energy.kind === 'quadratic') return energy.text.replace(/\s+/g, ' ').trim();
-  return p.hamiltonian === undefined || energy.kind === 'network' ? undefined : formatExpression(p.hamiltonian);
+  return p.hamiltonian === undefined || energy.kind === 'network' ? undefined : formatExpression(tidy(p.hamiltonian));
 }

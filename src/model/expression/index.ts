@@ -12,4 +12,5 @@ export type { Value } from './relation.ts';
 export { isName, LENGTH_LIMIT, NESTING_LIMIT, type Where } from './scan.ts';
 export { FieldTooSmall, located, Transcendental, withField } from './signals.ts';
 export * from './taylor.ts';
+export { tidy } from './tidy.ts';
 export * from './writing.ts';

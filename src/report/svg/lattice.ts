@@ -55,7 +55,8 @@ export function drawLattice(given: IsotropyFigure): Scene {
   }
   const widest = Math.max(1, ...rows.map((r) => r.members.length));
   const inner = widest * NODE_WIDTH + (widest - 1) * GAP_X;
-  const width = Math.max(MARGIN_LEFT + inner + 10, 270);
+  const entries = legendEntries(figure);
+  const width = Math.max(MARGIN_LEFT + inner + 10, 270, 4 + entries.reduce((sum, e) => sum + legendWidth(e), 0));
   const place = new Map<number, readonly [number, number]>();
   rows.forEach((row, r) => {
     const above = (i: number): number => {
@@ -94,7 +95,7 @@ export function drawLattice(given: IsotropyFigure): Scene {
   });
   for (const [i, node] of figure.nodes.entries()) shapes.push(...drawNode(node, place.get(i)!));
   const bottom = 12 + rows.length * (NODE_HEIGHT + GAP_Y) - GAP_Y + 22;
-  const legend = drawLegend(figure, bottom);
+  const legend = drawLegend(entries, bottom);
   const levelsText = figure.nodes.map((n) => `${figure.levelName} ${n.level}: ${n.detail}`).join('; ');
   return {
     width,
@@ -144,15 +145,28 @@ function drawNode(node: LatticeNode, [x, y]: readonly [number, number]): readonl
   ];
 }
 
-function drawLegend(figure: IsotropyFigure, y: number): readonly Shape[] {
-  const entries: { good: boolean; reversing: boolean; words: string }[] = [];
+interface LegendEntry {
+  readonly good: boolean;
+  readonly reversing: boolean;
+  readonly words: string;
+}
+
+/** Box, words in small type, and a gap; wide enough for the widest of the usual faces. */
+const legendWidth = (e: LegendEntry): number => 32 + e.words.length * 5.2;
+
+function legendEntries(figure: IsotropyFigure): readonly LegendEntry[] {
+  const entries: LegendEntry[] = [];
   if (figure.nodes.some((n) => n.good)) entries.push({ good: true, reversing: false, words: figure.legend.good });
   if (figure.nodes.some((n) => !n.good)) entries.push({ good: false, reversing: false, words: figure.legend.other });
   if (figure.nodes.some((n) => n.mark === 'reversing')) entries.push({ good: true, reversing: true, words: figure.legend.reversing });
+  return entries;
+}
+
+function drawLegend(entries: readonly LegendEntry[], y: number): readonly Shape[] {
   let x = 4;
   return entries.flatMap((e) => {
     const shapes = [box(x + 8, y - 3, 16, 10, e.good, e.reversing), text(x + 20, y, e.words, 'start', 8.5)];
-    x += 32 + e.words.length * 4.4;
+    x += legendWidth(e);
     return shapes;
   });
 }
