@@ -28,7 +28,8 @@ export interface SweepCollision {
   readonly components: readonly string[];
   /** 'splits' where the eigenvalues leave the axis, 'passes' where two frequencies only agree. */
   readonly motion: Motion;
-  readonly codimension: 1;
+  /** Null for a passage inside one flow block: it may cost more than 1, and codim at that value says what. */
+  readonly codimension: 1 | null;
   /** Krein signs of the two before they meet. */
   readonly signs: readonly [number, number];
 }
@@ -195,7 +196,7 @@ function passages(
           value: near(theta, p, ends[0].im, ends[2].im),
           components: [...new Set([...family.flowLabels[q.block]!, ...family.flowLabels[p.block]!])],
           motion: 'passes',
-          codimension: 1,
+          codimension: p.block === q.block ? null : 1,
           signs: [ends[1].sign, ends[0].sign],
         });
       }

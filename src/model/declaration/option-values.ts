@@ -59,14 +59,14 @@ export function assignment(option: string, part: string, example: string): [stri
   return [name, text];
 }
 
-export function count(option: string, value: string, least: number): number {
+export function count(option: string, value: string, least: number, example = String(Math.max(least, 4))): number {
   if (!/^\d{1,9}$/.test(value) || Number(value) < least)
     throw usage(
       option,
       value,
       `--${option} needs an integer not below ${least}.`,
       `an integer not below ${least}`,
-      `write --${option} ${Math.max(least, 4)}`,
+      `write --${option} ${example}`,
     );
   return Number(value);
 }
@@ -83,7 +83,7 @@ export function rangeOf(value: string): [string, RangeDeclaration] {
       'write --range mu=-1:1:100',
     );
   const [from, to, steps] = parts;
-  return [name, { from: from!, to: to!, ...(steps === undefined ? {} : { steps: count('range', steps, 1) }) }];
+  return [name, { from: from!, to: to!, ...(steps === undefined ? {} : { steps: count('range', steps, 1, `${name}=${from}:${to}:100`) }) }];
 }
 
 /** The last value of an option that may be given once. */

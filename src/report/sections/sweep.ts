@@ -125,7 +125,7 @@ function meetingBlocks(view: ReportView): readonly Block[] {
         [math(formula(m.value))],
         components(m.components),
         [m.motion],
-        [integer(m.codimension)],
+        orDash(m.codimension),
         m.signs === undefined ? ['–'] : [pair(m.signs)],
       ]),
     },
