@@ -7,6 +7,7 @@
 import type { Algebraic, Rational } from '../field/index.ts';
 import { RealField, rational, rationals } from '../field/index.ts';
 import { type RealRoot, RealRoots, type Univariate, UnivariateRing } from '../polynomial/index.ts';
+import { nerdamerRoots } from './factored-nerdamer.ts';
 import { bisected } from './threshold-root.ts';
 
 export interface ClosedForm {
@@ -196,20 +197,6 @@ function biquadraticRoots(p: Univariate<Algebraic>, field: RealField): ClosedFor
 /** Longest quadratic equation that is handed on, in characters. */
 const FORMULA_LENGTH = 400;
 
-/** The part of nerdamer that is used; it has one state for all, which is emptied after each use. */
-interface Nerdamer {
-  (text: string): { toString(): string };
-  flush(): void;
-}
-
-let nerdamer: Promise<Nerdamer> | undefined;
-
-async function loadNerdamer(): Promise<Nerdamer> {
-  const { default: core } = await import('nerdamer');
-  for (const part of ['Algebra', 'Calculus', 'Solve']) await import(`nerdamer/${part}.js`);
-  return core as unknown as Nerdamer;
-}
-
 /**
  * Formulas for the roots in x of a x² + b x + c = 0, where a, b, c are texts in the names given; candidates only, which
  * the caller checks. Names are replaced by private ones, so that none of them means anything to the solver.
@@ -218,19 +205,10 @@ export async function quadraticFormulas(a: string, b: string, c: string, names: 
   if (a.length + b.length + c.length > FORMULA_LENGTH) return [];
   const hidden = (text: string) =>
     text.replace(/[A-Za-z_][A-Za-z_0-9]*/g, (name) => (names.includes(name) ? `v_${names.indexOf(name)}` : name));
-  nerdamer ??= loadNerdamer();
-  const solver = await nerdamer;
-  try {
-    const solved = solver(`solve((${hidden(a)})*x_0^2+(${hidden(b)})*x_0+(${hidden(c)}),x_0)`).toString();
-    return solved
-      .replace(/^\[|\]$/g, '')
-      .split(',')
-      .filter((text) => text !== '')
-      .map((text) => text.replace(/v_(\d+)/g, (_, i: string) => names[Number(i)]!));
-  } catch {
-    // what it cannot solve, it says by errors of many kinds; there is then no formula
-    return [];
-  } finally {
-    solver.flush();
-  }
+  const solved = await nerdamerRoots(`(${hidden(a)})*x_0^2+(${hidden(b)})*x_0+(${hidden(c)})`);
+  return (solved ?? '')
+    .replace(/^\[|\]$/g, '')
+    .split(',')
+    .filter((text) => text !== '')
+    .map((text) => text.replace(/v_(\d+)/g, (_, i: string) => names[Number(i)]!));
 }

@@ -1,6 +1,6 @@
 /**
- * Factors of a polynomial with integer coefficients as nerdamer sees them: guesses, which the caller checks. It runs in
- * a thread of its own, so that it can be stopped after a time, started at the first question and not before.
+ * Factors and roots of polynomials as nerdamer sees them: guesses, which the caller checks. It runs in a thread of its
+ * own, so that it can be stopped after a time, started at the first question and not before.
  */
 import { createRequire } from 'node:module';
 import { Worker } from 'node:worker_threads';
@@ -17,10 +17,11 @@ const THREAD = `
 const { parentPort, workerData } = require('node:worker_threads');
 const nerdamer = require(workerData.core);
 require(workerData.algebra);
-parentPort.on('message', (polynomial) => {
+parentPort.on('message', (question) => {
   let answer = null;
   try {
-    answer = nerdamer('factor(' + polynomial + ')').toString();
+    if (question.startsWith('solve')) workerData.solve.forEach((part) => require(part));
+    answer = nerdamer(question).toString();
   } catch {}
   nerdamer.flush();
   parentPort.postMessage(answer);
@@ -30,15 +31,23 @@ let thread: Worker | undefined;
 /** Questions are put one after the other. */
 let last: Promise<unknown> = Promise.resolve();
 
-/** Asks nerdamer. The text holds digits, + - * ^ and the names v_0, v_1, … only; anything else is not passed on. */
-export const nerdamerFactors: FactorHelper = (polynomial) => {
-  if (!/^(?:v_\d+|[0-9+\-*^ ])+$/.test(polynomial)) return Promise.resolve(undefined);
-  const answer = last.then(() => ask(polynomial));
+/** The factors of a polynomial with integer coefficients. */
+export const nerdamerFactors: FactorHelper = (polynomial) =>
+  /^(?:v_\d+|[0-9+\-*^ ])+$/.test(polynomial) ? inTurn(`factor(${polynomial})`) : Promise.resolve(undefined);
+
+/** The roots in x_0 of a polynomial in x_0, v_0, v_1, …, as a list in brackets. */
+export const nerdamerRoots = (polynomial: string): Promise<string | undefined> =>
+  /^(?:v_\d+|x_0|(?:sqrt|cos)(?=\()|pi|[0-9+\-*/^() ])+$/.test(polynomial)
+    ? inTurn(`solve(${polynomial},x_0)`)
+    : Promise.resolve(undefined);
+
+function inTurn(question: string): Promise<string | undefined> {
+  const answer = last.then(() => ask(question));
   last = answer;
   return answer;
-};
+}
 
-function ask(polynomial: string): Promise<string | undefined> {
+function ask(question: string): Promise<string | undefined> {
   try {
     thread ??= started();
   } catch {
@@ -63,12 +72,16 @@ function ask(polynomial: string): Promise<string | undefined> {
     const lost = (): void => settle(undefined, false);
     const timer = setTimeout(lost, PATIENCE);
     worker.on('message', answered).on('error', lost).on('exit', lost);
-    worker.postMessage(polynomial);
+    worker.postMessage(question);
   });
 }
 
 function started(): Worker {
   const { resolve } = createRequire(import.meta.url);
-  const workerData = { core: resolve('nerdamer'), algebra: resolve('nerdamer/Algebra.js') };
+  const workerData = {
+    core: resolve('nerdamer'),
+    algebra: resolve('nerdamer/Algebra.js'),
+    solve: [resolve('nerdamer/Calculus.js'), resolve('nerdamer/Solve.js')],
+  };
   return new Worker(THREAD, { eval: true, workerData, resourceLimits: { maxOldGenerationSizeMb: HEAP } });
 }

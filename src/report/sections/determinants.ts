@@ -47,7 +47,7 @@ function place(t: ThresholdSummary): Line {
     if (t.value === null || /^-?\d+$/.test(t.exact)) return [exact];
     return [exact, ' ', math(sign('~', '\\approx', 1)), ' ', math(formula(t.value))];
   }
-  const condition = t.polynomial === undefined ? [] : [math(relation(formula(t.polynomial), '=', formula('0')))];
+  const condition = t.polynomial === undefined ? [] : [math(formula(t.polynomial))];
   if (t.value === null) return ['the roots of ', ...condition, ' in ', math(name)];
   return [math(relation(name, '~', formula(t.digits ?? t.value))), ', a root of ', ...condition];
 }
