@@ -53,7 +53,12 @@ describe('factors, by hand', () => {
     const r = new PolynomialRing(golden, ['g']);
     const root = golden.sqrt(rational(5n))!;
     const p = r.scale(minusOver(r, r.variable('g'), golden.fromInteger(2)), root);
-    expect(normalised(r, p)).toMatchObject({ polynomial: r.fromTerms([[[0], golden.fromInteger(2)], [[1], golden.fromInteger(-1)]]) });
+    expect(normalised(r, p)).toMatchObject({
+      polynomial: r.fromTerms([
+        [[0], golden.fromInteger(2)],
+        [[1], golden.fromInteger(-1)],
+      ]),
+    });
   });
   it('zero has no factors', async () => {
     await expect(factored(ring, [ring.zero])).rejects.toThrow(RangeError);
