@@ -7,8 +7,9 @@ import { InputError } from '../errors/index.ts';
 import type { Algebraic } from '../field/index.ts';
 import { fromRows, inverse } from '../linear/index.ts';
 import { PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
-import type { Declaration, EnergyDeclaration, MatrixFamily } from './declaration/declaration.ts';
+import type { Declaration, EnergyDeclaration, MatrixFamily, NumberedFiles } from './declaration/declaration.ts';
 import { type Expression, parseExpression, substituteSymbols, taylor } from './expression/index.ts';
+import { weightedFiles } from './file-family.ts';
 import type { MatrixText } from './matrix-file/index.ts';
 
 const number = (n: bigint, d = 1n): Expression => ({ kind: 'number', n, d });
@@ -24,8 +25,9 @@ export function floatingSource(energy: EnergyDeclaration): string | undefined {
   const family = (f: MatrixFamily | undefined) => {
     if (f?.constant !== undefined) matrices.push(f.constant);
     for (const m of f?.terms.values() ?? []) matrices.push(m);
+    for (const m of f?.files?.nodes ?? []) matrices.push(m.matrix);
   };
-  if (energy.kind === 'hessian') matrices.push(energy.matrix);
+  if (energy.kind === 'hessian') matrices.push(energy.matrix, ...(energy.files?.nodes.map((file) => file.matrix) ?? []));
   if (energy.kind === 'mechanical') {
     family(energy.mass);
     family(energy.gyroscopic);
@@ -46,7 +48,7 @@ export function energyExpression(declaration: Declaration, definitions: Readonly
     case 'quadratic':
       return read(energy.text, 'quadratic');
     case 'hessian':
-      return quadraticForm(energy.matrix, declaration, read);
+      return quadraticForm(energy.matrix, energy.files, declaration, read);
     case 'mechanical':
       return mechanicalEnergy(energy, declaration, read);
     case 'network':
@@ -57,7 +59,7 @@ export function energyExpression(declaration: Declaration, definitions: Readonly
 type Reader = (text: string, key: string) => Expression;
 
 /** ½ Σ m_ij x_i x_j. */
-function quadraticForm(m: MatrixText, declaration: Declaration, read: Reader): Expression {
+function quadraticForm(m: MatrixText, files: NumberedFiles | undefined, declaration: Declaration, read: Reader): Expression {
   const names = [...declaration.coordinates, ...declaration.momenta];
   if (m.rows !== names.length || m.cols !== names.length)
     throw new InputError(`the Hessian is ${m.rows} × ${m.cols}`, {
@@ -65,10 +67,21 @@ function quadraticForm(m: MatrixText, declaration: Declaration, read: Reader): E
       key: m.source,
       expected: `${names.length} × ${names.length}, for coordinates and momenta`,
     });
+  if (files !== undefined) {
+    const entries = familyEntries({ rows: m.rows, cols: m.cols, terms: new Map(), files, where: 'quadratic' }, declaration, read);
+    const term = (e: Expression | undefined, i: number, j: number) =>
+      e === undefined ? [] : [product(e, symbol(names[i]!), symbol(names[j]!))];
+    return product(half, sum(entries.flatMap((row, i) => row.flatMap((e, j) => term(e, i, j)))));
+  }
   const texts = new Map(m.entries.map((e) => [e.i * m.cols + e.j, e.text]));
   // entries that read alike need no proof of symmetry
   if (m.entries.some((e) => texts.get(e.j * m.cols + e.i) !== e.text))
-    requireSymmetry(familyEntries({ rows: m.rows, cols: m.cols, constant: m, terms: new Map(), where: 'quadratic' }, read), declaration, 'quadratic', 1);
+    requireSymmetry(
+      familyEntries({ rows: m.rows, cols: m.cols, constant: m, terms: new Map(), where: 'quadratic' }, declaration, read),
+      declaration,
+      'quadratic',
+      1,
+    );
   return product(
     half,
     sum(m.entries.map((e) => product(read(e.text, `${m.source}[${e.i + 1}][${e.j + 1}]`), symbol(names[e.i]!), symbol(names[e.j]!)))),
@@ -76,17 +89,18 @@ function quadraticForm(m: MatrixText, declaration: Declaration, read: Reader): E
 }
 
 /** Entries of a family as expressions, row by row; absent ones undefined. */
-function familyEntries(f: MatrixFamily, read: Reader): (Expression | undefined)[][] {
+function familyEntries(f: MatrixFamily, declaration: Declaration, read: Reader): (Expression | undefined)[][] {
   const out = Array.from({ length: f.rows }, () => new Array<Expression[] | undefined>(f.cols).fill(undefined));
-  const add = (m: MatrixText, factor?: string) => {
+  const add = (m: MatrixText, factor?: Expression) => {
     for (const e of m.entries) {
       const value = read(e.text, `${m.source}[${e.i + 1}][${e.j + 1}]`);
-      const term = factor === undefined ? value : product(symbol(factor), value);
+      const term = factor === undefined ? value : product(factor, value);
       (out[e.i]![e.j] ??= []).push(term);
     }
   };
   if (f.constant !== undefined) add(f.constant);
-  for (const [name, m] of f.terms) add(m, name);
+  for (const [name, m] of f.terms) add(m, symbol(name));
+  if (f.files !== undefined) for (const { weight, matrix } of weightedFiles(f.files, declaration)) add(matrix, weight);
   return out.map((row) => row.map((terms) => (terms === undefined ? undefined : terms.length === 1 ? terms[0] : sum(terms))));
 }
 
@@ -94,12 +108,13 @@ function familyEntries(f: MatrixFamily, read: Reader): (Expression | undefined)[
 function mechanicalEnergy(energy: EnergyDeclaration & { kind: 'mechanical' }, declaration: Declaration, read: Reader): Expression {
   const q = declaration.coordinates.map(symbol);
   const p = declaration.momenta.map(symbol);
-  const mass = familyEntries(energy.mass, read);
-  const gyroscopic = energy.gyroscopic === undefined ? undefined : familyEntries(energy.gyroscopic, read);
-  const stiffness = familyEntries(energy.stiffness, read);
-  requireSymmetry(mass, declaration, 'mass', 1);
-  requireSymmetry(stiffness, declaration, 'stiffness', 1);
-  if (gyroscopic !== undefined) requireSymmetry(gyroscopic, declaration, 'gyroscopic', -1);
+  const mass = familyEntries(energy.mass, declaration, read);
+  const gyroscopic = energy.gyroscopic === undefined ? undefined : familyEntries(energy.gyroscopic, declaration, read);
+  const stiffness = familyEntries(energy.stiffness, declaration, read);
+  // numbered files were checked when they were read
+  if (energy.mass.files === undefined) requireSymmetry(mass, declaration, 'mass', 1);
+  if (energy.stiffness.files === undefined) requireSymmetry(stiffness, declaration, 'stiffness', 1);
+  if (gyroscopic !== undefined && energy.gyroscopic?.files === undefined) requireSymmetry(gyroscopic, declaration, 'gyroscopic', -1);
   const velocity = p.map((pi, i) => {
     const terms = (gyroscopic?.[i] ?? []).flatMap((g, j) => (g === undefined ? [] : [product(number(-1n, 2n), g, q[j]!)]));
     return terms.length === 0 ? pi : sum([pi, ...terms]);

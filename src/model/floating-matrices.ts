@@ -19,6 +19,7 @@ import {
 } from '../linear/index.ts';
 import type { Declaration, MatrixFamily } from './declaration/declaration.ts';
 import { type Expression, gradientNumeric, parseExpression, substituteSymbols } from './expression/index.ts';
+import { weightsAt } from './file-family.ts';
 import type { FloatingEnergy, FloatingLocal } from './floating-energy.ts';
 import type { MatrixText } from './matrix-file/index.ts';
 import { INTEGER, REAL } from './matrix-file/number-text.ts';
@@ -69,9 +70,13 @@ function evaluateFamily(f: MatrixFamily, reader: Reader, key: string): Evaluated
   const value = new Float64Array(length);
   const size = new Float64Array(length);
   const by = reader.vary.map(() => new Float64Array(length));
-  const add = (m: MatrixText, name?: string) => {
-    const factor = name === undefined ? 1 : reader.values.get(name);
-    if (factor === undefined) throw new InputError(`the parameter ${name} has no value`, { file: reader.file, key: `parameters.${name}` });
+  const numberOf = (name: string): number => {
+    const value = reader.values.get(name);
+    if (value === undefined) throw new InputError(`the parameter ${name} has no value`, { file: reader.file, key: `parameters.${name}` });
+    return value;
+  };
+  /** Adds factor · m, where the factor grows with the parameter by the slope. */
+  const add = (m: MatrixText, factor = 1, slope = 0, name?: string) => {
     const own = evaluateText(m, reader);
     own.value.forEach((x, k) => {
       value[k]! += factor * x;
@@ -83,12 +88,16 @@ function evaluateFamily(f: MatrixFamily, reader: Reader, key: string): Evaluated
       });
       if (v === name)
         own.value.forEach((x, k) => {
-          by[p]![k]! += x;
+          by[p]![k]! += slope * x;
         });
     });
   };
   if (f.constant !== undefined) add(f.constant);
-  for (const [name, m] of f.terms) add(m, name);
+  for (const [name, m] of f.terms) add(m, numberOf(name), 1, name);
+  if (f.files !== undefined) {
+    const { parameter } = f.files;
+    for (const { weight, slope, matrix } of weightsAt(f.files, numberOf(parameter), reader.file)) add(matrix, weight, slope, parameter);
+  }
   const shape = (d: Float64Array) => numberMatrix(f.rows, f.cols, d);
   requireFinite(shape(value), key);
   return { value: shape(value), by: by.map(shape), size: shape(size) };
@@ -232,7 +241,13 @@ export function energyOfMatrices(
   const names = [...declaration.coordinates, ...declaration.momenta];
   const reader: Reader = { values, definitions, file, vary };
   if (energy.kind === 'hessian') {
-    const family = { rows: energy.matrix.rows, cols: energy.matrix.cols, constant: energy.matrix, terms: new Map(), where: 'quadratic' };
+    const family: MatrixFamily = {
+      rows: energy.matrix.rows,
+      cols: energy.matrix.cols,
+      ...(energy.files === undefined ? { constant: energy.matrix } : { files: energy.files }),
+      terms: new Map(),
+      where: 'quadratic',
+    };
     if (family.rows !== names.length || family.cols !== names.length)
       throw new InputError(`the Hessian is ${family.rows} × ${family.cols}`, {
         file,

@@ -51,7 +51,10 @@ export function floatingEvent(family: SweepFamily, at: BlocksAt): EventNumbers {
   const scale = Math.max(1e-300, ...family.flow.map((_, i) => largestEntry(at.flow(i).s)));
   family.flow.forEach((block, i) => {
     const { s, w } = at.flow(i);
-    const zero = decideZeroEvent(s, w, { scale: Math.min(scale, 1e3 * Math.max(largestEntry(s), 1e-3 * scale)) });
+    const zero = decideZeroEvent(s, w, {
+      scale: Math.min(scale, 1e3 * Math.max(largestEntry(s), 1e-3 * scale)),
+      ...(family.tolerance === undefined ? {} : { tolerance: family.tolerance }),
+    });
     if (zero.generalisedDimension === 0) return;
     const chi = block.irreducible.beta === 4 ? 2 : 1;
     const partition = zero.blocks.flatMap((b) => new Array<number>(Math.round((b.count / block.cut) * chi)).fill(b.size));
@@ -114,10 +117,11 @@ export function exactEvent(
 /** Inertia of S on the whole space from its blocks; eigenvalues within rounding of zero count as zero. */
 export function inertiaAt(family: SweepFamily, at: BlocksAt): InertiaSummary {
   let [positive, zero, negative] = [0, 0, 0];
+  const whole = family.tolerance === undefined ? 0 : Math.max(...family.adapted.map((_, i) => largestEntry(at.component(i))));
   family.adapted.forEach((b, i) => {
     const copies = b.component.irreducible.dimension / b.cut;
     const m = at.component(i);
-    const cut = 1e-11 * largestEntry(m);
+    const cut = family.tolerance === undefined ? 1e-11 * largestEntry(m) : family.tolerance * whole;
     for (const x of symmetricEigen(m.data, m.rows).values) {
       if (x > cut) positive += copies;
       else if (x < -cut) negative += copies;

@@ -31,7 +31,7 @@ import {
   toNumberMatrix,
 } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
-import { energyExpression } from '../model/energy.ts';
+import { energyExpression, floatingSource } from '../model/energy.ts';
 import {
   compileNumeric,
   type Expression,
@@ -46,8 +46,8 @@ import {
 } from '../model/expression/index.ts';
 import { type Quantities, rationalNear, readQuantities } from '../model/quantities.ts';
 import { factorsOf, type Polynomial, type PolynomialRing, type Univariate, UnivariateRing } from '../polynomial/index.ts';
-import { fixedSpace } from './linear-study.ts';
 import { labelledComponents } from './labels.ts';
+import { fixedSpace } from './linear-study.ts';
 
 /** Values of the parameter at which the curves of a picture are computed, where nothing else is said. */
 export const DEFAULT_STEPS = 200;
@@ -102,6 +102,8 @@ export interface SweepFamily {
   readonly rational: RationalFamily | undefined;
   /** Why S is not exact, where it is not. */
   readonly because: string | undefined;
+  /** Relative to the scale of S, where its numbers carry errors of their own; absent where only rounding is at stake. */
+  readonly tolerance?: number;
 }
 
 /** The same declaration with another value of a parameter. */
@@ -154,8 +156,14 @@ function readEnd(declaration: Declaration, parameter: string, text: string, side
   }
 }
 
-/** Reads a model as a family. Throws the errors of `check` where it is not what it claims. */
-export function sweepFamily(declaration: Declaration): SweepFamily {
+/** Stands for H where the energy is evaluated from matrices of doubles. */
+const NO_ENERGY: Expression = { kind: 'number', n: 0n, d: 1n };
+
+/**
+ * Reads a model as a family. With `floating`, the reason, its energy is left out: S is then known from matrices of
+ * doubles. Throws the errors of `check` where the model is not what it claims.
+ */
+export function sweepFamily(declaration: Declaration, floating?: string): SweepFamily {
   const ranges = readRanges(declaration);
   const range = ranges[0]!;
   const swept = new Map(
@@ -172,7 +180,7 @@ export function sweepFamily(declaration: Declaration): SweepFamily {
       next: `give it one in the file or with --set ${missing}=…`,
     });
   const quantities = readQuantities(at);
-  const h = energyExpression(at, quantities.definitions);
+  const h = floating === undefined ? energyExpression(at, quantities.definitions) : NO_ENERGY;
   if (h === undefined)
     throw new InputError('the model has no Hamiltonian', {
       file: declaration.source,
@@ -187,7 +195,7 @@ export function sweepFamily(declaration: Declaration): SweepFamily {
   const used = symbolsOf(hamiltonian);
   const placed = new Map([...quantities.pointExpressions].map(([k, e]) => [k, substituteSymbols(e, others)]));
   const inForm = formExpressions(at, quantities, others);
-  for (const name of names)
+  for (const name of floating === undefined ? names : [])
     if (!used.has(name) && !inForm.some((e) => symbolsOf(e).has(name)) && ![...placed.values()].some((e) => symbolsOf(e).has(name)))
       throw new InputError(`the Hamiltonian does not depend on ${name}`, {
         file: declaration.source,
@@ -204,7 +212,8 @@ export function sweepFamily(declaration: Declaration): SweepFamily {
     ),
   );
   requireDeclaredSigns(quantities, small, at);
-  const exact = rationalFamily(h, quantities, range.parameter, at);
+  const exact: ExactFamily =
+    floating === undefined ? rationalFamily(h, quantities, range.parameter, at) : { kind: 'numeric', because: floating };
   const field = exact.kind === 'exact' ? RealField.join(small.field, exact.field) : small.field;
   const action = embedAction(small, field);
   const components = labelledComponents(at, action);
@@ -238,6 +247,21 @@ export function sweepFamily(declaration: Declaration): SweepFamily {
     rational: family,
     because: exact.kind === 'exact' ? undefined : exact.because,
   };
+}
+
+/**
+ * The same model with another energy along another range: the action and all bases are kept. The family stays exact
+ * where it was. Throws NotInvariantError where the generators do not leave the energy invariant.
+ */
+export function familyWithEnergy(frame: SweepFamily, declaration: Declaration, range: Range): SweepFamily {
+  const quantities = readQuantities(frame.declaration);
+  const h = energyExpression(declaration, quantities.definitions)!;
+  const exact = rationalFamily(h, quantities, range.parameter, declaration);
+  if (exact.kind !== 'exact') throw new RangeError(`a family that was exact is not so any more: ${exact.because}`);
+  const family = exact.embed(frame.field);
+  requireInvariant(family, frame.action, declaration);
+  const others = resolveDefinitions(new Map([...quantities.valueExpressions].filter(([k]) => k !== range.parameter)));
+  return { ...frame, declaration, range, ranges: [range], hamiltonian: substituteSymbols(h, others), rational: family };
 }
 
 export function formatRational(x: Rational): string {
@@ -311,6 +335,8 @@ type ExactFamily =
 /** S(μ) from one expansion with the parameter kept as a symbol; numeric where a term is transcendental or the point moves off. */
 function rationalFamily(h: Expression, quantities: Quantities, parameter: string, declaration: Declaration): ExactFamily {
   if (declaration.numbers === 'floating') return { kind: 'numeric', because: 'floating numbers were asked for' };
+  const inFile = floatingSource(declaration.energy);
+  if (inFile !== undefined) return { kind: 'numeric', because: `${inFile} holds floating numbers` };
   if (quantities.inexact !== undefined) return { kind: 'numeric', because: quantities.inexact };
   const n = quantities.names.length;
   const expressions = new Map([...quantities.valueExpressions].filter(([k]) => k !== parameter));

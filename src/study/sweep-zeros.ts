@@ -121,8 +121,17 @@ function polynomialText(factor: Univariate<Algebraic>, family: SweepFamily): str
   return out;
 }
 
-/** Zeros along a curve in double precision. */
-export function zerosOnCurve(family: SweepFamily, curve: Curve, blocks: (p: CurvePoint) => BlocksAt): Zeros {
+/**
+ * Zeros along a curve in double precision. `noise` says what counts as zero at a point, relative to S, where its
+ * numbers are known less well than to rounding.
+ */
+export function zerosOnCurve(
+  family: SweepFamily,
+  curve: Curve,
+  blocks: (p: CurvePoint) => BlocksAt,
+  noise: (j: number) => number = () => 0,
+): Zeros {
+  const cut = curve.points.map((_, j) => Math.max(1e-14, noise(j)));
   const eigen = (p: CurvePoint, i: number) => {
     const m = blocks(p).component(i);
     return symmetricEigen(m.data, m.rows).values;
@@ -135,26 +144,27 @@ export function zerosOnCurve(family: SweepFamily, curve: Curve, blocks: (p: Curv
     return Math.max(...family.adapted.map((_, i) => largestEntry(at.component(i))));
   });
   family.adapted.forEach((b, i) => {
-    const rows = curve.points.map((p) => eigen(p, i));
-    const sizes = rows.map((r, j) => r.reduce((m, x) => Math.max(m, Math.abs(x)), scales[j]!));
-    const flat = (k: number) => rows.every((r, j) => Math.abs(r[k]!) <= 1e-11 * sizes[j]!);
+    const full = curve.points.map((p) => eigen(p, i));
+    const sizes = full.map((r, j) => r.reduce((m, x) => Math.max(m, Math.abs(x)), scales[j]!));
+    const idle = Math.max(1e-11, family.tolerance ?? 0);
+    // those that are zero for every value are left out, wherever they stand among the others
+    const flat = full.reduce((least, r, j) => Math.min(least, r.filter((x) => Math.abs(x) <= idle * sizes[j]!).length), Infinity);
+    if (flat > 0) singular.push(b.component.label);
+    const rows = full.map((r) => withoutSmallest(r, flat));
     for (let k = 0; k < (rows[0]?.length ?? 0); k++) {
-      if (flat(k)) {
-        if (!singular.includes(b.component.label)) singular.push(b.component.label);
-        continue;
-      }
       for (let j = 0; j < rows.length; j++) {
         const v = rows[j]![k]!;
-        if (Math.abs(v) <= 1e-14 * sizes[j]!) {
+        if (Math.abs(v) <= cut[j]! * sizes[j]!) {
           found.push({ u: j, point: curve.points[j]!, component: i });
           continue;
         }
         const next = rows[j + 1]?.[k];
-        if (next === undefined || Math.abs(next) <= 1e-14 * sizes[j + 1]! || Math.sign(v) === Math.sign(next)) continue;
-        const theta = bracketed((t) => eigen(curve.between(j, t), i)[k]!, v, next);
+        if (next === undefined || Math.abs(next) <= cut[j + 1]! * sizes[j + 1]! || Math.sign(v) === Math.sign(next)) continue;
+        const value = (p: CurvePoint) => withoutSmallest(eigen(p, i), flat)[k]!;
+        const theta = bracketed((t) => value(curve.between(j, t)), v, next);
         const point = curve.between(j, theta);
         // through infinity is no zero
-        if (!(Math.abs(eigen(point, i)[k]!) <= 1e-3 * Math.max(Math.abs(v), Math.abs(next)))) continue;
+        if (!(Math.abs(value(point)) <= 1e-3 * Math.max(Math.abs(v), Math.abs(next)))) continue;
         found.push({ u: j + theta, point, component: i });
       }
     }
@@ -182,6 +192,14 @@ export function zerosOnCurve(family: SweepFamily, curve: Curve, blocks: (p: Curv
     });
   }
   return { zeros, singular };
+}
+
+/** A list of eigenvalues in order, without the `count` of least modulus. */
+function withoutSmallest(values: ArrayLike<number>, count: number): number[] {
+  const all = Array.from(values);
+  if (count === 0) return all;
+  const out = new Set([...all.keys()].sort((a, b) => Math.abs(all[a]!) - Math.abs(all[b]!)).slice(0, count));
+  return all.filter((_, k) => !out.has(k));
 }
 
 function turns(curve: Curve, u: number): boolean {

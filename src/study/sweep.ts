@@ -11,6 +11,7 @@ import { type SweepCollision, sweepCollisions, type Tracks, tracksOf } from './s
 import { type BlocksAt, blockEvaluator, type Curve, type CurvePoint, sweepCurve } from './sweep-curve.ts';
 import { type EventNumbers, exactEvent, floatingEvent, inertiaAt, type Observation, observe, transversal } from './sweep-event.ts';
 import { formatRational, type SweepFamily, sweepFamily } from './sweep-family.ts';
+import { type FileTable, fileSweep } from './sweep-files.ts';
 import { type ZeroChart, zeroChart } from './sweep-grid.ts';
 import { type Zeros, zerosOfFamily, zerosOnCurve } from './sweep-zeros.ts';
 import { thresholdFormulas } from './threshold-formula.ts';
@@ -43,6 +44,10 @@ export interface Crossing {
   readonly arithmetic: 'exact' | 'floating';
   /** True where the branch itself turns back. */
   readonly fold?: boolean;
+  /** The files below and above, where matrices are interpolated between numbered files. */
+  readonly between?: readonly [string, string];
+  /** The file, where the event happens at a listed value. */
+  readonly file?: string;
 }
 
 export interface SweepResult extends StudyResult {
@@ -62,6 +67,8 @@ export interface SweepResult extends StudyResult {
     readonly events: readonly { readonly at: number; readonly words: string }[];
   };
   readonly chart?: ZeroChart;
+  /** Where the matrices are given by numbered files: what was found at each. */
+  readonly files?: FileTable;
   readonly ends?: readonly string[];
 }
 
@@ -75,15 +82,18 @@ export interface SweepOptions {
 /** Studies a declaration along its range. Throws UsageError without a range, and the errors of `check`. */
 export async function sweepResult(declaration: Declaration, options: SweepOptions = {}): Promise<SweepResult> {
   const tell = options.progress ?? (() => {});
-  const family = sweepFamily(declaration);
+  const files = fileSweep(declaration);
+  const family = files?.family ?? sweepFamily(declaration);
   tell(0.1);
-  const curve = sweepCurve(family);
-  const blocks = blockEvaluator(family);
-  const place = locator(family, curve);
-  const zeros = family.rational === undefined ? zerosOnCurve(family, curve, blocks) : zerosOfFamily(family, blocks);
+  const curve = files?.curve ?? sweepCurve(family);
+  const blocks = files?.blocks ?? blockEvaluator(family);
+  const place = files?.place ?? locator(family, curve);
+  const zeros = files?.zeros ?? (family.rational === undefined ? zerosOnCurve(family, curve, blocks) : zerosOfFamily(family, blocks));
   tell(0.3);
-  const formulas = await thresholdFormulas(family, [...new Set(zeros.zeros.flatMap((z) => z.components))]);
+  const formulas =
+    files === undefined ? await thresholdFormulas(family, [...new Set(zeros.zeros.flatMap((z) => z.components))]) : new Map();
   const crossings = crossingsOf(family, zeros, place, blocks).map((c, k): Crossing => {
+    if (files !== undefined) return { ...c, ...files.named(c, zeros.zeros[k]!) };
     const near = (f: { readonly value: number }) => Math.abs(f.value - c.value) <= 1e-12 * Math.max(1, Math.abs(c.value));
     const found = formulas.get(zeros.zeros[k]!.components[0]!)?.find(near);
     return found === undefined || found.text === c.exact ? c : { ...c, formula: found.text };
@@ -111,6 +121,7 @@ export async function sweepResult(declaration: Declaration, options: SweepOption
         ...collisions.map((c) => ({ at: c.at, words: `${c.components.join(' and ')} ${c.motion === 'passes' ? 'pass' : 'collide'}` })),
       ],
     },
+    ...(files === undefined ? {} : { files: files.table(tracks) }),
     ...(chart === undefined ? {} : { chart }),
     ...(curve.ends.length === 0 ? {} : { ends: curve.ends }),
   };

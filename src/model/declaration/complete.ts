@@ -2,7 +2,7 @@
 import { InputError } from '../../errors/index.ts';
 import type { Declaration } from './declaration.ts';
 import { didYouMean, listed } from './nearest.ts';
-import { usedNames } from './texts.ts';
+import { numberedFamilies, usedNames } from './texts.ts';
 
 /** A declaration whose `unset` and `parameterCount` are still to be found. */
 export type Draft = Omit<Declaration, 'unset' | 'parameterCount'> & {
@@ -40,6 +40,20 @@ function assertDistinct(draft: Draft): void {
   claim(draft.define.keys(), 'a definition');
 }
 
+/** The parameter of numbered files is declared: a slip in its name must not make a second parameter. */
+function assertNumbered(draft: Draft): void {
+  const declared = new Set([...draft.parameters.keys(), ...draft.empty, ...draft.vary]);
+  for (const { parameter, where } of numberedFamilies(draft.energy))
+    if (!declared.has(parameter))
+      throw new InputError(`${where} has files numbered by ${parameter}, which is no parameter.${didYouMean(parameter, declared)}`, {
+        file: sourceLabel(draft.source),
+        key: `${where}.parameter`,
+        value: parameter,
+        expected: declared.size === 0 ? 'a name under parameters or vary' : `one of ${listed(declared)}`,
+        next: `add vary: [${parameter}], or a value under parameters`,
+      });
+}
+
 /**
  * Checks the draft as a whole and completes it. A name in an expression that is nothing declared becomes a
  * parameter without a value: commands that need values ask for it. Throws InputError on clashing names and on
@@ -47,6 +61,7 @@ function assertDistinct(draft: Draft): void {
  */
 export function complete(draft: Draft): Declaration {
   assertDistinct(draft);
+  assertNumbered(draft);
   const phase = new Set([...draft.coordinates, ...draft.momenta]);
   const used = usedNames(draft);
   const known = new Set([...draft.parameters.keys(), ...draft.empty]);

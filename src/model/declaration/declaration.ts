@@ -5,12 +5,31 @@
  */
 import type { MatrixText } from '../matrix-file/matrix-text.ts';
 
-/** A matrix that is constant or affine in parameters: constant + Σ name · terms[name]. All of one size. */
+/** One file of a family and the value of the parameter it belongs to, an integer or a fraction as text. */
+export interface NumberedFile {
+  readonly value: string;
+  /** `source` is the path as typed. */
+  readonly matrix: MatrixText;
+}
+
+/** A matrix at some values of a parameter, each from a file; between them it is interpolated, piece by piece linearly. */
+export interface NumberedFiles {
+  readonly parameter: string;
+  /** Ascending in value, at least two, of one size. */
+  readonly nodes: readonly NumberedFile[];
+  readonly where: string;
+}
+
+/**
+ * A matrix that is constant or affine in parameters: constant + Σ name · terms[name]; or given by numbered files, then
+ * without constant and terms. All of one size.
+ */
 export interface MatrixFamily {
   readonly rows: number;
   readonly cols: number;
   readonly constant?: MatrixText;
   readonly terms: ReadonlyMap<string, MatrixText>;
+  readonly files?: NumberedFiles;
   readonly where: string;
 }
 
@@ -26,8 +45,8 @@ export interface NetworkDeclaration {
 export type EnergyDeclaration =
   | { readonly kind: 'hamiltonian'; readonly text: string }
   | { readonly kind: 'quadratic'; readonly text: string }
-  /** S with H = ½ xᵀSx in the order coordinates, momenta. */
-  | { readonly kind: 'hessian'; readonly matrix: MatrixText }
+  /** S with H = ½ xᵀSx in the order coordinates, momenta; `matrix` is the first of `files` where there are some. */
+  | { readonly kind: 'hessian'; readonly matrix: MatrixText; readonly files?: NumberedFiles }
   /** M q″ + G q′ + K q = 0. */
   | { readonly kind: 'mechanical'; readonly mass: MatrixFamily; readonly gyroscopic?: MatrixFamily; readonly stiffness: MatrixFamily }
   | ({ readonly kind: 'network' } & NetworkDeclaration)

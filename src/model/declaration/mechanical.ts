@@ -1,14 +1,21 @@
 /**
  * M q″ + G q′ + K q = 0 from the keys mass, gyroscopic, stiffness, each a matrix, a file, or affine in parameters:
- * {constant: K0.mtx, c: K1.mtx} is K0 + c·K1.
+ * {constant: K0.mtx, c: K1.mtx} is K0 + c·K1. Or by numbered files, see numbered-files.ts.
  */
 import type { MatrixText } from '../matrix-file/index.ts';
 import type { EnergyDeclaration, MatrixFamily } from './declaration.ts';
 import { assertName } from './keys.ts';
 import { matrixOf } from './matrix-value.ts';
+import { numberedFilesOf, numberedNode, type Parity } from './numbered-files.ts';
 import { refuse, type YamlMap, type YamlNode } from './yaml-reader.ts';
 
-function familyOf(node: YamlNode, folder: string): MatrixFamily {
+function familyOf(node: YamlNode, folder: string, parity: Parity): MatrixFamily {
+  const numbered = numberedNode(node);
+  if (numbered !== undefined) {
+    const files = numberedFilesOf(numbered, folder, parity);
+    const { rows, cols } = files.nodes[0]!.matrix;
+    return { rows, cols, terms: new Map(), files, where: node.key };
+  }
   const terms = new Map<string, MatrixText>();
   let constant: MatrixText | undefined;
   let size: MatrixText | undefined;
@@ -51,9 +58,9 @@ export function mechanicalOf(top: YamlMap, folder: string): EnergyDeclaration & 
     throw refuse(present, `${present.key} is given without stiffness`, 'mass and stiffness', 'add stiffness: [[…]]');
   const energy = {
     kind: 'mechanical' as const,
-    mass: familyOf(mass, folder),
-    ...(gyroscopic === undefined ? {} : { gyroscopic: familyOf(gyroscopic, folder) }),
-    stiffness: familyOf(stiffness, folder),
+    mass: familyOf(mass, folder, 1),
+    ...(gyroscopic === undefined ? {} : { gyroscopic: familyOf(gyroscopic, folder, -1) }),
+    stiffness: familyOf(stiffness, folder, 1),
   };
   for (const [node, family] of [
     [gyroscopic, energy.gyroscopic],

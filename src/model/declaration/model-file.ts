@@ -9,6 +9,7 @@ import { matrixOf } from './matrix-value.ts';
 import { mechanicalOf } from './mechanical.ts';
 import { momentumOf, namesIn, numberedNames, pairedNames } from './names.ts';
 import { networkOf } from './network.ts';
+import { numberedFilesOf, numberedNode } from './numbered-files.ts';
 import { symmetryOf } from './symmetry.ts';
 import { assertPlainText, MODEL_BYTES, readTextFile } from './text-file.ts';
 import { readYaml, refuse, type YamlMap, type YamlNode } from './yaml-reader.ts';
@@ -58,7 +59,9 @@ function energyOf(top: YamlMap, folder: string): EnergyDeclaration {
   if (network !== undefined) return networkOf(network);
   if (quadratic === undefined) return sources.length === 0 ? { kind: 'none' } : mechanicalOf(top, folder);
   if (quadratic.kind === 'text' && !namesMatrixFile(quadratic.text)) return { kind: 'quadratic', text: expressionOf(quadratic) };
-  const matrix = matrixOf(quadratic, folder);
+  const numbered = numberedNode(quadratic);
+  const files = numbered === undefined ? undefined : numberedFilesOf(numbered, folder, 1);
+  const matrix = files?.nodes[0]?.matrix ?? matrixOf(quadratic, folder);
   if (matrix.rows !== matrix.cols || matrix.rows % 2 !== 0) {
     throw refuse(
       quadratic,
@@ -67,7 +70,7 @@ function energyOf(top: YamlMap, folder: string): EnergyDeclaration {
       'correct the matrix',
     );
   }
-  return { kind: 'hessian', matrix };
+  return { kind: 'hessian', matrix, ...(files === undefined ? {} : { files }) };
 }
 
 /** Degrees of freedom that the energy itself fixes; undefined for expressions. */

@@ -1,6 +1,6 @@
 /** All expression texts of a declaration with the keys they stand under, and the names they use. */
 import type { MatrixText } from '../matrix-file/index.ts';
-import type { Declaration, MatrixFamily } from './declaration.ts';
+import type { Declaration, EnergyDeclaration, MatrixFamily, NumberedFiles } from './declaration.ts';
 import { namesIn } from './names.ts';
 
 type Parts = Pick<Declaration, 'energy' | 'define' | 'parameters' | 'equilibrium' | 'generators' | 'neutral' | 'range'> & {
@@ -14,6 +14,7 @@ function* ofMatrix(matrix: MatrixText): Generator<string> {
 
 function* ofFamily(family: MatrixFamily | undefined): Generator<string> {
   if (family === undefined) return;
+  if (family.files !== undefined) yield family.files.parameter;
   if (family.constant !== undefined) yield* ofMatrix(family.constant);
   for (const [name, matrix] of family.terms) {
     yield name;
@@ -21,12 +22,21 @@ function* ofFamily(family: MatrixFamily | undefined): Generator<string> {
   }
 }
 
+/** The parts of an energy that numbered files give. */
+export function numberedFamilies(energy: EnergyDeclaration): NumberedFiles[] {
+  const families =
+    energy.kind === 'hessian' ? [energy] : energy.kind === 'mechanical' ? [energy.mass, energy.gyroscopic, energy.stiffness] : [];
+  return families.flatMap((f) => (f?.files === undefined ? [] : [f.files]));
+}
+
 /** Every expression text of a declaration. */
 export function* expressionTexts(parts: Parts): Generator<string> {
   const { energy } = parts;
   if (energy.kind === 'hamiltonian' || energy.kind === 'quadratic') yield energy.text;
-  else if (energy.kind === 'hessian') yield* ofMatrix(energy.matrix);
-  else if (energy.kind === 'mechanical') {
+  else if (energy.kind === 'hessian') {
+    if (energy.files === undefined) yield* ofMatrix(energy.matrix);
+    else yield energy.files.parameter;
+  } else if (energy.kind === 'mechanical') {
     yield* ofFamily(energy.mass);
     yield* ofFamily(energy.gyroscopic);
     yield* ofFamily(energy.stiffness);
