@@ -66,13 +66,29 @@ describe('sections', () => {
   });
 
   it('cut lists that nobody reads to the end, and say so', () => {
-    const text = words(renderText(largeInvariants));
-    expect(text).toMatch(/200 terms, in the JSON result/);
+    const long = { name: 'K1', degree: 12, polynomial: Array.from({ length: 200 }, (_, i) => `q${i}^2`).join(' - ') };
+    expect(words(renderText({ ...largeInvariants, generators: [long] }))).toMatch(/K1 12 200 terms, in the JSON result/);
     const generators = Array.from({ length: 400 }, (_, i) => ({ name: `I${i}`, degree: 2, polynomial: `${'q1^2 + '.repeat(9)}q${i}^2` }));
     expect(words(renderText({ ...largeInvariants, generators }))).toMatch(/[0-9]+ further generators are left to the JSON result/);
     expect(within([5, 5, 5], (x) => x, 11)).toEqual([5, 5]);
     expect(within([50], (x) => x, 11)).toEqual([50]);
     expect(within([], () => 1, 0)).toEqual([]);
+  });
+
+  it('keep the generators that H is made of', () => {
+    const generators = Array.from({ length: 90 }, (_, i) => ({ name: `I${i + 1}`, degree: 2, polynomial: `q${i + 1}^2` }));
+    const text = words(
+      renderText({ ...largeInvariants, generators, hamiltonian: { expression: 'I1/2 + I77', remainder: '0', degree: 2 } }),
+    );
+    expect(text).toContain('I77 2 q77^2');
+    expect(text).not.toContain('q76^2');
+    expect(text).toContain('49 further generators are left to the JSON result');
+  });
+
+  it('ask nothing of H where none is studied', () => {
+    const text = renderText({ ...ringCodim, command: 'events', zero: undefined, verdict: undefined, events: [] } as never);
+    expect(text).not.toMatch(/keeps H|Gradient/);
+    expect(renderText(ringCodim)).toMatch(/keeps H/);
   });
 
   it('tell what a sweep saw against what was predicted', () => {

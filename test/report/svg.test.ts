@@ -30,6 +30,27 @@ describe('pictures', () => {
     expect(await renderSvg(ringCheck)).toBeNull();
   });
 
+  it('of eigenvalues along a branch that turns back follow the branch, not the parameter', async () => {
+    const there = [0, 0.5, 0.9].map((at) => ({ at, re: 0, im: Math.sqrt(1 - at) }));
+    const back = [0.9, 0.5, 0].map((at) => ({ at, re: Math.sqrt(1 - at), im: 0 }));
+    const scene = await drawFigure({
+      kind: 'eigenvalues',
+      parameter: 'v',
+      paths: [{ component: 'A', points: [...there, ...back] }],
+      events: [],
+    });
+    const lines = scene.shapes.flatMap((shape) =>
+      shape.kind === 'path' && shape.title === 'A' ? [shape.points.map((point) => point[0])] : [],
+    );
+    const [frequency, rate] = lines;
+    expect(frequency!.length).toBeGreaterThanOrEqual(3);
+    for (const [xs, way] of [
+      [frequency!, 1],
+      [rate!, -1],
+    ] as const)
+      for (const [i, x] of xs.slice(1).entries()) expect(way * (x - xs[i]!)).toBeGreaterThanOrEqual(0);
+  });
+
   it('of blocks: dimension over commuting algebra many equal squares for each component', async () => {
     const figure: FigureData = {
       kind: 'blocks',

@@ -4,10 +4,11 @@ import { type Formula, formula, list, relation, sign } from '../mathematics/inde
 import type { ReportView } from '../view.ts';
 import { count, integer, within } from './words.ts';
 
-/** Signs of polynomials in the lists of a document; a reader wants no more. */
+/** Signs of polynomials in the lists of a document, and entries; a reader wants no more. */
 const GENERATORS = 12_000;
 const RELATIONS = 5000;
 const FIELDS = 8000;
+const ENTRIES = 40;
 /** A longer expression is left to the JSON result. */
 const EXPRESSION = 8000;
 /** A longer polynomial is not printed in a table: its terms are counted. */
@@ -87,7 +88,10 @@ export function invariantsSection(view: ReportView): Section | null {
         view.proof === undefined || view.proof === '' ? '.' : `: ${view.proof}`,
       ],
     });
-    const shown = within(generators, (g) => Math.min(CELL, g.polynomial.length), GENERATORS);
+    const first = new Set(within(generators.slice(0, ENTRIES), (g) => Math.min(CELL, g.polynomial.length), GENERATORS));
+    // and those that H is made of
+    const used = new Set((view.hamiltonian?.expression ?? '').match(/[A-Za-z_]\w*/g) ?? []);
+    const shown = generators.filter((g) => first.has(g) || used.has(g.name));
     const readable = shown.some((g) => g.readable !== undefined);
     blocks.push({
       kind: 'table',
@@ -104,7 +108,7 @@ export function invariantsSection(view: ReportView): Section | null {
   }
   if (view.relations !== undefined && view.relations.length > 0) {
     blocks.push({ kind: 'paragraph', line: [`${count(view.relations.length, 'relation')} among them:`] });
-    const shown = within(view.relations, (r) => r.length, RELATIONS);
+    const shown = within(view.relations.slice(0, ENTRIES), (r) => r.length, RELATIONS);
     blocks.push({ kind: 'list', items: shown.map((r) => [math(equation(r))]) }, ...rest(view.relations.length - shown.length, 'relation'));
   }
   if (view.equivariants !== undefined) {
@@ -114,7 +118,7 @@ export function invariantsSection(view: ReportView): Section | null {
     });
     blocks.push(...seriesBlocks('E(t)', 'E(t)', view.equivariants));
     const all = view.equivariants.generators ?? [];
-    const fields = within(all, (f) => Math.min(CELL, f.field.join().length), FIELDS);
+    const fields = within(all.slice(0, ENTRIES), (f) => Math.min(CELL, f.field.join().length), FIELDS);
     if (fields.length > 0)
       blocks.push({
         kind: 'table',

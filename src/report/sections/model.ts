@@ -22,7 +22,7 @@ export function modelSection(view: ReportView): Section | null {
       line: joined(parameters.map(([name, v]) => math(v === null ? formula(name) : relation(formula(name), '=', formula(v))))),
     });
   if (model.vary.length > 0) rows.push({ name: 'Varied', line: joined(model.vary.map((name) => math(formula(name)))) });
-  if (view.equilibrium !== undefined) {
+  if (view.equilibrium !== undefined && !withoutEnergy(view)) {
     const point = Object.entries(view.equilibrium.point ?? {}).filter(([, v]) => v !== 0 && v !== '0');
     const where: Line =
       point.length === 0
@@ -55,6 +55,9 @@ export function modelSection(view: ReportView): Section | null {
   blocks.push({ kind: 'facts', rows });
   return { id: 'model', title: 'Model', blocks };
 }
+
+/** Which events an action allows is asked of no particular H. */
+const withoutEnergy = (view: ReportView): boolean => view.commands.length > 0 && view.commands.every((name) => name === 'events');
 
 /** Group and generators, and what each of them keeps. */
 export function symmetrySection(view: ReportView): Section | null {
@@ -108,14 +111,14 @@ export function symmetrySection(view: ReportView): Section | null {
         { head: ['generator'], align: 'left' },
         { head: ['time'], align: 'left' },
         { head: ['(anti)symplectic'], align: 'left' },
-        { head: ['keeps ', math(formula('H'))], align: 'left' },
+        ...(withoutEnergy(view) ? [] : [{ head: ['keeps ', math(formula('H'))], align: 'left' as const }]),
         ...(reasons ? [{ head: ['what fails'], align: 'left' as const }] : []),
       ],
       rows: symmetry.generators.map((g) => [
         [math(formula(g.name))],
         [g.reversing ? 'reversed' : 'kept'],
         [g.symplectic ? 'yes' : 'no'],
-        [g.invariant ? 'yes' : 'no'],
+        ...(withoutEnergy(view) ? [] : [[g.invariant ? 'yes' : 'no']]),
         ...(reasons ? [[g.reason ?? '–']] : []),
       ]),
     });

@@ -67,8 +67,8 @@ export async function drawEigenvalues(given: EigenvalueFigure): Promise<Scene> {
     // straight segments between the computed values: nothing is smoothed that was not computed
     if (points.length > 1) shapes.push(line(points, { color: colorOf(i), width: 1.5, dash: dashOf(i) }, component));
   };
-  const sorted = figure.paths.map((p) => ({ ...p, points: [...p.points].sort((a, b) => a.at - b.at) }));
-  for (const path of sorted) {
+  // points in the order of the curve: where it turns back the parameter does too
+  for (const path of figure.paths) {
     for (const run of runs(path.points, (p) => Math.abs(p.im) > 1e-12 * (1 + top)))
       trace(
         run.map((p) => [at.scale(p.at), up.scale(Math.abs(p.im))]),
@@ -80,7 +80,7 @@ export async function drawEigenvalues(given: EigenvalueFigure): Promise<Scene> {
         path.component,
       );
   }
-  for (const path of sorted)
+  for (const path of figure.paths)
     shapes.push(
       ...signMarks(path, names.indexOf(path.component), (p) => [at.scale(p.at), up.scale(p.im !== 0 ? Math.abs(p.im) : -Math.abs(p.re))]),
     );
@@ -105,7 +105,7 @@ export async function drawEigenvalues(given: EigenvalueFigure): Promise<Scene> {
       { color: 'faint', width: 0.7 },
     ),
   );
-  for (const path of sorted)
+  for (const path of figure.paths)
     for (const [sx, sy] of [
       [1, 1],
       [1, -1],
@@ -116,7 +116,7 @@ export async function drawEigenvalues(given: EigenvalueFigure): Promise<Scene> {
         throughZero(path.points).map((p) => [re.scale(sx * Math.abs(p.re)), im.scale(sy * Math.abs(p.im))]),
         path.component,
       );
-  for (const path of sorted) {
+  for (const path of figure.paths) {
     const end = path.points.at(-1);
     if (end !== undefined)
       for (const [sx, sy] of [
