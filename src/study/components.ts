@@ -26,7 +26,14 @@ import { partnersOf } from './partners.ts';
 import { isExact, type NotExact, prepare } from './prepare.ts';
 import type { ClassSummary, ComponentSummary, ComponentsResult, StudyResult, Value } from './result.ts';
 import { CAUTION, componentSummaries, generatorSummaries, groupSummary, linearText, modelSummary } from './summary.ts';
-import { embedHessian, prepareSymbolic, requireSymbolicHolds, type SymbolicModel } from './symbolic.ts';
+import {
+  type Coefficient,
+  embedHessian,
+  prepareSymbolic,
+  requireSymbolicHolds,
+  type SymbolicHessian,
+  type SymbolicModel,
+} from './symbolic.ts';
 
 /** Blocks larger than this are left out of the result. */
 export const BLOCK_LIMIT = 40;
@@ -52,6 +59,21 @@ export interface Blocks {
   readonly l?: readonly (readonly Value[])[];
 }
 
+/** S on the columns of a basis; each is asked for twice. */
+function restriction(hessian: SymbolicHessian): (basis: Matrix<Algebraic>) => Matrix<Coefficient> {
+  const f = hessian.coefficients;
+  const known = new WeakMap<Matrix<Algebraic>, Matrix<Coefficient>>();
+  return (basis) => {
+    let s = known.get(basis);
+    if (s === undefined) {
+      const b = mapMatrix(basis, f, (x) => f.fromConstant(x));
+      s = multiply(transpose(b), sparseTimes(hessian.matrix, b));
+      known.set(basis, s);
+    }
+    return s;
+  };
+}
+
 /** Throws the errors of `check` where the model is not what it claims. */
 export async function structureOf(declaration: Declaration): Promise<Structure> {
   const model = prepareSymbolic(declaration);
@@ -69,6 +91,7 @@ export async function structureOf(declaration: Declaration): Promise<Structure> 
     ),
   );
   const hessian = model.hessian === undefined ? undefined : embedHessian(model.hessian, model.field, action.field);
+  const restricted = hessian === undefined ? undefined : restriction(hessian);
   return {
     head: symbolicHead(model, action),
     action,
@@ -76,16 +99,17 @@ export async function structureOf(declaration: Declaration): Promise<Structure> 
     names: model.quantities.names,
     symbols: hessian?.symbols ?? [],
     blocks: (basis, form) => {
-      if (hessian === undefined) return undefined;
+      if (hessian === undefined || restricted === undefined) return undefined;
       const f = hessian.coefficients;
-      const b = mapMatrix(basis, f, (x) => f.fromConstant(x));
-      const s = multiply(transpose(b), sparseTimes(hessian.matrix, b));
+      const s = restricted(basis);
       const texts = (m: typeof s) => rowsOf(m, (x) => f.format(x));
       if (form === undefined) return { s: texts(s) };
       const j = mapMatrix(poisson(form), f, (x) => f.fromConstant(x));
       return { s: texts(s), l: texts(multiply(j, s)) };
     },
-    ...(hessian === undefined ? {} : { determinant: (basis, cut) => determinantOf(hessian, model, basis, cut) }),
+    ...(hessian === undefined || restricted === undefined
+      ? {}
+      : { determinant: (basis, cut) => determinantOf(hessian, model, restricted(basis), cut) }),
   };
 }
 

@@ -1,31 +1,29 @@
 /** The determinant of a block of S for the result: in factors, with its zeros in the first parameter that varies. */
 import type { Algebraic, RealField } from '../field/index.ts';
-import { type Matrix, mapMatrix, multiply, sparseTimes, transpose } from '../linear/index.ts';
+import type { Matrix } from '../linear/index.ts';
 import { formatFactored, powersFactored } from './factored.ts';
 import { determinantParts } from './factored-determinant.ts';
 import { type FactorHelper, nerdamerFactors } from './factored-nerdamer.ts';
 import type { Factor, Ring } from './factored-squares.ts';
 import { determinantThresholds } from './factored-thresholds.ts';
 import type { ComponentSummary } from './result.ts';
-import type { SymbolicHessian, SymbolicModel } from './symbolic.ts';
+import type { Coefficient, SymbolicHessian, SymbolicModel } from './symbolic.ts';
 
 export type BlockDeterminant = Pick<ComponentSummary, 'determinant' | 'thresholds'>;
 
 /**
- * The determinant of S on the columns of a basis, which splits into `cut` alike blocks, so that it is a power of that
- * order. Nothing where it is too large; no thresholds where no parameter is a symbol.
+ * The determinant of S on a space that splits into `cut` alike ones, so that it is a power of that order. Nothing where it is too large; no thresholds where no parameter is a symbol.
  */
 export async function determinantOf(
   hessian: SymbolicHessian,
   model: SymbolicModel,
-  basis: Matrix<Algebraic>,
+  block: Matrix<Coefficient>,
   cut: number,
   helper: FactorHelper = nerdamerFactors,
 ): Promise<BlockDeterminant> {
   const f = hessian.coefficients;
   const { ring } = f;
-  const b = mapMatrix(basis, f, (x) => f.fromConstant(x));
-  const parts = determinantParts(multiply(transpose(b), sparseTimes(hessian.matrix, b)), f);
+  const parts = determinantParts(block, f);
   if (parts === undefined) return {};
   const parameter = thresholdParameter(hessian, model);
   if (parts.some((p) => ring.isZero(p.polynomial))) return { determinant: '0', ...(parameter === undefined ? {} : { thresholds: [] }) };

@@ -10,7 +10,7 @@ import type { Factor, Poly, Ring } from './factored-squares.ts';
 import { polynomialDeterminant } from './thresholds.ts';
 
 /** Rows that are coupled: at most so many with no symbol or one, or with several; and terms of one polynomial on the way. */
-const ROWS_ONE = 16;
+const ROWS_ONE = 12;
 const ROWS_SEVERAL = 8;
 const TERMS = 400;
 
