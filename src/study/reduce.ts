@@ -6,6 +6,7 @@ import type { Declaration } from '../model/declaration/index.ts';
 import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
 import type { LinearStudy } from './linear-study.ts';
 import { type Reduction, reductionOf, symbolicReductionOf } from './reduction.ts';
+import { type MomentaSummary, momentaSummary } from './reduction-neutral.ts';
 import type { StudyResult } from './result.ts';
 import { groupSummary, head, linearText } from './summary.ts';
 
@@ -36,6 +37,8 @@ export interface ReducedSummary {
 
 export interface ReduceResult extends StudyResult {
   readonly reduced: ReducedSummary;
+  /** Where a continuous symmetry moves the equilibrium. */
+  readonly neutral?: MomentaSummary;
 }
 
 /** Throws UsageError where nothing is at zero. */
@@ -44,6 +47,7 @@ export function reduceResult(study: LinearStudy, parameters: number, degree?: nu
   return {
     ...head('reduce', study.prepared, groupSummary(study.action, study.prepared)),
     reduced: reducedSummary(study, reduction, parameters),
+    ...neutralPart(study, reduction),
   };
 }
 
@@ -61,7 +65,12 @@ export function symbolicReduceResult(study: LinearStudy, symbols: readonly strin
   const reduction = symbolicReductionOf(study, symbols, degree);
   const whole = head('reduce', study.prepared, groupSummary(study.action, study.prepared));
   const shown = Object.fromEntries(Object.entries(whole.model.parameters).map(([k, v]) => [k, symbols.includes(k) ? null : v]));
-  return { ...whole, model: { ...whole.model, parameters: shown }, reduced: reducedSummary(study, reduction, parameters) };
+  return {
+    ...whole,
+    model: { ...whole.model, parameters: shown },
+    reduced: reducedSummary(study, reduction, parameters),
+    ...neutralPart(study, reduction),
+  };
 }
 
 type Coefficient = RationalFunction<Algebraic>;
@@ -104,6 +113,9 @@ function overParameters<C>(reduction: Reduction<C>): {
   return { ring, h: ring.fromTerms(terms), symbols };
 }
 
+const neutralPart = <C>(study: LinearStudy, { fixed }: Reduction<C>): Pick<ReduceResult, 'neutral'> =>
+  fixed === undefined ? {} : { neutral: momentaSummary(study, fixed) };
+
 export function reducedSummary<C>(study: LinearStudy, reduction: Reduction<C>, parameters: number): ReducedSummary {
   const { analysis, generators, space, field, ring, germ } = reduction;
   const { ring: wide, h, symbols } = overParameters(reduction);
@@ -126,10 +138,15 @@ export function reducedSummary<C>(study: LinearStudy, reduction: Reduction<C>, p
       .map((g) => ({ name: g.name, polynomial: generators.spaces.ring.format(g.polynomial) })),
     ...(analysis.conditions === null || analysis.conditions.length === 0 ? {} : { conditions: analysis.conditions }),
     ...(analysis.moduliTerms.length === 0 ? {} : { moduliTerms: analysis.moduliTerms }),
-    because:
-      analysis.stratumCodimension !== null && analysis.stratumCodimension > parameters
-        ? `${analysis.because}; terms that the declared symmetry allows are missing, which a symmetry that was not declared would explain (symcodim check --find looks for one)`
-        : analysis.because,
+    because: [
+      analysis.because,
+      ...(analysis.stratumCodimension !== null && analysis.stratumCodimension > parameters
+        ? [
+            'terms that the declared symmetry allows are missing, which a symmetry that was not declared would explain (symcodim check --find looks for one)',
+          ]
+        : []),
+      ...(reduction.fixed === undefined ? [] : [momentaSummary(study, reduction.fixed).because]),
+    ].join('; '),
     polynomial: ring.format(germ),
     ...motion,
     generic: analysis.stratumCodimension === null ? null : analysis.stratumCodimension <= parameters,

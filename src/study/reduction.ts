@@ -14,6 +14,15 @@ import { analyseGerm, type Germ } from '../normalform/germ.ts';
 import { type ReducedHamiltonian, reduceToKernel } from '../normalform/splitting.ts';
 import { factorsOf, type Polynomial, PolynomialRing, type RationalFunction, RationalFunctionField } from '../polynomial/index.ts';
 import type { LinearStudy } from './linear-study.ts';
+import {
+  type FixedMomenta,
+  fixedMomenta,
+  properSlice,
+  requireSymbolicSymmetry,
+  requireTreatable,
+  sliceKernelForm,
+  withMultipliers,
+} from './reduction-neutral.ts';
 
 /** Degrees tried until the germ is determined, where none is asked for. */
 const DEGREES = [4, 6, 8, 10];
@@ -42,6 +51,8 @@ export interface Reduction<C> {
   readonly form: Matrix<Algebraic>;
   /** D³ and higher are complete because H is a polynomial of at most this degree. */
   readonly complete: boolean;
+  /** Beside a continuous symmetry: what is kept fixed, and the multipliers. */
+  readonly fixed?: FixedMomenta;
 }
 
 /** Square roots of numbers such as 5 - sqrt(5), which are multiples of cosines. */
@@ -59,12 +70,12 @@ function rootsByTrigonometry(from: RealField, squares: readonly Algebraic[]): { 
 }
 
 /** Everything of a reduction but its coefficients. */
-type Frame = Pick<Reduction<Algebraic>, 'space' | 'field' | 'action' | 'parameters' | 'form'> & {
+type Frame = Pick<Reduction<Algebraic>, 'space' | 'field' | 'action' | 'parameters' | 'form' | 'fixed'> & {
   readonly names: readonly string[];
   readonly reserved: readonly string[];
 };
 
-function frameOf(study: LinearStudy): Frame {
+function frameOf(study: LinearStudy, symbols: readonly string[] = []): Frame {
   const { prepared, action: linear, components, event } = study;
   const source = prepared.declaration.source;
   if (event.dimension === 0)
@@ -72,20 +83,16 @@ function frameOf(study: LinearStudy): Frame {
       file: source,
       next: 'move a parameter to a crossing (symcodim sweep finds them), or use reduce --elliptic',
     });
-  if (study.slicing !== undefined && study.slicing.slice.neutral > 0)
-    throw new LimitError('a reduction beside neutral directions is not done: the kernel contains directions along the group orbit', {
-      file: source,
-      key: 'neutral',
-      expected: 'a model without continuous symmetries that move the equilibrium',
-      next: 'fix the conserved momenta in the model, or leave `neutral` out to reduce on the whole kernel',
-    });
+  const slice = properSlice(study);
+  if (slice !== undefined) requireTreatable(study, slice, symbols);
   if (linear.dimension > REDUCTION_DIMENSION_LIMIT)
     throw new LimitError(`a reduction in ${linear.dimension} coordinates is out of reach`, {
       file: source,
       expected: `at most ${REDUCTION_DIMENSION_LIMIT} coordinates`,
     });
   const hessian = embedSparse(prepared.local.hessian, prepared.field, linear.field);
-  const space = invariantBasis(linear, components, dense(hessian), rootsByTrigonometry);
+  const own = slice === undefined ? dense(hessian) : sliceKernelForm(slice, hessian);
+  const space = invariantBasis(linear, components, own, rootsByTrigonometry);
   const field = space.action.field;
   const k = space.basis.cols;
   const taken = [...prepared.quantities.names, ...prepared.declaration.parameters.keys()];
@@ -111,6 +118,7 @@ function frameOf(study: LinearStudy): Frame {
     form: congruence(space.basis, dense(space.action.form)),
     names,
     reserved: [...names, ...taken],
+    ...(slice === undefined ? {} : { fixed: fixedMomenta(study, slice, space, hessian) }),
   };
 }
 
@@ -124,13 +132,17 @@ interface Expansion<C> {
 function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: number) => Expansion<C>, degree?: number): Reduction<C> {
   const { names, reserved, ...rest } = frame;
   const { action } = frame;
-  const n = study.prepared.quantities.names.length;
+  const { fixed } = frame;
+  const n = study.prepared.quantities.names.length + (fixed === undefined ? 0 : fixed.momenta + fixed.gauge);
   const own = polynomialDegree(study.prepared.hamiltonian, new Set(study.prepared.quantities.names));
   let generators = minimalGenerators(action, { reserved });
   const degrees = degree !== undefined ? [degree] : names.length >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
   for (const d of degrees) {
     if (!generators.complete && generators.upTo < d) generators = minimalGenerators(action, { reserved, degree: d });
-    const { ring: wide, polynomial, embed } = expand(d);
+    const expansion = expand(d);
+    const { embed } = expansion;
+    const { ring: wide, polynomial } =
+      fixed === undefined ? expansion : withMultipliers(fixed, expansion.ring, expansion.polynomial, embed);
     const part = (p: Polynomial<C>, r: PolynomialRing<C>, keep: (variables: readonly number[]) => boolean) =>
       r.fromTerms(p.monomials.flatMap((m, i) => (keep(factorsOf(m).map(([v]) => v)) ? [[m, p.coefficients[i]!] as [string, C]] : [])));
     const move = (m: Matrix<Algebraic>): Matrix<C> => ({ field: wide.field, rows: m.rows, cols: m.cols, data: m.data.map(embed) });
@@ -139,8 +151,8 @@ function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: 
       dimension: n,
       // terms in the parameters alone do not matter
       hamiltonian: part(polynomial, wide, (variables) => variables.some((v) => v < n)),
-      kernel: move(frame.space.basis),
-      complement: move(frame.space.complement),
+      kernel: move(fixed?.kernel ?? frame.space.basis),
+      complement: move(fixed?.complement ?? frame.space.complement),
       degree: d,
       names,
     });
@@ -180,7 +192,7 @@ export function symbolicReductionOf(
   symbols: readonly string[],
   degree?: number,
 ): Reduction<RationalFunction<Algebraic>> {
-  const frame = frameOf(study);
+  const frame = frameOf(study, symbols);
   const { prepared } = study;
   const { quantities, hamiltonian } = prepared;
   const { names, point } = expansionPoint(study, frame);
@@ -196,7 +208,14 @@ export function symbolicReductionOf(
       const embed = (a: Algebraic) => coefficients.fromConstant(a);
       const ring = new PolynomialRing<RationalFunction<Algebraic>>(coefficients, t.ring.variables);
       const polynomial = t.kind === 'symbolic' ? t.polynomial : t.ring.map(t.polynomial, embed, ring);
-      requireKernel(ring, polynomial, frame, symbols, prepared.declaration.source, quantities.names.length);
+      const { fixed } = frame;
+      const file = prepared.declaration.source;
+      if (fixed === undefined) requireKernel(ring, polynomial, frame.space.basis, symbols, file, quantities.names.length);
+      else {
+        requireSymbolicSymmetry(fixed, ring, polynomial, embed, d, file, symbols);
+        const wide = withMultipliers(fixed, ring, polynomial, embed);
+        requireKernel(wide.ring, wide.polynomial, fixed.kernel, symbols, file, fixed.kernel.rows);
+      }
       return { ring, polynomial, embed };
     },
     degree,
@@ -216,7 +235,7 @@ function expansionPoint(study: LinearStudy, frame: Frame): { names: readonly str
 function requireKernel<C>(
   ring: PolynomialRing<C>,
   polynomial: Polynomial<C>,
-  frame: Frame,
+  basis: Matrix<Algebraic>,
   symbols: readonly string[],
   file: string,
   n: number,
@@ -226,11 +245,11 @@ function requireKernel<C>(
   const quadratic = ring.homogeneousPart(polynomial, 2);
   for (let i = 0; i < n; i++) {
     const row = ring.derivative(quadratic, i);
-    for (let c = 0; c < frame.space.basis.cols; c++) {
+    for (let c = 0; c < basis.cols; c++) {
       let sum = f.zero;
       row.monomials.forEach((m, k) => {
         const v = factorsOf(m)[0]![0];
-        if (v < n) sum = f.add(sum, f.mul(row.coefficients[k]!, embed(frame.space.basis.data[v * frame.space.basis.cols + c]!)));
+        if (v < n) sum = f.add(sum, f.mul(row.coefficients[k]!, embed(basis.data[v * basis.cols + c]!)));
       });
       if (!f.isZero(sum))
         throw new InputError(`the kernel of the Hessian depends on ${symbols.join(', ')}`, {
