@@ -5,6 +5,7 @@
 import { InputError } from '../errors/index.ts';
 import { type Algebraic, type Rational, type RealField, rational, rationals } from '../field/index.ts';
 import type { Declaration, EnergyDeclaration, MatrixFamily, NumberedFile, NumberedFiles } from './declaration/declaration.ts';
+import { exactNumber } from './declaration/numbered-files.ts';
 import { numberedFamilies } from './declaration/texts.ts';
 import type { Expression } from './expression/index.ts';
 import type { MatrixText } from './matrix-file/index.ts';
@@ -55,6 +56,9 @@ const orderOf =
 
 /** Where the declared value of a parameter lies among files; two files need no value. */
 function declaredPiece(files: NumberedFiles, declaration: Declaration): number {
+  const text = declaration.parameters.get(files.parameter) ?? '';
+  const typed = exactNumber(text);
+  if (typed !== undefined) return pieceOf(files, (file) => rationals.compare(typed, fileValue(file)), text, declaration.source);
   const { field, values } = readQuantities(declaration);
   const value = values.get(files.parameter);
   if (value === undefined) {

@@ -89,6 +89,24 @@ export interface CrossingView {
   readonly inertiaBefore: InertiaSummary | readonly number[];
   readonly inertiaAfter: InertiaSummary | readonly number[];
   readonly fold?: boolean;
+  /** The numbered files around the event, or the one it happens at. */
+  readonly between?: readonly [string, string];
+  readonly file?: string;
+}
+
+/** What was found at each of the numbered files of a sweep. */
+export interface FilesView {
+  readonly parameter: string;
+  readonly note: string;
+  readonly points: readonly {
+    readonly value: string;
+    readonly files: readonly string[];
+    readonly inertia: InertiaSummary;
+    readonly eigenvalues: readonly {
+      readonly component: string;
+      readonly values: readonly { readonly re: number; readonly im: number }[];
+    }[];
+  }[];
 }
 
 /** Two eigenvalues off zero that meet along the parameter. */
@@ -155,6 +173,7 @@ export interface ReportView {
   readonly crossings?: readonly CrossingView[];
   readonly meetings?: readonly MeetingView[];
   readonly range?: { readonly parameter: string; readonly from: Value; readonly to: Value; readonly steps?: number };
+  readonly files?: FilesView;
   readonly followed?: boolean;
   readonly singular?: readonly string[];
   readonly ends?: readonly string[];

@@ -16,6 +16,8 @@ export interface ModelSummary {
   readonly vary: readonly string[];
   /** H as typed (or how it was given). */
   readonly hamiltonian?: string;
+  /** Where the declared value lies between numbered files: that the matrix is interpolated there. */
+  readonly interpolated?: readonly string[];
 }
 
 export interface GeneratorSummary {

@@ -2,6 +2,7 @@
 
 import type { Action, Components } from '../action/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
+import { interpolationNotes } from '../model/file-family.ts';
 import { energyText, type Prepared, type Stated } from './prepare.ts';
 import type { ComponentSummary, GeneratorSummary, ModelSummary, StudyResult } from './result.ts';
 
@@ -12,6 +13,7 @@ export const CAUTION =
 export function modelSummary(p: Stated): ModelSummary {
   const { declaration, quantities } = p;
   const text = energyText(p);
+  const interpolated = interpolationNotes(declaration);
   return {
     title: declaration.title,
     degreesOfFreedom: declaration.coordinates.length,
@@ -23,6 +25,7 @@ export function modelSummary(p: Stated): ModelSummary {
     ]),
     vary: declaration.vary,
     ...(text === undefined ? {} : { hamiltonian: text }),
+    ...(interpolated.length === 0 ? {} : { interpolated }),
   };
 }
 

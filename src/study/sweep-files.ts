@@ -7,6 +7,7 @@
 import { InputError, NotAnEquilibriumError, NotInvariantError, UsageError } from '../errors/index.ts';
 import { type Rational, rationals } from '../field/index.ts';
 import { largestEntry, numberCombine, numberMatrix } from '../linear/index.ts';
+import { symmetricEigen } from '../linear/spectral.ts';
 import { type Declaration, numberedFamilies } from '../model/declaration/index.ts';
 import { floatingSource } from '../model/energy.ts';
 import { betweenFiles, filesAt, INTERPOLATED, listedValues } from '../model/file-family.ts';
@@ -16,7 +17,7 @@ import type { Tracked } from './sweep-collisions.ts';
 import { type BlocksAt, blockEvaluator, type Curve, type CurvePoint } from './sweep-curve.ts';
 import { exactEvent, floatingEvent, inertiaAt } from './sweep-event.ts';
 import { declarationAt, familyWithEnergy, type Range, readRanges, type SweepFamily, sweepFamily } from './sweep-family.ts';
-import { type FloatingMatrices, floatingMatrices } from './sweep-matrices.ts';
+import { type FloatingMatrices, floatingMatrices, isPiecewiseLinear } from './sweep-matrices.ts';
 import type { BlockEigenvalue } from './sweep-spectrum.ts';
 import { type Zero, type Zeros, zerosOfFamily, zerosOnCurve } from './sweep-zeros.ts';
 
@@ -165,7 +166,7 @@ export function fileSweep(declaration: Declaration): FileSweep | undefined {
   }
   const zeros =
     numeric === undefined
-      ? joinedZeros(exact!.families, exact!.blocks, pieces)
+      ? joinedZeros(exact!, curve, pieces)
       : zerosOnCurve(family, curve, blocks, (j) => (atNode.has(j) ? family.tolerance! : 0));
   const named = (crossing: Seen, zero: Zero): Place => {
     const node = nodes.find(({ j }) => Math.abs(zero.u - j) <= 1e-9);
@@ -330,9 +331,33 @@ function requireHeld(
   }
 }
 
+/** Eigenvalues above this share of S are not zero. */
+const MARGIN = 1e-6;
+
+/**
+ * Whether each component is definite at both ends of a piece, with one sign. Where S is linear in the parameter the
+ * least eigenvalue is concave and the largest convex, so that there is no zero in between.
+ */
+function isDefinite(family: SweepFamily, ends: readonly BlocksAt[]): boolean {
+  return family.adapted.every((_, i) => {
+    const [a, b] = ends.map((at): number => {
+      const m = at.component(i);
+      const { values } = symmetricEigen(m.data, m.rows);
+      const cut = MARGIN * largestEntry(m);
+      return values.every((x) => x > cut) ? 1 : values.every((x) => x < -cut) ? -1 : 0;
+    });
+    return a !== 0 && a === b;
+  });
+}
+
 /** Zeros of all pieces; one that is found from both sides of a file is one. */
-function joinedZeros(families: readonly SweepFamily[], blocks: readonly ((p: CurvePoint) => BlocksAt)[], pieces: readonly Piece[]): Zeros {
-  const found = families.map((family, k) => zerosOfFamily(family, blocks[k]!));
+function joinedZeros({ family: whole, families, blocks }: ExactPieces, curve: Curve, pieces: readonly Piece[]): Zeros {
+  const linear = isPiecewiseLinear(whole.declaration, whole.range.parameter);
+  const found = families.map((family, k): Zeros => {
+    const { start, range } = pieces[k]!;
+    const ends = [start, start + range.steps].map((j) => blocks[k]!(curve.points[j]!));
+    return linear && isDefinite(family, ends) ? { zeros: [], singular: [] } : zerosOfFamily(family, blocks[k]!);
+  });
   const zeros: Zero[] = [];
   found.forEach((part, k) => {
     for (const zero of part.zeros) {

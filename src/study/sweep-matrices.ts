@@ -109,7 +109,7 @@ export function floatingMatrices(frame: SweepFamily, range: Range): FloatingMatr
 }
 
 /** Whether the parameter enters by the files of the stiffness or of S alone: then S is linear from file to file. */
-function isPiecewiseLinear(declaration: Declaration, parameter: string): boolean {
+export function isPiecewiseLinear(declaration: Declaration, parameter: string): boolean {
   const { energy } = declaration;
   const nothing = { rows: 0, cols: 0, terms: new Map(), where: '' };
   let rest: EnergyDeclaration;

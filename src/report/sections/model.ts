@@ -21,6 +21,7 @@ export function modelSection(view: ReportView): Section | null {
       name: 'Parameters',
       line: joined(parameters.map(([name, v]) => math(v === null ? formula(name) : relation(formula(name), '=', formula(v))))),
     });
+  if (model.interpolated !== undefined) rows.push({ name: 'Interpolated', line: [model.interpolated.join('; ')] });
   if (model.vary.length > 0) rows.push({ name: 'Varied', line: joined(model.vary.map((name) => math(formula(name)))) });
   if (view.equilibrium !== undefined && !withoutEnergy(view)) {
     const point = Object.entries(view.equilibrium.point ?? {}).filter(([, v]) => v !== 0 && v !== '0');

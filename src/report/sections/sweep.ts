@@ -1,12 +1,12 @@
 /** Along a parameter: where components meet zero or collide, and the pictures of it. */
 import { type Block, column, joined, type Line, math, paragraph, type Section } from '../document.ts';
 import { formula, label, relation, sign } from '../mathematics/index.ts';
-import type { CrossingView, ReportView } from '../view.ts';
+import type { CrossingView, FilesView, ReportView } from '../view.ts';
 import { components, inertia, integer, orDash, pair, yesNo } from './words.ts';
 
 export function sweepSection(view: ReportView): Section | null {
   if (view.crossings === undefined) return null;
-  const blocks: Block[] = [...rangeBlocks(view), ...crossingBlocks(view.crossings), ...meetingBlocks(view)];
+  const blocks: Block[] = [...rangeBlocks(view), ...crossingBlocks(view.crossings), ...meetingBlocks(view), ...fileBlocks(view.files)];
   const singular = view.singular ?? [];
   if (singular.length > 0)
     blocks.push(
@@ -60,6 +60,7 @@ function place(c: CrossingView): Line {
 function crossingBlocks(crossings: readonly CrossingView[]): readonly Block[] {
   if (crossings.length === 0) return [paragraph('No eigenvalue meets zero in the range.')];
   const observed = crossings.some((c) => c.observed !== undefined);
+  const inFiles = crossings.some((c) => c.between !== undefined || c.file !== undefined);
   const versal = crossings.some((c) => c.versal !== undefined && c.versal !== null);
   const table: Block = {
     kind: 'table',
@@ -70,6 +71,7 @@ function crossingBlocks(crossings: readonly CrossingView[]): readonly Block[] {
       column('kernel', 'right'),
       column('motion'),
       ...(observed ? [column('observed')] : []),
+      ...(inFiles ? [column('files')] : []),
       column('codimension', 'right'),
       ...(versal ? [column('versal')] : []),
       column('before'),
@@ -81,6 +83,7 @@ function crossingBlocks(crossings: readonly CrossingView[]): readonly Block[] {
       [integer(c.kernel)],
       [c.motion],
       ...(observed ? [[`${c.observed?.motion ?? '–'}${c.agrees === false ? ' (not as predicted)' : ''}`]] : []),
+      ...(inFiles ? [[c.between === undefined ? `at ${c.file}` : c.between.join(' to ')]] : []),
       orDash(c.codimension),
       ...(versal ? [[c.versal === undefined || c.versal === null ? '–' : yesNo(c.versal)]] : []),
       [inertia(c.inertiaBefore)],
@@ -131,3 +134,41 @@ function meetingBlocks(view: ReportView): readonly Block[] {
     },
   ];
 }
+
+/** More files than this are in the data and not in the table. */
+const FILES = 60;
+
+function fileBlocks(files: FilesView | undefined): readonly Block[] {
+  if (files === undefined) return [];
+  const { parameter, note, points } = files;
+  const shown = points.slice(0, FILES);
+  const names = points[0]?.eigenvalues.map((e) => e.component) ?? [];
+  const text = ({ re, im }: { readonly re: number; readonly im: number }): Line[number][] => [
+    ...(re === 0 ? [] : ['rate ', math(formula(short(re)))]),
+    ...(im === 0 && re !== 0 ? [] : [re === 0 ? '' : ', ', math(formula(short(im)))]),
+  ];
+  return [
+    paragraph(
+      `The matrices are those of numbered files; ${note}.`,
+      points.length > FILES ? ` The first ${FILES} of ${points.length} files:` : '',
+    ),
+    {
+      kind: 'table',
+      caption: 'Frequencies at each file by component, or rates where a mode grows, with the inertia of S (positive, zero, negative).',
+      columns: [
+        column([math(formula(parameter))], 'right'),
+        column('file'),
+        ...names.map((name) => column(components(name.split(' + ')))),
+        column('inertia'),
+      ],
+      rows: shown.map((p): readonly Line[] => [
+        [math(formula(p.value))],
+        [p.files.join(', ')],
+        ...p.eigenvalues.map((e): Line => e.values.flatMap((v, k) => [...(k === 0 ? [] : ['; ']), ...text(v)])),
+        [inertia(p.inertia)],
+      ]),
+    },
+  ];
+}
+
+const short = (x: number): number => Number(x.toPrecision(6));
