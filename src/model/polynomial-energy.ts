@@ -1,7 +1,10 @@
 /** Whether H is a polynomial or a quotient of polynomials in the coordinates, and its degree: how far invariance must be checked. */
 import { type Expression, fold } from './expression/index.ts';
 
-/** Degree in `names` if e is visibly a polynomial in them; undefined otherwise. */
+/** A power of a power can have any degree; nobody expands more than this. */
+const LARGEST_DEGREE = 1000;
+
+/** Degree in `names` if e is visibly a polynomial in them of degree up to LARGEST_DEGREE; undefined otherwise. */
 export function polynomialDegree(e: Expression, names: ReadonlySet<string>): number | undefined {
   const degree = fold<number | undefined>(e, (x, parts) => {
     switch (x.kind) {
@@ -27,5 +30,5 @@ export function polynomialDegree(e: Expression, names: ReadonlySet<string>): num
         return parts[0] === 0 ? 0 : undefined;
     }
   });
-  return degree;
+  return degree !== undefined && degree <= LARGEST_DEGREE ? degree : undefined;
 }

@@ -12,21 +12,21 @@ import { type Expression, exactValue, fold } from '../model/expression/index.ts'
 const POINTS = 3;
 /** Points tried, as some may be poles. */
 const TRIES = 12;
-/** Powers above this make numbers too long to compare at a point. */
-const LARGEST_POWER = 1000n;
+/** Degrees above this make numbers too long to compare at a point. */
+const LARGEST_DEGREE = 1000;
 
-/** Whether e is visibly a quotient of polynomials in `names`. */
+/** Whether e is visibly a quotient of polynomials in `names`, of degree up to LARGEST_DEGREE. */
 function isRational(e: Expression, names: ReadonlySet<string>): boolean {
-  /** 0 for a constant, 1 for a rational function, undefined for anything else. */
-  const kind = fold<0 | 1 | undefined>(e, (x, parts) => {
+  /** A bound of the degrees of numerator and denominator, 0 for a constant, undefined for anything else. */
+  const degree = fold<number | undefined>(e, (x, parts) => {
     if (x.kind === 'symbol') return names.has(x.name) ? 1 : 0;
     if (parts.every((p) => p === 0)) return 0;
     if (parts.some((p) => p === undefined) || x.kind === 'call') return undefined;
-    if (x.kind !== 'power') return 1;
+    if (x.kind !== 'power') return parts.reduce<number>((a, b) => a + b!, 0);
     const n = x.exponent;
-    return n.kind === 'number' && n.d === 1n && n.n <= LARGEST_POWER && n.n >= -LARGEST_POWER ? 1 : undefined;
+    return n.kind === 'number' && n.d === 1n ? parts[0]! * Math.abs(Number(n.n)) : undefined;
   });
-  return kind !== undefined;
+  return degree !== undefined && degree <= LARGEST_DEGREE;
 }
 
 /** Values of H at x and at ρx for each generator; undefined where H is not rational or has no exact values. */

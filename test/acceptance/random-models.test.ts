@@ -3,10 +3,10 @@
  * brute force: every key of codim and components that linear algebra alone decides. A failure names its seed.
  */
 import { describe, expect, it } from 'vitest';
-import { bruteForce } from './support/brute-force.ts';
+import { bruteForce, pairUnfolding } from './support/brute-force.ts';
 import { compareCodim, compareComponents, type Result } from './support/compare.ts';
 import { run } from './support/program.ts';
-import { ABSTRACT, modelFile, type RandomModel, randomModel } from './support/realisations.ts';
+import { ABSTRACT, familyFile, modelFile, type RandomModel, randomFamily, randomModel } from './support/realisations.ts';
 
 const draw = (): { seed: number; model: RandomModel }[] => {
   const list: { seed: number; model: RandomModel }[] = [];
@@ -25,8 +25,8 @@ const draw = (): { seed: number; model: RandomModel }[] => {
   return list;
 };
 
-async function answers(command: string, models: readonly RandomModel[]): Promise<Result[]> {
-  const got = await run(['batch', '--command', command], `${models.map((m) => JSON.stringify(modelFile(m))).join('\n')}\n`);
+async function answers(command: string, models: readonly unknown[]): Promise<Result[]> {
+  const got = await run(['batch', '--command', command], `${models.map((m) => JSON.stringify(m)).join('\n')}\n`);
   return got.stdout
     .trim()
     .split('\n')
@@ -38,8 +38,8 @@ describe('random models against brute force', () => {
     const list = draw();
     expect(list.length).toBeGreaterThan(30);
     expect(new Set(list.map((x) => x.model.name)).size).toBeGreaterThan(ABSTRACT.length - 5);
-    const models = list.map((x) => x.model);
-    const [codim, components] = await Promise.all([answers('codim', models), answers('components', models)]);
+    const files = list.map((x) => modelFile(x.model));
+    const [codim, components] = await Promise.all([answers('codim', files), answers('components', files)]);
     const wrong = list.flatMap(({ seed, model }, i) => {
       const want = bruteForce(model, model.s);
       const [a, b] = [codim[i].result ?? codim[i], components[i].result ?? components[i]];
@@ -50,5 +50,50 @@ describe('random models against brute force', () => {
       );
     });
     expect(wrong).toEqual([]);
+  });
+  it('floating: the same answers, noise of 1e-10 in S included, or undecided', async () => {
+    const list = draw().filter((x) => x.model.s.some((row) => row.some((v) => v !== 0)));
+    let state = 1;
+    const noisy = list.map(({ model }) => {
+      const size = 1e-10 * Math.max(...model.s.flat().map(Math.abs));
+      const s = model.s.map((row) => row.map(String));
+      s.forEach((row, i) => {
+        for (let j = 0; j <= i; j++) {
+          state = (Math.imul(state, 1664525) + 1013904223) >>> 0;
+          const text = (model.s[i]![j]! + size * (state / 2 ** 31 - 1)).toPrecision(17);
+          row[j] = text;
+          s[j]![i] = text;
+        }
+      });
+      return modelFile(model, { numbers: 'floating', quadratic: s });
+    });
+    const got = await answers('codim', noisy);
+    let undecided = 0;
+    const wrong = list.flatMap(({ seed, model }, i) => {
+      const a = got[i].result ?? got[i];
+      if (a.verdict?.answer === 'undecided') undecided++;
+      if (a.verdict?.answer === 'undecided') return [];
+      if (a.zero === undefined) return [`${model.name}, seed ${seed}: ${JSON.stringify(a.error ?? a).slice(0, 300)}`];
+      return compareCodim(a, bruteForce(model, model.s)).map((text) => `${model.name}, seed ${seed}: ${text}`);
+    });
+    expect(wrong).toEqual([]);
+    expect(undecided).toBeLessThan(list.length / 4);
+  });
+  it('versality of random families, moving forms included, against changes of basis of the pair (W, S)', async () => {
+    const list = draw().map((x) => ({ ...x, family: randomFamily(x.model, x.seed) }));
+    const got = await answers(
+      'codim',
+      list.map((x) => familyFile(x.model, x.family)),
+    );
+    const wrong = list.flatMap(({ seed, model, family }, i) => {
+      const a = got[i].result ?? got[i];
+      if (a.zero === null) return [];
+      const want = pairUnfolding(model, family);
+      return a.zero?.codimension === want.codimension && a.verdict.versal === want.spans
+        ? []
+        : [`${model.name}, seed ${seed}: got ${a.zero?.codimension} ${a.verdict?.versal}, expected ${want.codimension} ${want.spans}`];
+    });
+    expect(wrong).toEqual([]);
+    expect(list.some((x) => x.family.some((f) => f.w.some((row) => row.some((v) => v !== 0))))).toBe(true);
   });
 });

@@ -55,6 +55,36 @@ export function forms(n: number, generators: readonly Signed[], symmetric: boole
 }
 export const flow = (w: Mat, s: Mat): Mat => times(inverse(transpose(w)), s);
 
+/** Basis of the maps that commute with all generators. */
+function commutant(n: number, generators: readonly Signed[]): Mat[] {
+  const unit = (i: number, j: number): Mat => identity(n).map((row, a) => row.map((_, b) => (a === i && b === j ? 1 : 0)));
+  const units = Array.from({ length: n * n }, (_, k) => unit(Math.floor(k / n), k % n));
+  if (generators.length === 0) return units;
+  const columns = units.map((u) => generators.flatMap((g) => plus(times(g.matrix, u), times(u, g.matrix), -1).flat()));
+  return kernel(transpose(columns), n * n).map((v) => Array.from({ length: n }, (_, i) => v.slice(i * n, (i + 1) * n)));
+}
+
+/**
+ * Codimension of the zero event as that of the pair (W, S) on the generalised kernel under changes of basis that commute
+ * with the group, and whether first derivatives (W′, S′) of a family span what is left: no flow and no Lie algebra enters.
+ */
+export function pairUnfolding(
+  model: LinearModel,
+  derivatives: readonly { readonly w: Mat; readonly s: Mat }[],
+): { codimension: number; spans: boolean } {
+  const basis = generalisedKernel(flow(model.w, model.s));
+  if (basis.length === 0) return { codimension: 0, spans: true };
+  const small = restrict(basis, model);
+  const d = basis.length;
+  const change = (x: Mat, a: Mat): Mat => plus(times(transpose(a), x), times(x, a));
+  const tangent = commutant(d, small.generators).map((a) => [...change(small.w, a).flat(), ...change(small.s, a).flat()]);
+  const total = forms(d, small.generators, false, true).length + forms(d, small.generators, true, false).length;
+  const b = transpose(basis);
+  const compress = (x: Mat): number[] => times(basis, times(x, b)).flat();
+  const all = [...tangent, ...derivatives.map((x) => [...compress(x.w), ...compress(x.s)])];
+  return { codimension: total - rank(tangent), spans: rank(all) === total };
+}
+
 /** Restriction of forms and maps to the span of the rows of `basis`. */
 function restrict(basis: Mat, model: LinearModel): LinearModel {
   const b = transpose(basis);

@@ -300,6 +300,36 @@ export function randomModel(seed: number, limit = 8, only?: string): RandomModel
   return { name: group.name, w: timesExact(t, timesExact(w, mix)), s: timesExact(t, timesExact(s, mix)), generators };
 }
 
+/** A random family through the model: S and, for some seeds, W linear in parameters a, b, …, at zero. */
+export function randomFamily(model: RandomModel, seed: number): { readonly w: Mat; readonly s: Mat }[] {
+  const random = new Random(seed + 1000003);
+  const n = model.w.length;
+  const even = forms(n, model.generators, true, false).map(integral);
+  const skew = forms(n, model.generators, false, true).map(integral);
+  const count = 1 + random.below(3);
+  const moving = random.below(3) === 0;
+  const draw = (basis: readonly (Mat | undefined)[]): Mat =>
+    combine(
+      basis.filter((x) => x !== undefined),
+      basis.map(() => random.below(3) - 1),
+      n,
+    );
+  return Array.from({ length: count }, () => ({ w: moving ? draw(skew) : combine([], [], n), s: draw(even) }));
+}
+
+/** The model with a family through it, in the form of a model file. */
+export function familyFile(model: RandomModel, family: readonly { readonly w: Mat; readonly s: Mat }[]): Record<string, unknown> {
+  const names = family.map((_, k) => 'abc'[k]!);
+  const text = (m: Mat, by: (x: { readonly w: Mat; readonly s: Mat }) => Mat): string[][] =>
+    m.map((row, i) => row.map((x, j) => [String(x), ...family.map((f, k) => `(${by(f)[i]![j]!})*${names[k]}`)].join(' + ')));
+  return modelFile(model, {
+    symplectic: text(model.w, (f) => f.w),
+    quadratic: text(model.s, (f) => f.s),
+    parameters: Object.fromEntries(names.map((name) => [name, '0'])),
+    vary: names,
+  });
+}
+
 /** The model in the form of a model file. */
 export function modelFile(model: RandomModel, more: Record<string, unknown> = {}): Record<string, unknown> {
   const n = model.w.length;
