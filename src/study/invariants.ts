@@ -76,7 +76,11 @@ export function invariantsResult(declaration: Declaration, degree?: number): Inv
     ...(expansion !== undefined && expansion.atoms.length > 0 ? { floatingBecause: expansion.atoms[0]! } : {}),
     field: field.name,
     group: { order, reversing: reversingCount(action.signs), generators: action.generators.map((g) => g.name) },
-    equilibrium: { holds: expansion?.linearPart === undefined, gradient: expansion?.linearPart ?? '0' },
+    equilibrium: {
+      holds: expansion?.linearPart === undefined,
+      gradient: expansion?.linearPart ?? '0',
+      point: Object.fromEntries(quantities.names.map((n, i) => [n, quantities.field.format(quantities.point[i]!)])),
+    },
     symmetry: {
       holds: expansion === undefined || expansion.invariant(set),
       generators: action.generators.map((g) => ({

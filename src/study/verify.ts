@@ -143,7 +143,7 @@ function verifyText(r: VerifyResult, source: string): string {
   if (r.agrees)
     return [
       `${source}: every number agrees.`,
-      `${r.checks} numbers found again by other routes, ${r.compared} values compared with a new study of the model.`,
+      `${r.checks} numbers found again by other routes, ${r.compared} values compared with a new study of the model. Routes:`,
       ...r.routes.map((route) => `  ${route}`),
     ].join('\n');
   const shown = r.disagreements.slice(0, LISTED);

@@ -9,7 +9,7 @@ import { DASH, inertia, integer, components as labelLine, pair, yesNo } from './
 
 /** Blocks with more rows than this, or bases and blocks longer than so many signs, are left to the JSON result. */
 const PRINTED = 20;
-const PRINTED_LENGTH = 6000;
+const PRINTED_LENGTH = 2500;
 /** A longer name is no index. */
 const LONGEST_INDEX = 24;
 

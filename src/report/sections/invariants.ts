@@ -165,6 +165,8 @@ function equation(text: string): Formula {
   return sides.length === 2 ? relation(formula(sides[0]!), '=', formula(sides[1]!)) : relation(formula(text), '=', formula('0'));
 }
 
+const awayFromOrigin = (view: ReportView): boolean => Object.values(view.equilibrium?.point ?? {}).some((v) => v !== 0 && v !== '0');
+
 export function hamiltonianSection(view: ReportView): Section | null {
   const h = view.hamiltonian;
   if (h === undefined || h === null) return null;
@@ -173,6 +175,7 @@ export function hamiltonianSection(view: ReportView): Section | null {
   blocks.push(
     paragraph(
       ...(h.degree === undefined ? [] : ['Taylor terms up to degree ', integer(h.degree), '. ']),
+      ...(awayFromOrigin(view) ? ['Coordinates are counted from the equilibrium. '] : []),
       exact ? 'The remainder is ' : 'What the invariants do not give:',
       ...(exact ? [math(formula('0')), ', exactly.'] : []),
     ),
