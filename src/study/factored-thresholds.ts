@@ -7,6 +7,7 @@
 import type { Algebraic, Rational, RealField } from '../field/index.ts';
 import { rational, rationals } from '../field/index.ts';
 import {
+  factorsOf,
   formatRoot,
   isSum,
   type RationalFunction,
@@ -101,12 +102,25 @@ function formulaThresholds(ring: Ring, factors: readonly Factor[], factor: Facto
   const coefficients = ring.coefficientsIn(factor.polynomial, ring.indexOf(parameter));
   const odd = factor.power % 2 !== 0;
   const formulas = coefficients.length > 3 ? [] : formulasOf(k, coefficients).filter((x) => vanishes(k, coefficients, x));
-  if (formulas.length === 0) return [{ parameter, exact: null, value: null, polynomial: ring.format(factor.polynomial), signChange: odd }];
-  return formulas.flatMap((x): ThresholdSummary[] => {
-    const signChange = sampledSignChange(k, factors, factor, parameter, x);
-    // a root that is real nowhere is none
-    return signChange === undefined ? [] : [{ parameter, exact: formulaText(k, x), value: null, signChange }];
-  });
+  if (formulas.length === 0) {
+    const signChange = sampledSignChange(k, factors, factor, parameter) ?? odd;
+    return [{ parameter, exact: null, value: null, polynomial: ring.format(factor.polynomial), signChange }];
+  }
+  return formulas
+    .filter((x) => !isNegative(ring, x.radicand))
+    .map((x) => ({
+      parameter,
+      exact: formulaText(k, x),
+      value: null,
+      // real at no sample: that of a simple root
+      signChange: sampledSignChange(k, factors, factor, parameter, x) ?? odd,
+    }));
+}
+
+/** Whether a sum of squares with negative coefficients: a root of it is real nowhere. */
+function isNegative(ring: Ring, p: Poly): boolean {
+  const field = ring.field as RealField;
+  return p.coefficients.every((c, i) => field.sign(c) < 0 && factorsOf(p.monomials[i]!).every(([, e]) => e % 2 === 0));
 }
 
 function formulasOf(k: RationalFunctionField<Algebraic>, coefficients: readonly Poly[]): Formula[] {
@@ -117,8 +131,10 @@ function formulasOf(k: RationalFunctionField<Algebraic>, coefficients: readonly 
   const { square, rest } = squarePart(ring, discriminant);
   const double = ring.mul(ring.integer(2), a);
   const u = k.neg(k.quotient(b, double));
-  const v = k.quotient(square, double);
-  return [v, k.neg(v)].map((w) => ({ u, v: w, radicand: rest }));
+  // where the open symbols are positive and small the lower one comes first
+  const last = (ring.field as RealField).sign(a.coefficients[0]!) > 0 ? square : ring.neg(square);
+  const v = k.quotient(last, double);
+  return [k.neg(v), v].map((w) => ({ u, v: w, radicand: rest }));
 }
 
 /** Whether c + b x + a x² is zero at u + v √r, in the arithmetic of such numbers. */
@@ -148,19 +164,19 @@ const SAMPLES = 24;
 
 function sample(i: number, field: RealField): (symbol: number) => Algebraic {
   return (symbol) => {
-    const size = rational(BigInt(3 + ((7 * i + 5 * symbol) % 11)), BigInt(2 + ((3 * i + 4 * symbol) % 5)));
+    const size = rational(BigInt((3 + ((7 * i + 5 * symbol) % 11)) * (1 + (i % 5)) ** 2), BigInt(2 + ((3 * i + 4 * symbol) % 5)));
     const negative = ((i >> (symbol % 4)) & 1) === 1;
     return field.fromRational(negative ? -size.n : size.n, size.d);
   };
 }
 
-/** Whether the product changes sign at the root; at the first sample where it is real and apart from other roots. Undefined where there is none. */
+/** Whether the product changes sign at the root (any root of the factor without a formula), at the first sample where it is real and simple. */
 function sampledSignChange(
   k: RationalFunctionField<Algebraic>,
   factors: readonly Factor[],
   factor: Factor,
   parameter: string,
-  formula: Formula,
+  formula?: Formula,
 ): boolean | undefined {
   const { ring } = k;
   const field = ring.field as RealField;
@@ -171,16 +187,22 @@ function sampledSignChange(
     const special = factors.map((f) => ({ ...f, polynomial: ring.substitute(f.polynomial, images, ring) }));
     if (special.some((f) => ring.isZero(f.polynomial))) continue;
     if (ring.degreeIn(special[factors.indexOf(factor)]!.polynomial, v) < ring.degreeIn(factor.polynomial, v)) continue;
-    const names = new Map(ring.variables.map((name, j) => [name, field.toNumber(value(j))]));
-    const at =
-      k.evaluateNumber(formula.u, names) +
-      k.evaluateNumber(formula.v, names) * Math.sqrt(k.evaluateNumber(k.fromPolynomial(formula.radicand), names));
-    if (!Number.isFinite(at)) continue;
+    const at = formula === undefined ? undefined : formulaValue(k, formula, value);
+    if (Number.isNaN(at)) continue;
     const place = factors.indexOf(factor);
     const found = rootsOf(ring, special, v).find(
-      (r) => r.factor === place && Math.abs(numberOf(r.root) - at) <= 1e-9 * Math.max(1, Math.abs(at)),
+      (r) => r.factor === place && (at === undefined || Math.abs(numberOf(r.root) - at) <= 1e-9 * Math.max(1, Math.abs(at))),
     );
     if (found !== undefined) return found.signChange;
   }
   return undefined;
+}
+
+/** NaN where it is not real or not defined. */
+function formulaValue(k: RationalFunctionField<Algebraic>, { u, v, radicand }: Formula, value: (symbol: number) => Algebraic): number {
+  const field = k.ring.field as RealField;
+  const names = new Map(k.symbols.map((name, j) => [name, field.toNumber(value(j))]));
+  const number = (x: RationalFunction<Algebraic>) => k.evaluateNumber(x, names);
+  const at = number(u) + number(v) * Math.sqrt(number(k.fromPolynomial(radicand)));
+  return Number.isFinite(at) ? at : Number.NaN;
 }

@@ -167,6 +167,15 @@ describe('one stiffness of any form', () => {
     expect(values).toEqual([1, 5]);
     expect(c.thresholds!.every((t) => t.signChange)).toBe(true);
   });
+  it('roots that are real only for large or for negative values of the open parameter', async () => {
+    const large = await only('mu^2 - b + 100000', 'vary: [mu]');
+    expect(large.thresholds!.map((t) => [number(t.exact!, { b: 100004 }), t.signChange])).toEqual([
+      [-2, true],
+      [2, true],
+    ]);
+    const negative = await only('mu^2 + b', 'vary: [mu]');
+    expect(negative.thresholds!.map((t) => t.exact)).toEqual(['-sqrt(-b)', 'sqrt(-b)']);
+  });
   it('a square of an open quadratic is touched', async () => {
     const c = await only('(mu^2 - b)^2', 'vary: [mu]');
     expect(c.determinant).toBe('(b - mu^2)^2');

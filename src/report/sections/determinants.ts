@@ -31,22 +31,25 @@ function itemOf(c: ComponentSummary, determinant: string): Line {
     ThresholdSummary[],
   ];
   const parts: Line[] = [];
-  if (crossed.length > 0) parts.push(['changes sign at ', ...places(crossed)]);
-  if (touched.length > 0) parts.push(['touches zero at ', ...places(touched)]);
+  if (crossed.length > 0) parts.push(['changes sign at ', ...places(crossed, determinant)]);
+  if (touched.length > 0) parts.push(['touches zero at ', ...places(touched, determinant)]);
   return [...head, ...parts.flatMap((part, i): Line => [i === 0 ? '; ' : ' and ', ...part])];
 }
 
-function places(list: readonly ThresholdSummary[]): Line {
-  return list.flatMap((t, i): Line => [...(i === 0 ? [] : [', ']), ...place(t)]);
+function places(list: readonly ThresholdSummary[], determinant: string): Line {
+  return list.flatMap((t, i): Line => [...(i === 0 ? [] : [', ']), ...place(t, determinant)]);
 }
 
-function place(t: ThresholdSummary): Line {
+function place(t: ThresholdSummary, determinant: string): Line {
   const name = formula(t.parameter);
   if (t.exact !== null) {
     const exact = math(relation(name, '=', formula(t.exact)));
     if (t.value === null || /^-?\d+$/.test(t.exact)) return [exact];
     return [exact, ' ', math(sign('~', '\\approx', 1)), ' ', math(formula(t.value))];
   }
+  // what the determinant shows already is not repeated
+  if (t.value === null && t.polynomial !== undefined && determinant.includes(t.polynomial))
+    return ['zeros in ', math(name), ' that have no closed form'];
   const condition = t.polynomial === undefined ? [] : [math(formula(t.polynomial))];
   if (t.value === null) return ['the roots of ', ...condition, ' in ', math(name)];
   return [math(relation(name, '~', formula(t.digits ?? t.value))), ', a root of ', ...condition];
