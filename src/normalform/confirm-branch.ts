@@ -13,6 +13,8 @@ export interface FullEquations {
   readonly mu: number;
   /** Basis of the kernel, dimension x k, in the coordinates in which the branches were computed. */
   readonly kernel: NumberMatrix;
+  /** How far the other coordinates move with the parameter, to first order; default not at all. */
+  readonly drift?: Float64Array;
 }
 
 export interface Confirmation {
@@ -42,7 +44,7 @@ export function confirmBranch(equations: FullEquations, branch: Branch, scale = 
 }
 
 function search(
-  { dimension: n, gradient, hessian, point, mu, kernel }: FullEquations,
+  { dimension: n, gradient, hessian, point, mu, kernel, drift }: FullEquations,
   branch: Branch,
   side: 1 | -1,
   epsilon: number,
@@ -55,7 +57,7 @@ function search(
     { length: n },
     (_, i) => branch.direction.reduce((s, y, k) => s + kernel.data[i * kernel.cols + k]! * y, 0) * amplitude * forward,
   );
-  const start = point.map((x, i) => x + shift[i]!);
+  const start = point.map((x, i) => x + shift[i]! + step * (drift?.[i] ?? 0));
   const size = norm(hessian(start, mu + step).data) * norm(shift);
   const end = newton(
     start,

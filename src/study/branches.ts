@@ -13,6 +13,8 @@ import type { IsotropyLattice } from '../normalform/isotropy.ts';
 import { factorsOf, type Polynomial } from '../polynomial/index.ts';
 import type { LinearStudy } from './linear-study.ts';
 import { type Reduction, reductionOf } from './reduction.ts';
+import { type FixedMomenta, type MomentaSummary, momentaSummary } from './reduction-neutral.ts';
+import { augmentedEquations, sliceStability } from './reduction-neutral-branches.ts';
 import type { StudyResult } from './result.ts';
 import { groupSummary, head, linearText } from './summary.ts';
 
@@ -54,6 +56,8 @@ export interface BranchesResult extends StudyResult {
   readonly branches: readonly BranchSummary[];
   /** What the terms known do not decide. */
   readonly undecided: readonly string[];
+  /** Where a continuous symmetry moves the equilibrium: the branches are of relative equilibria at fixed momenta. */
+  readonly neutral?: MomentaSummary;
   /** Sum of (−1)^index over the equilibria near the event on either side of the parameter; equal where nothing is missing. */
   readonly topologicalDegree: { readonly below: number; readonly above: number } | null;
   readonly diagram: {
@@ -67,7 +71,7 @@ export interface BranchesResult extends StudyResult {
   };
 }
 
-/** Throws UsageError where nothing is at zero or no parameter varies. */
+/** Throws UsageError where nothing is at zero or no parameter varies, LimitError where the reduction is out of reach. */
 export async function branchesResult(study: LinearStudy, degree?: number): Promise<BranchesResult> {
   const { prepared } = study;
   const vary = prepared.declaration.vary;
@@ -88,8 +92,10 @@ export async function branchesResult(study: LinearStudy, degree?: number): Promi
     degree: reduction.degree,
     unfolding: unfoldingBy(reduction, choice),
   });
-  const equations = fullEquations(study, reduction, parameter);
-  const spectrum = await spectrumOf(study);
+  const { fixed } = reduction;
+  const plain = fullEquations(study, reduction, parameter);
+  const equations = { ...(fixed === undefined ? plain : augmentedEquations(plain, fixed)), drift: driftBy(reduction, choice) };
+  const spectrum = await spectrumOf(study, fixed);
   const branches: BranchSummary[] = [];
   const curves: { name: string; points: { at: number; amplitude: number; stability: Stability }[] }[] = [];
   diagram.branches.forEach((branch, i) => {
@@ -109,6 +115,7 @@ export async function branchesResult(study: LinearStudy, degree?: number): Promi
     undecided: diagram.undecided,
     topologicalDegree: diagram.topologicalDegree,
     diagram: { kind: 'bifurcation', parameter, amplitude: 'amplitude', branches: curves },
+    ...(fixed === undefined ? {} : { neutral: momentaSummary(study, fixed) }),
   };
 }
 
@@ -130,6 +137,19 @@ function unfoldingBy(reduction: Reduction<Algebraic>, j: number): Polynomial<Alg
       for (const [v, e] of factors) if (v < k) exponents[v] = e;
       return [[exponents, reduction.reduced.h.coefficients[i]!] as [number[], Algebraic]];
     }),
+  );
+}
+
+/** How the slaved coordinates move with μ_j where the kernel coordinates stay 0, in the coordinates of the full equations. */
+function driftBy({ fixed, field, reduced, space }: Reduction<Algebraic>, j: number): Float64Array {
+  const complement = toNumberMatrix(fixed?.complement ?? space.complement, field);
+  const own = String.fromCharCode(reduced.dimension + j);
+  const rates = reduced.slaved.map((v) => {
+    const i = v.monomials.indexOf(own);
+    return i < 0 ? 0 : field.toNumber(v.coefficients[i]!);
+  });
+  return Float64Array.from({ length: complement.rows }, (_, i) =>
+    rates.reduce((s, x, c) => s + x * complement.data[i * complement.cols + c]!, 0),
   );
 }
 
@@ -177,14 +197,17 @@ function fullEquations(study: LinearStudy, reduction: Reduction<Algebraic>, para
 
 type Spectrum = (hessian: NumberMatrix, index: number) => Stability;
 
-/** Stability of an equilibrium with this Hessian: the energy criterion first, then the spectrum of L. */
-async function spectrumOf(study: LinearStudy): Promise<Spectrum> {
+/** Stability of an equilibrium with this Hessian, of a relative one modulo the symmetry at fixed momenta: the energy criterion first, then the spectrum of L. */
+async function spectrumOf(study: LinearStudy, fixed: FixedMomenta | undefined): Promise<Spectrum> {
   const { hamiltonianEigenvalues } = await import('../linear/spectral.ts');
   const { prepared } = study;
   const j = toNumberMatrix(poisson(dense(prepared.form)), prepared.field);
-  return (hessian, index) => {
-    if (index === 0 || index === hessian.rows) return 'stable';
-    const l = numberMultiply(j, hessian);
+  const onSlice = fixed === undefined ? undefined : await sliceStability(study, fixed);
+  return (hessian, whole) => {
+    const slice = onSlice?.(hessian);
+    const index = slice?.index ?? whole;
+    if (index === 0 || index === (slice?.dimension ?? hessian.rows)) return 'stable';
+    const l = slice?.flow() ?? numberMultiply(j, hessian);
     const { values } = hamiltonianEigenvalues(l);
     const size = values.reduce((s, z) => Math.max(s, Math.hypot(z.re, z.im)), 0);
     return values.some((z) => Math.abs(z.re) > 1e-7 * size) ? 'unstable' : 'spectral';
