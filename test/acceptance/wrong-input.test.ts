@@ -1,6 +1,6 @@
 /** Wrong input: one clear message on standard error, status 2, nothing on standard output, soon, in bounded memory. */
 import { describe, expect, it } from 'vitest';
-import { refusal, run, scratch } from './support/program.ts';
+import { faults, refusal, run, scratch, validResult } from './support/program.ts';
 
 const { write } = scratch();
 const commands = ['check', 'components', 'codim', 'events', 'invariants', 'reduce', 'branches', 'report'];
@@ -136,6 +136,11 @@ describe.concurrent('hostile input', () => {
       '--quadratic',
       '0',
     ]);
+    // check gives its full result: the answer is no
+    const check = await run(['check', '-', '--json'], shear.replace('p1^2 + q1^2*0', 'p1^2 + p2^2'));
+    const found = JSON.parse(check.stdout);
+    validResult(found);
+    expect([check.status, faults(validResult), found.group.order, found.symmetry.generators[0].invariant]).toEqual([1, '', 0, true]);
     await refusal(['groups', 'symmetric:12']);
     await refusal(['groups', 'cyclic:1000000']);
   });
