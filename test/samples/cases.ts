@@ -16,6 +16,7 @@ const LEFT_OUT: readonly string[] = [
   'vortex-heptagon.reduce',
   'vortex-heptagon.report',
   'vortex-heptagon-slice.invariants',
+  'vortex-heptagon-slice.reduce',
   'vortex-heptagon-slice.report',
 ];
 
