@@ -14,14 +14,17 @@ export interface CheckResult extends StudyResult {
   readonly found?: FoundSymmetry;
 }
 
-/** The full result, also where something fails; then `group` counts the matrices alone. */
+/** The full result, also where something fails; then `group` counts the matrices alone, 0 where they make no finite group. */
 export function checkResult(p: Prepared): CheckResult {
   const failures = p.generators.flatMap((g) => (g.reason === undefined ? [] : [g.reason]));
   if (!p.equilibriumHolds) {
     const i = p.local.gradient.findIndex((x) => !p.field.isZero(x));
     failures.push(`the point is not an equilibrium: ∂H/∂${p.quantities.names[i]} = ${p.field.format(p.local.gradient[i]!)}`);
   }
-  return { ...head('check', p, groupOrder(p, failures)), invarianceDegree: p.invarianceDegree, failures };
+  const plain = head('check', p, groupOrder(p, failures));
+  // generators of no finite group declare no symmetry, whatever each of them keeps
+  const symmetry = { ...plain.symmetry, holds: plain.symmetry.holds && plain.group.order > 0 };
+  return { ...plain, symmetry, invarianceDegree: p.invarianceDegree, failures };
 }
 
 function groupOrder(p: Prepared, failures: string[]): StudyResult['group'] {

@@ -37,8 +37,10 @@ export function headlineOf(view: ReportView): Headline | null {
 
 function checkSentence(view: ReportView): string {
   const point = view.equilibrium!.holds ? 'The point is an equilibrium' : 'The point is not an equilibrium';
-  const failing = view.symmetry!.generators.filter((g) => !g.symplectic || !g.invariant).map((g) => g.name);
+  const failing = view.symmetry!.generators.filter((g) => !g.symplectic || !g.invariant || g.reason !== undefined).map((g) => g.name);
   if (view.symmetry!.generators.length === 0) return `${point}; no symmetry is declared.`;
+  if (failing.length === 0 && view.group?.order === 0)
+    return `${point}, but the generators make no finite group within the limit on its order.`;
   if (failing.length === 0) return `${point}, and every generator is a symmetry of H.`;
   return `${point}; ${count(failing.length, 'generator')} ${failing.length === 1 ? 'is' : 'are'} no symmetry of H: ${failing.join(', ')}.`;
 }
