@@ -148,6 +148,8 @@ export interface ReportView {
   readonly classes?: readonly ClassSummary[];
   readonly inertia?: InertiaSummary;
   readonly neutral?: CodimResult['neutral'];
+  /** What a reduction beside neutral directions keeps fixed. */
+  readonly momenta?: { readonly fixed: readonly string[]; readonly because: string };
   readonly zero?: ZeroSummary | null;
   readonly collisions?: readonly CollisionSummary[];
   readonly spectrum?: readonly SpectrumEntry[];

@@ -49,15 +49,14 @@ export interface BranchSummary {
   readonly found?: { readonly step: number; readonly point: Readonly<Record<string, number>> };
 }
 
-export interface BranchesResult extends StudyResult {
+/** With `momenta` where a continuous symmetry moves the equilibrium: the branches are of relative equilibria at fixed momenta. */
+export interface BranchesResult extends StudyResult, Partial<MomentaSummary> {
   readonly parameter: string;
   readonly coordinates: readonly { readonly name: string; readonly vector: string }[];
   readonly isotropy: readonly IsotropySummary[];
   readonly branches: readonly BranchSummary[];
   /** What the terms known do not decide. */
   readonly undecided: readonly string[];
-  /** Where a continuous symmetry moves the equilibrium: the branches are of relative equilibria at fixed momenta. */
-  readonly neutral?: MomentaSummary;
   /** Sum of (−1)^index over the equilibria near the event on either side of the parameter; equal where nothing is missing. */
   readonly topologicalDegree: { readonly below: number; readonly above: number } | null;
   readonly diagram: {
@@ -115,7 +114,7 @@ export async function branchesResult(study: LinearStudy, degree?: number): Promi
     undecided: diagram.undecided,
     topologicalDegree: diagram.topologicalDegree,
     diagram: { kind: 'bifurcation', parameter, amplitude: 'amplitude', branches: curves },
-    ...(fixed === undefined ? {} : { neutral: momentaSummary(study, fixed) }),
+    ...(fixed === undefined ? {} : momentaSummary(study, fixed)),
   };
 }
 

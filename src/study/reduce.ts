@@ -35,10 +35,8 @@ export interface ReducedSummary {
   readonly generic: boolean | null;
 }
 
-export interface ReduceResult extends StudyResult {
+export interface ReduceResult extends StudyResult, Partial<MomentaSummary> {
   readonly reduced: ReducedSummary;
-  /** Where a continuous symmetry moves the equilibrium. */
-  readonly neutral?: MomentaSummary;
 }
 
 /** Throws UsageError where nothing is at zero. */
@@ -113,8 +111,8 @@ function overParameters<C>(reduction: Reduction<C>): {
   return { ring, h: ring.fromTerms(terms), symbols };
 }
 
-const neutralPart = <C>(study: LinearStudy, { fixed }: Reduction<C>): Pick<ReduceResult, 'neutral'> =>
-  fixed === undefined ? {} : { neutral: momentaSummary(study, fixed) };
+const neutralPart = <C>(study: LinearStudy, { fixed }: Reduction<C>): Partial<MomentaSummary> =>
+  fixed === undefined ? {} : momentaSummary(study, fixed);
 
 export function reducedSummary<C>(study: LinearStudy, reduction: Reduction<C>, parameters: number): ReducedSummary {
   const { analysis, generators, space, field, ring, germ } = reduction;
@@ -145,7 +143,7 @@ export function reducedSummary<C>(study: LinearStudy, reduction: Reduction<C>, p
             'terms that the declared symmetry allows are missing, which a symmetry that was not declared would explain (symcodim check --find looks for one)',
           ]
         : []),
-      ...(reduction.fixed === undefined ? [] : [momentaSummary(study, reduction.fixed).because]),
+      ...(reduction.fixed === undefined ? [] : [momentaSummary(study, reduction.fixed).momenta.because]),
     ].join('; '),
     polynomial: ring.format(germ),
     ...motion,

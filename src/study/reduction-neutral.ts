@@ -69,11 +69,12 @@ const MOMENTA_LENGTH = 100;
 
 /** What a result says of the reduction. */
 export interface MomentaSummary {
-  readonly dimension: number;
-  readonly directions: readonly string[];
-  /** Momenta that are kept at their values at the equilibrium. */
-  readonly fixedMomenta: readonly string[];
-  readonly because: string;
+  readonly neutral: { readonly dimension: number; readonly directions: readonly string[] };
+  readonly momenta: {
+    /** Kept at their values at the equilibrium. */
+    readonly fixed: readonly string[];
+    readonly because: string;
+  };
 }
 
 /** The slice, where there is one that differs from the phase space. */
@@ -303,20 +304,16 @@ export function requireSymbolicSymmetry<C>(
   }
 }
 
-/** In words, for the result. */
+/** What a result says beside its answer. */
 export function momentaSummary(study: LinearStudy, fixed: FixedMomenta): MomentaSummary {
   const { slice, directions } = study.slicing!;
   const written = fixed.texts.join(', ');
   const [what, keep, them] = fixed.texts.length > 1 ? ['momenta', 'keep their values', 'them'] : ['momentum', 'keeps its value', 'it'];
   const subject = written.length <= MOMENTA_LENGTH ? `the ${what} ${written}` : `the ${what} of the neutral fields`;
-  return {
-    dimension: slice.neutral,
-    directions,
-    fixedMomenta: fixed.texts,
-    because:
-      `at fixed momenta: ${subject} ${keep} at the equilibrium, and motions along the continuous symmetry that leave ${them} alone are divided out; critical points are relative equilibria` +
-      (slice.isotropy.length === 0
-        ? ''
-        : '; fields that vanish at the equilibrium count in the linear analysis only, here the declared finite symmetry alone is used'),
-  };
+  const because =
+    `at fixed momenta: ${subject} ${keep} at the equilibrium, and motions along the continuous symmetry that leave ${them} alone are divided out; critical points are relative equilibria` +
+    (slice.isotropy.length === 0
+      ? ''
+      : '; fields that vanish at the equilibrium count in the linear analysis only, here the declared finite symmetry alone is used');
+  return { neutral: { dimension: slice.neutral, directions }, momenta: { fixed: fixed.texts, because } };
 }
