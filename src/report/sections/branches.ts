@@ -63,6 +63,7 @@ function direction(branch: BranchView): Line {
 
 function branchBlocks(branches: readonly BranchView[], view: ReportView): readonly Block[] {
   const blocks: Block[] = [];
+  if (view.momenta !== undefined) blocks.push(paragraph('All of this ', view.momenta.because, '.'));
   if (branches.length === 0) blocks.push(paragraph('No branch of equilibria is predicted.'));
   else {
     const exponents = branches.some((b) => b.exponent !== undefined);
@@ -75,7 +76,6 @@ function branchBlocks(branches: readonly BranchView[], view: ReportView): readon
         '. A branch is confirmed where Newton iteration on the full equations finds it on its side. The amplitude grows like the power of the parameter that is given as its exponent.',
       ),
     );
-    if (view.momenta !== undefined) blocks.push(paragraph('All of this ', view.momenta.because, '.'));
     if (view.coordinates !== undefined && view.coordinates.length > 0)
       blocks.push(
         paragraph(
