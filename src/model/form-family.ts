@@ -15,7 +15,10 @@ export function formDerivatives(declaration: Declaration, quantities: Quantities
   let depends = false;
   texts.forEach((line, i) => {
     line.forEach((text, j) => {
-      const e = substituteSymbols(parseExpression(text, { file: declaration.source, key: `symplectic[${i + 1}][${j + 1}]` }), quantities.definitions);
+      const e = substituteSymbols(
+        parseExpression(text, { file: declaration.source, key: `symplectic[${i + 1}][${j + 1}]` }),
+        quantities.definitions,
+      );
       const symbols = symbolsOf(e);
       if (!vary.some((v) => symbols.has(v))) return;
       const t = taylor(e, { names: vary, point: at, parameters: quantities.valueExpressions, degree: 1, field });

@@ -4,6 +4,7 @@ import { type Document, type Line, linesOf, type Section } from './document.ts';
 import type { ReferenceKey } from './references.ts';
 import { birkhoffSection } from './sections/birkhoff.ts';
 import { branchesSection } from './sections/branches.ts';
+import { brokenSection } from './sections/broken.ts';
 import { classesSection, componentsSection } from './sections/components.ts';
 import { foundSection } from './sections/found.ts';
 import { headlineOf, verdictSection } from './sections/headline.ts';
@@ -19,6 +20,7 @@ import { type ReportView, viewOf } from './view.ts';
 const SECTIONS: readonly ((view: ReportView) => Section | null)[] = [
   modelSection,
   symmetrySection,
+  brokenSection,
   foundSection,
   componentsSection,
   classesSection,

@@ -2,6 +2,7 @@
  * What a report can say, gathered from one result or from the results of several stages: each key is taken
  * from the first result that has it, so the stages may come in any selection.
  */
+import type { BrokenSummary } from '../study/broken.ts';
 import type { FoundSymmetry } from '../study/find.ts';
 import type { ResultObject } from '../study/outcome.ts';
 import type {
@@ -143,6 +144,7 @@ export interface ReportView {
   /** Degree of the Taylor terms to which invariance was compared; 'all' where H was compared as a whole. */
   readonly invarianceDegree?: number | 'all';
   readonly found?: FoundSymmetry;
+  readonly broken?: BrokenSummary;
   readonly caution?: string;
   readonly components?: readonly ComponentSummary[];
   readonly classes?: readonly ClassSummary[];

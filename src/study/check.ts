@@ -1,6 +1,7 @@
 /** `check`: is the point an equilibrium, is each generator (anti)symplectic, does it leave H invariant. */
 import { groupOfMatrices } from '../action/index.ts';
 import { NotAGroupError } from '../errors/index.ts';
+import { type BrokenSummary, brokenSymmetry } from './broken.ts';
 import type { FoundSymmetry } from './find.ts';
 import type { Prepared } from './prepare.ts';
 import type { StudyResult } from './result.ts';
@@ -10,6 +11,8 @@ export interface CheckResult extends StudyResult {
   /** Degree in the coordinates to which invariance was compared; 'all' for a polynomial H. */
   readonly invarianceDegree: number | 'all';
   readonly failures: readonly string[];
+  /** Where H is not invariant: the part that breaks the symmetry, and the subgroup that survives. */
+  readonly broken?: BrokenSummary;
   /** With --find: the symmetry that is there. */
   readonly found?: FoundSymmetry;
 }
@@ -24,7 +27,8 @@ export function checkResult(p: Prepared): CheckResult {
   const plain = head('check', p, groupOrder(p, failures));
   // generators of no finite group declare no symmetry, whatever each of them keeps
   const symmetry = { ...plain.symmetry, holds: plain.symmetry.holds && plain.group.order > 0 };
-  return { ...plain, symmetry, invarianceDegree: p.invarianceDegree, failures };
+  const broken = plain.group.order > 0 ? brokenSymmetry(p) : undefined;
+  return { ...plain, symmetry, invarianceDegree: p.invarianceDegree, failures, ...(broken === undefined ? {} : { broken }) };
 }
 
 function groupOrder(p: Prepared, failures: string[]): StudyResult['group'] {

@@ -4,7 +4,6 @@ import type { Reading } from '../event/floating/readings.ts';
 import { zeroCodimensionOfPartition } from '../event/partition-codimension.ts';
 import { motionOf } from '../event/zero-event.ts';
 import { symmetricEigen } from '../linear/spectral.ts';
-import { subgroupSummaries } from './subgroup-summaries.ts';
 import { floatingComponentBases, restrictNumeric } from './floating-action.ts';
 import { doubtOf, eventSpaces, type FloatingVersality, floatingVersality } from './floating-event.ts';
 import { type FloatingBlockZero, type FloatingStudy, floatingLinear } from './floating-linear.ts';
@@ -14,6 +13,7 @@ import { cutBasis } from './neutral-floating.ts';
 import type { OutcomeStatus, StudyCommand } from './outcome.ts';
 import type { NotExact } from './prepare.ts';
 import type { CodimResult, InertiaSummary, StudyResult, VerdictSummary, ZeroSummary } from './result.ts';
+import { subgroupSummaries } from './subgroup-summaries.ts';
 import { CAUTION, componentSummaries, generatorSummaries, groupSummary, modelSummary } from './summary.ts';
 import { type VerdictFacts, verdict } from './verdict.ts';
 

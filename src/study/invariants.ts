@@ -3,7 +3,7 @@
  * form with every parameter kept as a symbol.
  */
 import { embedSparse, makeAction } from '../action/index.ts';
-import { InputError, LimitError } from '../errors/index.ts';
+import { InputError, LimitError, NotAnEquilibriumError, NotInvariantError } from '../errors/index.ts';
 import type { Algebraic } from '../field/index.ts';
 import {
   type EquivariantSet,
@@ -65,6 +65,13 @@ export function invariantsResult(declaration: Declaration, degree?: number): Inv
   const wanted = degree ?? expansion?.degree;
   let set = minimalGenerators(linear, { reserved, ...(degree === undefined ? {} : { degree }) });
   if (!set.complete && wanted !== undefined && set.upTo < wanted) set = minimalGenerators(linear, { reserved, degree: wanted });
+  if (expansion !== undefined)
+    requireHolding(
+      expansion,
+      set,
+      declaration,
+      action.generators.map((g) => g.name),
+    );
   const maps = equivariants(set, { degree: Math.min(degree ?? 3, 3) });
   const relationList = relations(set, Math.min(set.complete ? RELATION_DEGREE : set.upTo, RELATION_DEGREE));
   const twisted = molien(linear, { degree: Math.max(shown, 12), target: linear });
@@ -109,6 +116,29 @@ export function invariantsResult(declaration: Declaration, degree?: number): Inv
     relations: relationList.map((r) => r.text),
     hamiltonian: expansion === undefined ? null : expansion.rewrite(set),
   };
+}
+
+/** Every command but `check` stops at a model that is not what it claims. */
+function requireHolding(expansion: Expansion, set: GeneratorSet, declaration: Declaration, generators: readonly string[]): void {
+  const next = 'see all of it with symcodim check';
+  if (!expansion.invariant(set)) {
+    const { breaking } = expansion.rewrite(set);
+    const shown = breaking === undefined ? 'a part of H' : breaking.length > 120 ? `${breaking.slice(0, 117)}…` : breaking;
+    throw new NotInvariantError(`H is not invariant under the group of ${generators.join(', ')}: ${shown} breaks the symmetry`, {
+      file: declaration.source,
+      key: 'symmetry',
+      value: shown,
+      expected: 'generators that leave H invariant',
+      next,
+    });
+  }
+  if (expansion.linearPart !== undefined)
+    throw new NotAnEquilibriumError(`the point is not an equilibrium: H has the linear terms ${expansion.linearPart}`, {
+      file: declaration.source,
+      key: 'equilibrium',
+      expected: '∇H = 0',
+      next,
+    });
 }
 
 const reversingCount = (signs: Int8Array): number => signs.reduce((n, s) => n + (s === -1 ? 1 : 0), 0);

@@ -28,6 +28,8 @@ import {
 const DEGREES = [4, 6, 8, 10];
 /** On kernels of more dimensions the series are cut at degree 6. */
 const WIDE_KERNEL = 3;
+/** Monomials times the degree of the field beyond which a higher degree is not tried by itself: some seconds of work. */
+const TERMS_MOST = 1_000_000;
 /** Phase spaces beyond this dimension are not expanded to high degree. */
 export const REDUCTION_DIMENSION_LIMIT = 40;
 
@@ -129,6 +131,10 @@ interface Expansion<C> {
   readonly embed: (a: Algebraic) => C;
 }
 
+/** Monomials of degree at most d in n variables. */
+const monomialCount = (n: number, d: number): number =>
+  Array.from({ length: d }, (_, i) => (n + i + 1) / (i + 1)).reduce((a, b) => a * b, 1);
+
 function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: number) => Expansion<C>, degree?: number): Reduction<C> {
   const { names, reserved, ...rest } = frame;
   const { action } = frame;
@@ -136,7 +142,12 @@ function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: 
   const n = study.prepared.quantities.names.length + (fixed === undefined ? 0 : fixed.momenta + fixed.gauge);
   const own = polynomialDegree(study.prepared.hamiltonian, new Set(study.prepared.quantities.names));
   let generators = minimalGenerators(action, { reserved });
-  const degrees = degree !== undefined ? [degree] : names.length >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
+  const tried = names.length >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
+  const variables = n + frame.parameters.length;
+  const degrees =
+    degree !== undefined
+      ? [degree]
+      : tried.filter((d) => d === DEGREES[0] || monomialCount(variables, d) * frame.field.degree <= TERMS_MOST);
   for (const d of degrees) {
     if (!generators.complete && generators.upTo < d) generators = minimalGenerators(action, { reserved, degree: d });
     const expansion = expand(d);

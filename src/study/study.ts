@@ -3,9 +3,11 @@ import { UsageError } from '../errors/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import type { Answer } from './answer.ts';
 import { certified } from './certificate.ts';
+import type { LinearStudy } from './linear-study.ts';
 import type { OutcomeStatus, StudyCommand, StudyOptions } from './outcome.ts';
 import { isExact, prepare } from './prepare.ts';
 import type { StudyResult } from './result.ts';
+import { groupSummary, head } from './summary.ts';
 
 export const VERDICT_STATUS: Readonly<Record<string, OutcomeStatus>> = { generic: 0, 'no event': 0, 'not generic': 1, undecided: 3 };
 
@@ -77,6 +79,8 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
     }
     case 'branches': {
       const [{ linearStudy }, { branchesResult }] = await Promise.all([import('./linear-study.ts'), import('./branches.ts')]);
+      const nothing = nothingAtZero(command, linearStudy(prepared));
+      if (nothing !== undefined) return nothing;
       return { result: await branchesResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
     }
     case 'reduce': {
@@ -85,9 +89,22 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
         return { result: ellipticResult(linearStudy(prepared), declaration.degree), status: 0, notes: [] };
       }
       const [{ linearStudy }, { reduceResult }] = await Promise.all([import('./linear-study.ts'), import('./reduce.ts')]);
+      const nothing = nothingAtZero(command, linearStudy(prepared));
+      if (nothing !== undefined) return nothing;
       return { result: reduceResult(linearStudy(prepared), parameters, declaration.degree), status: 0, notes: [] };
     }
     default:
       throw new UsageError(`the command ${command} is not there`);
   }
+}
+
+/** The answer of `reduce` and `branches` where the Hessian is nonsingular. */
+function nothingAtZero(command: 'reduce' | 'branches', { prepared, action, event }: LinearStudy): Answer | undefined {
+  if (event.dimension > 0) return undefined;
+  const common = head(command, prepared, groupSummary(action, prepared));
+  const result = command === 'reduce' ? { ...common, reduced: null } : { ...common, isotropy: [], branches: [] };
+  const notes = [
+    'The Hessian is nonsingular at these values: no equilibria meet, and there is nothing to reduce. symcodim sweep finds the crossings; reduce --elliptic gives the Birkhoff normal form.',
+  ];
+  return { result, status: 0, notes };
 }

@@ -85,7 +85,7 @@ function subgroupsOf(action: Action): SubgroupClass[] {
 }
 
 /** An element as a word in the generators, rightmost first to act. */
-function elementWords(action: Action): (element: number) => string {
+export function elementWords(action: Action): (element: number) => string {
   const { group } = action;
   return (element) => {
     const letters: string[] = [];

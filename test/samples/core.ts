@@ -122,6 +122,7 @@ function number(value: unknown): number {
 }
 
 const reduced = (value: unknown) => {
+  if (value === null) return null;
   const r = value as Plain;
   return {
     ...pick(r, 'leadingDegree', 'codimension', 'moduli', 'stratumCodimension', 'determinedAt', 'degree', 'generic', 'because', 'kinetic'),
