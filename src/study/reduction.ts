@@ -28,8 +28,8 @@ import {
 const DEGREES = [4, 6, 8, 10];
 /** On kernels of more dimensions the series are cut at degree 6. */
 const WIDE_KERNEL = 3;
-/** Monomials times the degree of the field beyond which a higher degree is not tried by itself: some seconds of work. */
-const TERMS_MOST = 1_000_000;
+/** Terms of an expansion times the degree of the field beyond which the next degree is not tried by itself: some seconds of work. */
+const TERMS_MOST = 30_000;
 /** Phase spaces beyond this dimension are not expanded to high degree. */
 export const REDUCTION_DIMENSION_LIMIT = 40;
 
@@ -131,10 +131,6 @@ interface Expansion<C> {
   readonly embed: (a: Algebraic) => C;
 }
 
-/** Monomials of degree at most d in n variables. */
-const monomialCount = (n: number, d: number): number =>
-  Array.from({ length: d }, (_, i) => (n + i + 1) / (i + 1)).reduce((a, b) => a * b, 1);
-
 function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: number) => Expansion<C>, degree?: number): Reduction<C> {
   const { names, reserved, ...rest } = frame;
   const { action } = frame;
@@ -142,12 +138,7 @@ function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: 
   const n = study.prepared.quantities.names.length + (fixed === undefined ? 0 : fixed.momenta + fixed.gauge);
   const own = polynomialDegree(study.prepared.hamiltonian, new Set(study.prepared.quantities.names));
   let generators = minimalGenerators(action, { reserved });
-  const tried = names.length >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
-  const variables = n + frame.parameters.length;
-  const degrees =
-    degree !== undefined
-      ? [degree]
-      : tried.filter((d) => d === DEGREES[0] || monomialCount(variables, d) * frame.field.degree <= TERMS_MOST);
+  const degrees = degree !== undefined ? [degree] : names.length >= WIDE_KERNEL ? DEGREES.slice(0, 2) : DEGREES;
   for (const d of degrees) {
     if (!generators.complete && generators.upTo < d) generators = minimalGenerators(action, { reserved, degree: d });
     const expansion = expand(d);
@@ -170,7 +161,8 @@ function reduceAndAnalyse<C>(study: LinearStudy, frame: Frame, expand: (degree: 
     const ring = new PolynomialRing<C>(wide.field, names);
     const germ = part(reduced.h, ring, (variables) => variables.every((v) => v < names.length));
     const analysis = analyseGerm({ action, generators, ring, h: germ, degree: d });
-    if (d === degrees.at(-1) || analysis.codimension !== null)
+    const enough = polynomial.monomials.length * frame.field.degree > TERMS_MOST;
+    if (d === degrees.at(-1) || analysis.codimension !== null || enough)
       return { ...rest, generators, reduced, ring, germ, analysis, degree: d, embed, complete: own !== undefined && own <= d };
   }
   throw new Error('no degree was tried');
