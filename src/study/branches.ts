@@ -97,11 +97,16 @@ export async function branchesResult(study: LinearStudy, degree?: number): Promi
   const spectrum = await spectrumOf(study, fixed);
   const branches: BranchSummary[] = [];
   const curves: { name: string; points: { at: number; amplitude: number; stability: Stability }[] }[] = [];
-  diagram.branches.forEach((branch, i) => {
-    const found = confirmBranch(equations, branch);
-    branches.push(...summaries(branch, found, equations, spectrum, prepared.quantities.names));
-    curves.push({ name: `${i + 1}`, points: curve(branch, found, equations, spectrum) });
-  });
+  for (const branch of diagram.branches) {
+    const found: Judged[] = [];
+    for (const c of confirmBranch(equations, branch))
+      found.push({
+        ...c,
+        stability: c.confirmed ? await spectrum(equations.hessian(c.point!, equations.mu + c.step), c.index!) : 'unknown',
+      });
+    branches.push(...summaries(branch, found, prepared.quantities.names));
+    curves.push({ name: `${curves.length + 1}`, points: curve(branch, found) });
+  }
   return {
     ...head('branches', prepared, groupSummary(study.action, prepared)),
     parameter,
@@ -194,18 +199,22 @@ function fullEquations(study: LinearStudy, reduction: Reduction<Algebraic>, para
   };
 }
 
-type Spectrum = (hessian: NumberMatrix, index: number) => Stability;
+type Spectrum = (hessian: NumberMatrix, index: number) => Promise<Stability>;
+/** A confirmation with the stability at the point found. */
+type Judged = Confirmation & { readonly stability: Stability };
 
 /** Stability of an equilibrium with this Hessian, of a relative one modulo the symmetry at fixed momenta: the energy criterion first, then the spectrum of L. */
 async function spectrumOf(study: LinearStudy, fixed: FixedMomenta | undefined): Promise<Spectrum> {
-  const { hamiltonianEigenvalues } = await import('../linear/spectral.ts');
   const { prepared } = study;
   const j = toNumberMatrix(poisson(dense(prepared.form)), prepared.field);
   const onSlice = fixed === undefined ? undefined : await sliceStability(study, fixed);
-  return (hessian, whole) => {
+  return async (hessian, whole) => {
     const slice = onSlice?.(hessian);
     const index = slice?.index ?? whole;
     if (index === 0 || index === (slice?.dimension ?? hessian.rows)) return 'stable';
+    // det S < 0 makes det L < 0: a real pair at least
+    if (index % 2 === 1) return 'unstable';
+    const { hamiltonianEigenvalues } = await import('../linear/spectral.ts');
     const l = slice?.flow() ?? numberMultiply(j, hessian);
     const { values } = hamiltonianEigenvalues(l);
     const size = values.reduce((s, z) => Math.max(s, Math.hypot(z.re, z.im)), 0);
@@ -215,15 +224,9 @@ async function spectrumOf(study: LinearStudy, fixed: FixedMomenta | undefined): 
 
 const rounded = (x: number): number => Math.round(x * 1e9) / 1e9 || 0;
 
-function summaries(
-  branch: Branch,
-  found: readonly Confirmation[],
-  equations: FullEquations,
-  spectrum: Spectrum,
-  names: readonly string[],
-): BranchSummary[] {
+function summaries(branch: Branch, found: readonly Judged[], names: readonly string[]): BranchSummary[] {
   const direction = branch.exactDirection ?? Array.from(branch.direction, rounded);
-  const one = (side: BranchSummary['side'], morseIndex: number | null, c: Confirmation | undefined): BranchSummary => ({
+  const one = (side: BranchSummary['side'], morseIndex: number | null, c: Judged | undefined): BranchSummary => ({
     isotropyOrder: branch.isotropyOrder,
     axial: branch.axial,
     copies: branch.copies,
@@ -232,7 +235,7 @@ function summaries(
     morseIndex,
     confirmed: c?.confirmed ?? false,
     exponent: branch.exponent,
-    stability: c?.confirmed ? spectrum(equations.hessian(c.point!, equations.mu + c.step), c.index!) : 'unknown',
+    stability: c?.stability ?? 'unknown',
     ...(c?.confirmed ? { found: { step: c.step, point: Object.fromEntries(names.map((n, i) => [n, rounded(c.point![i]!)])) } } : {}),
   });
   const index = (s: Branch['sides'][number]) => (s.undecided > 0 ? null : s.negative);
@@ -245,16 +248,10 @@ function summaries(
 }
 
 /** A few points of the predicted curve, the amplitude against μ − μ₀, with the stability found at the confirmed point. */
-function curve(
-  branch: Branch,
-  found: readonly Confirmation[],
-  equations: FullEquations,
-  spectrum: Spectrum,
-): { at: number; amplitude: number; stability: Stability }[] {
+function curve(branch: Branch, found: readonly Judged[]): { at: number; amplitude: number; stability: Stability }[] {
   const out: { at: number; amplitude: number; stability: Stability }[] = [];
   for (const { side } of branch.sides) {
-    const c = found.find((x) => x.side === side);
-    const stability = c?.confirmed ? spectrum(equations.hessian(c.point!, equations.mu + c.step), c.index!) : 'unknown';
+    const stability = found.find((x) => x.side === side)?.stability ?? 'unknown';
     for (let i = 0; i <= 24; i++) {
       const at = (side * i) / 24;
       out.push({ at: rounded(at), amplitude: rounded((Math.abs(at) / Math.abs(branch.coefficient)) ** (1 / branch.power)), stability });
