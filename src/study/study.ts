@@ -73,9 +73,14 @@ async function answerOf(command: StudyCommand, declaration: Declaration, options
       return { result, status: result.equilibrium.holds && result.symmetry.holds ? 0 : 1, notes: [] };
     }
     case 'codim': {
-      const [{ codimResult }, { linearStudy }] = await Promise.all([import('./codim.ts'), import('./linear-study.ts')]);
+      const [{ codimResult }, { linearStudy }, { subgroupRemark }] = await Promise.all([
+        import('./codim.ts'),
+        import('./linear-study.ts'),
+        import('./subgroup-summaries.ts'),
+      ]);
       const result = codimResult(linearStudy(prepared), parameters);
-      return { result, status: VERDICT_STATUS[result.verdict.answer]!, notes: [] };
+      const remark = result.zero === null ? undefined : subgroupRemark(result.group.order, result.zero.subgroups.length);
+      return { result, status: VERDICT_STATUS[result.verdict.answer]!, notes: remark === undefined ? [] : [remark] };
     }
     case 'branches': {
       const [{ linearStudy }, { branchesResult }] = await Promise.all([import('./linear-study.ts'), import('./branches.ts')]);

@@ -3,6 +3,7 @@ import type { Action, SymplecticPart } from '../action/index.ts';
 import { LimitError } from '../errors/index.ts';
 import { type EventBlock, eventCharacters, subgroupCodimensions } from '../event/subgroup-codimension.ts';
 import { motionOf } from '../event/zero-event.ts';
+import { isPrime } from '../field/index.ts';
 import { isSubconjugate, type SubgroupClass, subgroupClasses } from '../group/index.ts';
 import { hessianOf, type LinearStudy } from './linear-study.ts';
 import { type SliceStudy, sliceSubgroups } from './neutral-slice.ts';
@@ -62,6 +63,12 @@ export function continuousSubgroups(study: LinearStudy, slicing: SliceStudy): Su
     motion: motionOf(codimensions[i]!, event.semisimple),
     generators: h.generators.map(words),
   }));
+}
+
+/** A remark where only 1 and Γ are listed though there are others: a group with no other subgroups has prime order. */
+export function subgroupRemark(order: number, listed: number): string | undefined {
+  if (listed !== 2 || isPrime(order)) return undefined;
+  return `The group of order ${order} has too many subgroups to be listed: only the trivial one and the whole group are.`;
 }
 
 /** All classes of subgroups, or only 1 and Γ where there are too many. */
