@@ -35,6 +35,25 @@ function gatheredPlaces(blocks: readonly BlockSpectrum[], tolerance: number): Cl
   return out.map((p) => ({ ...p, exact: null }));
 }
 
+/** Distances up to this many times the tolerance are too near the cut to say that eigenvalues are apart. */
+const NEARLY_EQUAL = 100;
+
+/** A sentence for each pair of places that are neither equal to the tolerance nor clearly apart. */
+function nearlyEqual(places: readonly ClusterPlace[], labels: readonly (readonly string[])[], tolerance: number): string[] {
+  const largest = places.reduce((m, p) => Math.max(m, Math.hypot(p.re, p.im)), 0);
+  const where = (p: ClusterPlace) => [...new Set(p.parts.flatMap((x) => labels[x.block]!))].join(' + ');
+  return places.flatMap((p, i) =>
+    places.slice(i + 1).flatMap((q) => {
+      const apart = Math.hypot(p.re - q.re, p.im - q.im) / largest;
+      if (!(apart <= NEARLY_EQUAL * tolerance)) return [];
+      const at = Math.hypot(p.re, p.im).toPrecision(6);
+      return [
+        `Whether eigenvalues of modulus ${at} meet is open (${where(p)} and ${where(q)} are ${apart.toExponential(1)} apart, relative to the largest, at tolerance ${tolerance.toExponential(0)}).`,
+      ];
+    }),
+  );
+}
+
 /** Collisions, spectrum and stability of a floating model. */
 export function floatingSpectrumSummary(study: FloatingStudy): Required<Pick<CodimResult, 'collisions' | 'spectrum' | 'stability'>> {
   const labels = study.blocks.map((b) => b.components.map((c) => c.label));
@@ -67,7 +86,7 @@ export function floatingSpectrumSummary(study: FloatingStudy): Required<Pick<Cod
     ),
   );
   const sum = (pick: (b: FloatingBlockZero) => number) => study.blocks.reduce((s, b) => s + pick(b) * b.block.copies, 0);
-  const stability = stabilityWords({
+  const words = stabilityWords({
     inertia: {
       positive: sum((b) => b.zero.inertia.positive),
       zero: sum((b) => b.zero.inertia.zero),
@@ -79,5 +98,6 @@ export function floatingSpectrumSummary(study: FloatingStudy): Required<Pick<Cod
     neutral: study.slice?.neutral ?? 0,
     complete,
   });
+  const stability = [words, ...nearlyEqual(places, labels, study.prepared.tolerance)].join(' ');
   return { collisions, spectrum, stability };
 }

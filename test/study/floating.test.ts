@@ -91,11 +91,17 @@ function noisy(model: RandomModel, random: Random, noise: number): Declaration {
   );
 }
 
-describe('200 random models, seed 20261202, noise 1e-9 of the largest entry', () => {
+/** SYMCODIM_FLOATING_MODELS=2000 makes it a long run. */
+const MODELS = Number(process.env.SYMCODIM_FLOATING_MODELS ?? 200);
+
+/** Relative to the largest entry of the Hessian. */
+const NOISE = 1e-9;
+
+describe(`${MODELS} random models, seed 20261202, noise 1e-9 of the largest entry`, () => {
   it('no wrong verdict; what is undecided is counted', () => {
-    const seen = { models: 0, events: 0, undecided: 0, collisions: 0 };
+    const seen = { models: 0, events: 0, undecided: 0, collisions: 0, apart: 0, unexplained: 0, withinNoise: 0 };
     const random = new Random(7);
-    for (let seed = 20261202; seen.models < 200; seed++) {
+    for (let seed = 20261202; seen.models < MODELS; seed++) {
       const model = randomModel(seed);
       // noise on a Hessian that is zero has nothing to be measured against
       if (model === undefined || model.w.rows > 8 || model.s.data.every((x) => model.field.isZero(x))) continue;
@@ -103,7 +109,7 @@ describe('200 random models, seed 20261202, noise 1e-9 of the largest entry', ()
       const act = action(model.field, model.w, model.generators);
       const forms = blockForms(flowBlocks(act, symplecticPart(act)), embedSparse(sparse(model.s), model.field, act.field), act.form);
       const event = zeroEvent(forms, act.field);
-      const linear = floatingStudy(prepare(noisy(model, random, 1e-9)) as NotExact);
+      const linear = floatingStudy(prepare(noisy(model, random, NOISE)) as NotExact);
       const where = `seed ${seed} (${model.spec})`;
       if (linear.blocks.some((b) => b.doubt !== null)) {
         seen.undecided++;
@@ -112,6 +118,14 @@ describe('200 random models, seed 20261202, noise 1e-9 of the largest entry', ()
       const sizes = linear.blocks
         .flatMap((b) => b.counts.flatMap((c, j) => new Array<number>(c * b.block.copies).fill(j)))
         .sort((x, y) => y - x);
+      // an exact Hessian that is singular but for less than ten times the noise cannot be told from one that is
+      const smallest = Math.max(
+        ...linear.blocks.flatMap((b) => b.zero.readings.filter((r) => r.quantity === 'hessian').map((r) => r.zero.at(-1) ?? 0)),
+      );
+      if (sizes.join() !== event.sizes.join() && smallest < 10 * NOISE) {
+        seen.withinNoise++;
+        continue;
+      }
       expect(sizes, where).toEqual(event.sizes);
       expect(
         linear.blocks.reduce((t, b) => t + b.formula!, 0),
@@ -119,8 +133,9 @@ describe('200 random models, seed 20261202, noise 1e-9 of the largest entry', ()
       ).toBe(event.codimension);
       if (event.dimension > 0) seen.events++;
       if (event.dimension <= 8)
+        // where the two routes differ the verdict is undecided
         for (const space of eventSpaces(linear)!)
-          if (doubtOf(space.readings) === null) expect(space.codimension, where).toBe(space.zero.formula);
+          if (space.codimension !== space.zero.formula) seen[doubtOf(space.readings) === null ? 'unexplained' : 'apart']++;
       const places = exactPlaces(forms, act.field);
       const spectrum = floatingSpectrumSummary(linear);
       if (places === undefined || spectrum.stability.includes('open')) continue;
@@ -131,11 +146,15 @@ describe('200 random models, seed 20261202, noise 1e-9 of the largest entry', ()
         where,
       ).toEqual(expected);
     }
-    expect(seen.events).toBeGreaterThan(60);
+    expect(seen.events).toBeGreaterThan(0.3 * MODELS);
     // mostly a whole side of S that is zero but for the noise: it could as well be due to units
-    expect(seen.undecided).toBeLessThan(50);
-    expect(seen.collisions).toBeGreaterThan(100);
-  });
+    expect(seen.undecided).toBeLessThan(0.25 * MODELS);
+    expect(seen.apart).toBeLessThan(0.05 * MODELS);
+    expect(seen.withinNoise).toBeLessThanOrEqual(0.001 * MODELS);
+    expect(seen.unexplained).toBeLessThanOrEqual(0.001 * MODELS);
+    expect(seen.collisions).toBeGreaterThan(0.5 * MODELS);
+    if (MODELS > 200) console.log(seen);
+  }, 900_000);
 });
 
 describe('decisions in floating point', () => {

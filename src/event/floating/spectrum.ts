@@ -162,7 +162,8 @@ function simple(p: Problem, kind: EigenvalueKind, value: ComplexNumber): Spectra
 /** The cluster as one eigenvalue of the given kind and multiplicity; `doubt` where it may yet be one although the answer is no. */
 function attempt(p: Problem, kind: EigenvalueKind, mean: ComplexNumber, expected: number): { cluster: SpectralCluster; doubt: boolean } {
   const value = { re: kind === 'imaginary' ? 0 : mean.re, im: kind === 'real' ? 0 : mean.im };
-  const far = distanceToSpectrum(p, value) > 1000 * p.tolerance * p.scale;
+  // what lies at zero was decided before, and is no part of a cluster off zero
+  const far = Math.hypot(value.re, value.im) <= p.tolerance * p.scale || distanceToSpectrum(p, value) > 1000 * p.tolerance * p.scale;
   const nothing = (): Run<SignedBlocks[]> => ({ answer: [], readings: [], contradiction: null });
   const run = far ? nothing : kind === 'imaginary' ? imaginaryRun(p, value.im) : (t: number) => staircaseRun(p.l, value, p.scale, t);
   const { answer, others, ...decision } = decide(p.tolerance, run, blocksKey);
