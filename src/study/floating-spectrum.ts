@@ -35,17 +35,22 @@ function gatheredPlaces(blocks: readonly BlockSpectrum[], tolerance: number): Cl
   return out.map((p) => ({ ...p, exact: null }));
 }
 
-/** Distances up to this many times the tolerance are too near the cut to say that eigenvalues are apart. */
+/**
+ * Distances up to this many times the tolerance are too near the cut to say that eigenvalues are apart; nor are distances within the
+ * tolerance of the terms of a block, where coordinates are far from orthogonal.
+ */
 const NEARLY_EQUAL = 100;
 
 /** A sentence for each pair of places that are neither equal to the tolerance nor clearly apart. */
-function nearlyEqual(places: readonly ClusterPlace[], labels: readonly (readonly string[])[], tolerance: number): string[] {
+function nearlyEqual(study: FloatingStudy, places: readonly ClusterPlace[], labels: readonly (readonly string[])[]): string[] {
+  const { tolerance } = study.prepared;
   const largest = places.reduce((m, p) => Math.max(m, Math.hypot(p.re, p.im)), 0);
   const where = (p: ClusterPlace) => [...new Set(p.parts.flatMap((x) => labels[x.block]!))].join(' + ');
   return places.flatMap((p, i) =>
     places.slice(i + 1).flatMap((q) => {
       const apart = Math.hypot(p.re - q.re, p.im - q.im) / largest;
-      if (!(apart <= NEARLY_EQUAL * tolerance)) return [];
+      const terms = Math.max(...[...p.parts, ...q.parts].map((x) => study.blocks[x.block]!.scale)) / largest;
+      if (!(apart <= tolerance * Math.max(NEARLY_EQUAL, terms))) return [];
       const at = Math.hypot(p.re, p.im).toPrecision(6);
       return [
         `Whether eigenvalues of modulus ${at} meet is open (${where(p)} and ${where(q)} are ${apart.toExponential(1)} apart, relative to the largest, at tolerance ${tolerance.toExponential(0)}).`,
@@ -98,6 +103,6 @@ export function floatingSpectrumSummary(study: FloatingStudy): Required<Pick<Cod
     neutral: study.slice?.neutral ?? 0,
     complete,
   });
-  const stability = [words, ...nearlyEqual(places, labels, study.prepared.tolerance)].join(' ');
+  const stability = [words, ...nearlyEqual(study, places, labels)].join(' ');
   return { collisions, spectrum, stability };
 }
