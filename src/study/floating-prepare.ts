@@ -3,7 +3,7 @@
  * Newton's method inside the fixed space of the group, and the invariance of H within the tolerance.
  */
 import { type Action, type Components, makeAction, signOf, withCharacters } from '../action/index.ts';
-import { InputError, NotAnEquilibriumError, NotInvariantError } from '../errors/index.ts';
+import { InputError, NotAGroupError, NotAnEquilibriumError, NotInvariantError } from '../errors/index.ts';
 import { DEFAULT_TOLERANCE } from '../event/floating/readings.ts';
 import { largestEntry, type NumberMatrix, numberCombine, numberMatrix } from '../linear/index.ts';
 import { symmetricEigen } from '../linear/spectral.ts';
@@ -46,6 +46,8 @@ export interface FloatingPrepared {
   readonly generators: readonly GeneratorCheck[];
   /** Absent where a generator is neither symplectic nor antisymplectic. */
   readonly action?: Action;
+  /** Generators of no finite group declare no symmetry, whatever each of them keeps. */
+  readonly notAGroup?: NotAGroupError;
   readonly components?: Components;
   readonly equilibrium: FloatingEquilibrium;
   readonly hessian: NumberMatrix;
@@ -161,6 +163,23 @@ function branchDerivatives(source: NotExact, values: ReadonlyMap<string, number>
   return source.declaration.vary.map((v) => Float64Array.from(gradients, (g) => g?.[parameters.indexOf(v)] ?? 0));
 }
 
+/** The action of the declared group, or why the generators make none. */
+function groupAction({ field, form, generators }: NotExact['quantities'], orderLimit: number | undefined): Action | NotAGroupError {
+  try {
+    return withCharacters(
+      makeAction(
+        field,
+        form,
+        generators.map((g) => ({ name: g.name, matrix: g.matrix })),
+        orderLimit,
+      ),
+    );
+  } catch (error) {
+    if (error instanceof NotAGroupError) return error;
+    throw error;
+  }
+}
+
 /** Reads a floating model. Throws InputError for what cannot be read; checks that fail are recorded. */
 export function prepareFloating(source: NotExact): FloatingPrepared {
   const { declaration, quantities, because } = source;
@@ -180,16 +199,9 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
   const energy = energyOf(source, values);
   const n = quantities.names.length;
   const signs = quantities.generators.map((g) => signOf(g.matrix, form));
-  const action = signs.includes(undefined)
-    ? undefined
-    : withCharacters(
-        makeAction(
-          field,
-          form,
-          quantities.generators.map((g) => ({ name: g.name, matrix: g.matrix })),
-          declaration.orderLimit,
-        ),
-      );
+  const group = signs.includes(undefined) ? undefined : groupAction(quantities, declaration.orderLimit);
+  const notAGroup = group instanceof NotAGroupError ? group : undefined;
+  const action = group instanceof NotAGroupError ? undefined : group;
   const components = action === undefined ? undefined : labelledComponents(declaration, action);
   const declared = Float64Array.from(quantities.point, (x) => field.toNumber(x));
   const plain = action === undefined ? undefined : numericAction(action, new Float64Array(n).fill(1));
@@ -264,12 +276,14 @@ export function prepareFloating(source: NotExact): FloatingPrepared {
     local,
     ...(neutral === undefined ? {} : { neutral }),
     branch: branchDerivatives(source, values),
-    symmetryHolds: generators.every((g) => g.reason === undefined),
+    ...(notAGroup === undefined ? {} : { notAGroup }),
+    symmetryHolds: notAGroup === undefined && generators.every((g) => g.reason === undefined),
   };
 }
 
 /** Stops where the model is not what it claims, with the words of `check`. */
 export function requireFloatingHolds(p: FloatingPrepared): asserts p is FloatingPrepared & { action: Action; components: Components } {
+  if (p.notAGroup !== undefined) throw p.notAGroup;
   const file = p.source.declaration.source;
   const next = 'see all of it with symcodim check';
   const bad = p.generators.find((g) => g.reason !== undefined);

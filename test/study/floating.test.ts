@@ -176,6 +176,18 @@ describe('decisions in floating point', () => {
     expect((close.result as CodimResult).verdict.because).toMatch(/\d\.\de-[78].*tolerance/);
     expect((close.result as CodimResult).zero?.codimension ?? null).toBeNull();
   });
+  it('generators of no finite group: check answers no, codim stops', async () => {
+    const d = floating(
+      text(
+        'coordinates: [q1, q2]\nmomenta: [p1, p2]\nhamiltonian: (p1^2+p2^2+q1^2+q2^2)/2\nsymmetry: {generators: [{name: r, matrix: [[3/5,-4/5,0,0],[4/5,3/5,0,0],[0,0,3/5,-4/5],[0,0,4/5,3/5]]}]}\n',
+      ),
+    );
+    for (const each of [d, { ...d, numbers: 'exact' as const }]) {
+      const { result, status } = await study('check', each);
+      expect([status, result.symmetry.holds, result.group.order]).toEqual([1, false, 0]);
+    }
+    await expect(codim(d)).rejects.toThrow(/infinite group/);
+  });
   it('a larger tolerance decides the same model', async () => {
     const d = floating({ ...text(RING), parameters: new Map([...text(RING).parameters, ['c', '-0.3333332']]) });
     const r = await codim({ ...d, tolerance: '1e-3' });
