@@ -14,7 +14,7 @@ export function polynomialDegree(e: Expression, names: ReadonlySet<string>): num
       case 'symbol':
         return names.has(x.name) ? 1 : 0;
       case 'sum':
-        return parts.some((p) => p === undefined) ? undefined : (parts as number[]).reduce((a, b) => (b > a ? b : a), 0);
+        return parts.some((p) => p === undefined) ? undefined : (parts as number[]).reduce((a, b) => Math.max(b, a), 0);
       case 'negate':
         return parts[0];
       case 'product':

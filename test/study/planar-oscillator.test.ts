@@ -70,7 +70,7 @@ describe('planar oscillator under D3', () => {
     expect(y.group).toEqual(x.group);
   });
   it('the mirror x ↦ −x breaks Re z³ and is refused', async () => {
-    await expect(codim(r + `    - {name: m, map: {q1: -q1}}\n`)).rejects.toThrow(/not invariant under m/);
+    await expect(codim(`${r}    - {name: m, map: {q1: -q1}}\n`)).rejects.toThrow(/not invariant under m/);
   });
   it('invariants: Molien series, 3 and 4 generators, H = ½I3 + μ/2 I1 + a I4 + b I1² with remainder 0', async () => {
     const x = (await study('invariants', model(r + s))).result as InvariantsResult;
