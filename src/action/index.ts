@@ -15,3 +15,4 @@ export * from './slice-blocks.ts';
 export * from './slice-rotations.ts';
 export * from './subspace-search.ts';
 export * from './symmetry-class.ts';
+export * from './value-table.ts';

@@ -101,11 +101,13 @@ export function irreduciblesOf(action: Action, part: RestrictedGroup): Irreducib
   const cyclotomic = part.table.field;
   const m = multiplicities(action, part);
   const out: Irreducible[] = [];
+  const moved = new Map<Algebraic, Algebraic>();
   part.irreducibles.forEach((k, i) => {
     if (m[i] === 0) return;
     const character = k.character.map((v) => {
-      const x = f.fromCyclotomic(cyclotomic, v);
-      if (x === undefined) throw new Error(`a character value ${cyclotomic.format(v)} does not lie in ${f.name}`);
+      const x = moved.get(v) ?? f.fromCyclotomic(cyclotomic, v);
+      if (x !== undefined) moved.set(v, x);
+      else throw new Error(`a character value ${cyclotomic.format(v)} does not lie in ${f.name}`);
       return x;
     });
     out.push({

@@ -16,7 +16,7 @@ import {
 } from '../linear/index.ts';
 import { ModularSpan, modularVector } from './modular-span.ts';
 import { cutProjector, type OrbitVectors, orbitsOf, type Represented } from './seed-orbits.ts';
-import type { Cutter } from './subspace-search.ts';
+import { type Cutter, smallProduct } from './subspace-search.ts';
 
 /** An irreducible as the construction needs it. */
 export interface PresentIrreducible {
@@ -97,11 +97,11 @@ export function multiplicityBasis(rep: Represented, present: readonly PresentIrr
 /** Bases made so far: the flow and the components often ask for the same ones. */
 const bases = new WeakMap<Represented, Map<string, Matrix<Algebraic>>>();
 
-/** Coefficients c and elements x of Σ c ρ(x) with one basis vector: a column of a basis. */
+/** A column of a basis: coefficients and the vectors of an orbit that they belong to. */
 interface Recipe {
   readonly orbit: OrbitVectors;
-  /** Elements, in the order of `coefficients`. */
-  readonly images: readonly number[];
+  /** Numbers of vectors of the orbit, in the order of `coefficients`. */
+  readonly images: Int32Array;
   readonly coefficients: readonly Algebraic[];
 }
 
@@ -118,14 +118,16 @@ function findRecipes(rep: Represented, irreducible: PresentIrreducible, expected
   const span = new ModularSpan(dimension, p);
   const scratch = new Int32Array(dimension);
   const step = strideOf(group.order);
+  const product = smallProduct(group);
   const out: Recipe[] = [];
   for (const patience of [PATIENCE, group.order])
     for (const orbit of orbits)
       for (let i = 0, g = 0, failures = 0; i < group.order && failures < patience; i++, g = (g + step) % group.order) {
         if (out.length === expected) return out;
-        const images = support.map((x) => group.multiply(x, g));
+        const images = new Int32Array(support.length);
         scratch.fill(0);
         for (let q = 0; q < images.length; q++) {
+          images[q] = orbit.of[product(support[q]!, g)]!;
           const v = orbit.modular[images[q]!]!;
           for (let j = 0; j < v.length; j += 2) scratch[v[j]!] = mulAddMod(scratch[v[j]!]!, reduced[q]!, v[j + 1]!, p);
         }
@@ -140,15 +142,19 @@ function findRecipes(rep: Represented, irreducible: PresentIrreducible, expected
 
 function makeBasis(rep: Represented, irreducible: PresentIrreducible, expected: number, cutter: Cutter): Matrix<Algebraic> {
   const f = rep.field;
+  const { values } = orbitsOf(rep);
   const columns = findRecipes(rep, irreducible, expected, cutter).map(({ orbit, images, coefficients }) => {
-    const column = new Array<Algebraic>(rep.dimension).fill(f.zero);
-    images.forEach((y, q) => {
-      const { at, value } = orbit.exact[y]!;
-      at.forEach((j, l) => {
-        column[j] = f.add(column[j]!, f.mul(coefficients[q]!, value[l]!));
-      });
-    });
-    return column;
+    const numbers = coefficients.map((x) => values.number(x));
+    const places: number[] = [];
+    const terms: number[] = [];
+    for (let q = 0; q < images.length; q++) {
+      const v = orbit.exact[images[q]!]!;
+      for (let l = 0; l < v.length; l += 2) {
+        places.push(v[l]!);
+        terms.push(values.mul(numbers[q]!, v[l + 1]!));
+      }
+    }
+    return values.sums(rep.dimension, places, terms);
   });
   return tidy(fromColumns(f, columns, rep.dimension), f);
 }
@@ -160,30 +166,17 @@ export function numericMultiplicityColumns(
   k: number,
   cutter: Cutter,
 ): Float64Array[] {
-  const f = rep.field;
   const recipes = findRecipes(rep, present[k]!, present[k]!.multiplicity * cutter.dimensions[k]!, cutter);
+  const { values } = orbitsOf(rep);
   return recipes.map(({ orbit, images, coefficients }) => {
-    const values = numbersOf(orbit, f);
     const column = new Float64Array(rep.dimension);
     for (let q = 0; q < images.length; q++) {
-      const { at } = orbit.exact[images[q]!]!;
-      const value = values[images[q]!]!;
-      const c = f.toNumber(coefficients[q]!);
-      for (let l = 0; l < at.length; l++) column[at[l]!]! += c * value[l]!;
+      const v = orbit.exact[images[q]!]!;
+      const c = values.double(values.number(coefficients[q]!));
+      for (let l = 0; l < v.length; l += 2) column[v[l]!]! += c * values.double(v[l + 1]!);
     }
     return column;
   });
-}
-
-const orbitNumbers = new WeakMap<OrbitVectors, readonly Float64Array[]>();
-
-function numbersOf(orbit: OrbitVectors, f: RealField): readonly Float64Array[] {
-  let out = orbitNumbers.get(orbit);
-  if (out === undefined) {
-    out = orbit.exact.map(({ value }) => Float64Array.from(value, (x) => f.toNumber(x)));
-    orbitNumbers.set(orbit, out);
-  }
-  return out;
 }
 
 /** A step that visits all elements, far apart: neighbours in the numbering tend to give the same vector again. */
@@ -198,16 +191,19 @@ export function tidy(basis: Matrix<Algebraic>, field: RealField): Matrix<Algebra
   const columns: Algebraic[][] = [];
   for (let j = 0; j < basis.cols; j++) {
     let common = 1n;
-    let content = 0n;
     const col: Algebraic[] = [];
     for (let i = 0; i < basis.rows; i++) {
       const x = basis.data[i * basis.cols + j]!;
       col.push(x);
-      if (x.d !== 1n) common = lcm(common, x.d);
+      if (x.d !== 1n && common % x.d !== 0n) common = lcm(common, x.d);
     }
-    const cleared = common === 1n ? col : col.map((x) => field.mul(x, field.fromInteger(common)));
-    for (const x of cleared) for (const y of x.c) if (y !== 0n) content = gcd(content, y);
-    columns.push(content > 1n ? cleared.map((x) => field.mul(x, field.fromRational(1n, content))) : cleared);
+    let content = 0n;
+    const cleared = common === 1n ? col : col.map((x) => (x === field.zero ? x : { c: x.c.map((y) => y * (common / x.d)), d: 1n }));
+    for (const x of cleared) {
+      if (content === 1n) break;
+      if (x !== field.zero) for (const y of x.c) if (y !== 0n) content = gcd(content, y);
+    }
+    columns.push(content > 1n ? cleared.map((x) => (x === field.zero ? x : { c: x.c.map((y) => y / content), d: 1n })) : cleared);
   }
   return fromColumns(field, columns, basis.rows);
 }

@@ -9,6 +9,7 @@ import { type Algebraic, mulAddMod, type RealField } from '../field/index.ts';
 import { closeGroup, type FiniteGroup, type Permutation } from '../group/index.ts';
 import type { SparseMatrix } from '../linear/index.ts';
 import { ModularSpan, type ModularVector } from './modular-span.ts';
+import { ValueTable } from './value-table.ts';
 
 /** Multiply-adds that the test of the span may take; beyond, every basis vector starts an orbit unless it lies in one. */
 export const SPAN_WORK = 30_000_000;
@@ -51,9 +52,31 @@ export function groupOfMatrices(
       }
     }
   }
-  proveExactly(field, columns, seeds, images, points.list.length, limit);
+  const values = new ValueTable(field);
+  const exact = proveExactly(values, columns, seeds, images, points.list.length, limit);
   const permutations: Permutation[] = images.map((row) => Int32Array.from(row));
-  return closeGroup(permutations, points.list.length, limit);
+  const group = closeGroup(permutations, points.list.length, limit);
+  pointsOfGroups.set(group, { matrices: generators, values, exact, modular: points.list, first: new Map(seeds) });
+  return group;
+}
+
+/** What the elements of a group of matrices permute: vectors of orbits of basis vectors. */
+export interface VectorPoints {
+  /** The generators; all entries are in the field of the values. */
+  readonly matrices: readonly SparseMatrix<Algebraic>[];
+  readonly values: ValueTable;
+  /** By point the nonzero entries: place, number of the value, …, places increasing. */
+  readonly exact: readonly Int32Array[];
+  readonly modular: readonly ModularVector[];
+  /** The point that is the basis vector of a seed. */
+  readonly first: ReadonlyMap<number, number>;
+}
+
+const pointsOfGroups = new WeakMap<FiniteGroup, VectorPoints>();
+
+/** The points of a group that `groupOfMatrices` made. */
+export function vectorPoints(group: FiniteGroup): VectorPoints | undefined {
+  return pointsOfGroups.get(group);
 }
 
 interface ExactColumn {
@@ -72,42 +95,61 @@ function exactColumns(a: SparseMatrix<Algebraic>, n: number): ExactColumn[] {
   return out;
 }
 
-/** The same walk in exact arithmetic: every arrow found modulo p must hold exactly. */
+/** The same walk in exact arithmetic: every arrow found modulo p must hold exactly. The vectors of the points. */
 function proveExactly(
-  field: RealField,
+  values: ValueTable,
   columns: readonly (readonly ExactColumn[])[],
   seeds: readonly (readonly [seed: number, first: number])[],
   images: readonly (readonly number[])[],
   count: number,
   limit: number,
-): void {
-  const exact = new Array<Map<number, Algebraic> | undefined>(count);
-  for (const [seed, first] of seeds) exact[first] = new Map([[seed, field.one]]);
+): Int32Array[] {
+  const dimension = columns[0]?.length ?? 0;
+  const numbered = columns.map((list) => list.map(({ at, value }) => ({ at, value: value.map((x) => values.number(x)) })));
+  const exact = new Array<Int32Array | undefined>(count);
+  const sum = new Int32Array(dimension); // numbers of values; that of zero is 0
+  const touched = new Uint8Array(dimension);
+  for (const [seed, first] of seeds) exact[first] = Int32Array.of(seed, values.number(values.field.one));
   for (let i = 0; i < count; i++)
-    columns.forEach((list, g) => {
-      const w = new Map<number, Algebraic>();
-      for (const [j, y] of exact[i]!) {
-        const { at, value } = list[j]!;
-        at.forEach((r, k) => {
-          const t = y === field.one ? value[k]! : field.mul(value[k]!, y);
-          const old = w.get(r);
-          w.set(r, old === undefined ? t : field.add(old, t));
-        });
+    for (let g = 0; g < numbered.length; g++) {
+      const v = exact[i]!;
+      const list = numbered[g]!;
+      const places: number[] = [];
+      for (let q = 0; q < v.length; q += 2) {
+        const { at, value } = list[v[q]!]!;
+        for (let k = 0; k < at.length; k++) {
+          const r = at[k]!;
+          if (touched[r] === 0) {
+            touched[r] = 1;
+            places.push(r);
+          }
+          sum[r] = values.add(sum[r]!, values.mul(value[k]!, v[q + 1]!));
+        }
       }
-      for (const [r, x] of w) if (field.isZero(x)) w.delete(r);
-      const k = images[g]![i]!;
-      const known = exact[k];
-      if (known === undefined) {
-        exact[k] = w;
-        return;
+      places.sort((a, b) => a - b);
+      let size = 0;
+      for (const r of places) if (sum[r] !== 0) size += 2;
+      const w = new Int32Array(size);
+      let end = 0;
+      for (const r of places) {
+        if (sum[r] !== 0) {
+          w[end++] = r;
+          w[end++] = sum[r]!;
+        }
+        sum[r] = 0;
+        touched[r] = 0;
       }
-      let same = known.size === w.size;
-      for (const [r, x] of w) {
-        const y = known.get(r);
-        same &&= y !== undefined && field.equal(x, y);
-      }
-      if (!same) throw tooLarge(limit);
-    });
+      const known = exact[images[g]![i]!];
+      if (known === undefined) exact[images[g]![i]!] = w;
+      else if (!sameEntries(known, w)) throw tooLarge(limit);
+    }
+  return exact as Int32Array[];
+}
+
+function sameEntries(a: Int32Array, b: Int32Array): boolean {
+  if (a.length !== b.length) return false;
+  for (let i = 0; i < a.length; i++) if (a[i] !== b[i]) return false;
+  return true;
 }
 
 /** Vectors with their numbers. */

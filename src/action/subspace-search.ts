@@ -4,7 +4,7 @@
  * best possible is β(K), the dimension of the commuting algebra. Working on eV instead of V is the Morita
  * equivalence between the block of the group algebra and its corner (common practice: symmetry-adapted bases).
  */
-import type { FiniteGroup } from '../group/index.ts';
+import { type FiniteGroup, productOf } from '../group/index.ts';
 
 /** A subgroup with a real linear character. */
 export interface Cutter {
@@ -14,6 +14,16 @@ export interface Cutter {
   readonly signs: readonly (1 | -1)[];
   /** dim eK for each irreducible asked for. */
   readonly dimensions: readonly number[];
+}
+
+type Product = (i: number, j: number) => number;
+
+/** Up to this order a table of all products costs less than looking for products one by one. */
+const TABLE_ORDER = 256;
+
+/** The product of element numbers, from a table where the group is small. */
+export function smallProduct(group: FiniteGroup): Product {
+  return group.order <= TABLE_ORDER ? productOf(group) : (i, j) => group.multiply(i, j);
 }
 
 /** What the search needs of an irreducible: its real character by class in doubles (integers decide), β, multiplicity. */
@@ -28,25 +38,33 @@ export const SUBGROUP_LIMIT = 2000;
 /** At most this many second generators are tried beside each class representative. */
 export const SECOND_GENERATORS = 24;
 
-function generated(group: FiniteGroup, generators: readonly number[]): { elements: number[]; words: number[][] } | undefined {
-  const seen = new Map<number, number>([[0, 0]]);
+/** ⟨generators⟩ by generator and earlier element; undefined if it is too large or, but for `whole`, if it is all of the group. */
+function generated(
+  group: FiniteGroup,
+  generators: readonly number[],
+  product: Product,
+  whole: boolean,
+): { elements: number[]; words: number[][] } | undefined {
+  const most = whole ? SUBGROUP_LIMIT : Math.min(SUBGROUP_LIMIT, group.order >> 1);
+  const seen = new Uint8Array(group.order);
+  seen[0] = 1;
   const elements = [0];
   const words: number[][] = [[]];
   for (let i = 0; i < elements.length; i++)
     for (let s = 0; s < generators.length; s++) {
-      const x = group.multiply(generators[s]!, elements[i]!);
-      if (seen.has(x)) continue;
-      seen.set(x, elements.length);
+      const x = product(generators[s]!, elements[i]!);
+      if (seen[x] === 1) continue;
+      seen[x] = 1;
       elements.push(x);
       words.push([s, i]);
-      if (elements.length > SUBGROUP_LIMIT) return undefined;
+      if (elements.length > most) return undefined;
     }
   return { elements, words };
 }
 
 /** The real linear characters of ⟨generators⟩ as sign lists along `elements`. */
 function realCharacters(
-  group: FiniteGroup,
+  product: Product,
   generators: readonly number[],
   elements: readonly number[],
   words: readonly number[][],
@@ -57,7 +75,7 @@ function realCharacters(
     const sign = (s: number): 1 | -1 => (mask & (1 << s) ? -1 : 1);
     const values: (1 | -1)[] = [1];
     for (let i = 1; i < elements.length; i++) values.push((sign(words[i]![0]!) * values[words[i]![1]!]!) as 1 | -1);
-    const good = elements.every((e, i) => generators.every((g, s) => values[position.get(group.multiply(g, e))!] === sign(s) * values[i]!));
+    const good = elements.every((e, i) => generators.every((g, s) => values[position.get(product(g, e))!] === sign(s) * values[i]!));
     if (good) out.push(values);
   }
   return out;
@@ -68,8 +86,9 @@ export function findCutters(group: FiniteGroup, irreducibles: readonly SearchedI
   const n = irreducibles.length;
   const best: Array<{ cutter: Cutter; total: number } | undefined> = new Array(n).fill(undefined);
   const seen = new Set<string>();
-  const consider = (generators: readonly number[]) => {
-    const closed = generated(group, generators);
+  const product = smallProduct(group);
+  const consider = (generators: readonly number[], whole = false) => {
+    const closed = generated(group, generators, product, whole);
     if (closed === undefined) return;
     const { elements, words } = closed;
     const key = elements
@@ -78,7 +97,7 @@ export function findCutters(group: FiniteGroup, irreducibles: readonly SearchedI
       .join(',');
     if (seen.has(key)) return;
     seen.add(key);
-    for (const signs of realCharacters(group, generators, elements, words)) {
+    for (const signs of realCharacters(product, generators, elements, words)) {
       const weights = new Float64Array(group.classes.length);
       elements.forEach((e, i) => {
         const c = group.classOf[e]!;
@@ -108,7 +127,8 @@ export function findCutters(group: FiniteGroup, irreducibles: readonly SearchedI
         b.cutter.dimensions[k] === irreducibles[k]!.beta &&
         b.total <= 4 * irreducibles[k]!.beta * irreducibles[k]!.multiplicity,
     );
-  if (group.order <= SUBGROUP_LIMIT) consider(group.generators);
+  // the whole group is considered here once; later it is not even generated
+  if (group.order <= SUBGROUP_LIMIT) consider(group.generators, true);
   consider([]);
   const representatives = group.classes.map((c) => c.representative);
   for (const x of representatives) consider([x]);

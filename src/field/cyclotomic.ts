@@ -101,8 +101,10 @@ export class CyclotomicField extends AbelianField {
   /** Smallest d dividing N such that all the given elements lie in Q(zeta_d). */
   leastConductor(elements: readonly Algebraic[]): number {
     const n = this.conductor;
+    const irrational = [...new Set(elements)].filter((a) => this.toRational(a) === undefined);
+    if (irrational.length === 0) return 1;
     return (
-      divisors(n).find((d) => this.units.every((k) => (k - 1) % d !== 0 || elements.every((a) => this.equal(this.galois(k, a), a)))) ?? n
+      divisors(n).find((d) => this.units.every((k) => (k - 1) % d !== 0 || irrational.every((a) => this.equal(this.galois(k, a), a)))) ?? n
     );
   }
 

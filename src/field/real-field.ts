@@ -246,6 +246,8 @@ export class RealField extends AbelianField implements OrderedField<Algebraic> {
 
   /** The real element of a cyclotomic field, or undefined if it is not real or not in here. */
   fromCyclotomic(from: CyclotomicField, a: Algebraic): Algebraic | undefined {
+    const ratio = from.toRational(a);
+    if (ratio !== undefined) return this.fromRational(ratio.n, ratio.d);
     if (!from.equal(a, from.conj(a))) return undefined;
     // a = (a + conj a)/2 = sum of c_k cos(2 pi k/n), each term replaced by its mean in the least field that holds a
     const d = from.leastConductor([a]);

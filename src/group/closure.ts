@@ -65,7 +65,8 @@ export function closeGroup(generators: readonly Permutation[], degree: number, l
       for (const a of active) {
         const g = generators[a]!;
         const row = start * degree;
-        for (let x = 0; x < degree; x++) product[x] = g[store.images[row + x]!]!;
+        const { images } = store;
+        for (let x = 0; x < degree; x++) product[x] = g[images[row + x]!]!;
         if (store.find(product) < 0) addCoset(a, start, size);
       }
   }

@@ -22,7 +22,8 @@ import {
 } from '../linear/index.ts';
 import type { Declaration } from './declaration/declaration.ts';
 import { type Expression, exactValue } from './expression/index.ts';
-import { atPoint, breaksForm, derivativeAlong, type EnergySeries, type VectorField } from './neutral.ts';
+import { atPoint, breaksForm, derivativeAlong, type EnergySeries } from './neutral.ts';
+import type { VectorField } from './vector-field.ts';
 
 /** Up to this dimension of the phase space all affine fields are tried. */
 export const ALL_FIELDS_LIMIT = 12;

@@ -17,8 +17,8 @@ import {
   withField,
 } from './expression/index.ts';
 import { type ModelGenerator, modelGenerators } from './generators.ts';
-import { declaredFields, type VectorField } from './neutral.ts';
 import { numericValue } from './numeric-value.ts';
+import { declaredFields, type VectorField } from './vector-field.ts';
 
 /** The exact part of a model. */
 export interface Quantities {

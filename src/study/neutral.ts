@@ -5,9 +5,10 @@ import type { Algebraic, RealField } from '../field/index.ts';
 import { dense, inverse, rank, type SparseMatrix, sparse, sparseApply, sparseMultiply } from '../linear/index.ts';
 import type { Declaration } from '../model/declaration/index.ts';
 import { type Expression, parseExpression, substituteSymbols } from '../model/expression/index.ts';
-import { atPoint, energySeries, fieldText, requireSymmetry, type VectorField } from '../model/neutral.ts';
+import { atPoint, energySeries, fieldText, requireSymmetry } from '../model/neutral.ts';
 import { findFields } from '../model/neutral-find.ts';
 import type { Quantities } from '../model/quantities.ts';
+import type { VectorField } from '../model/vector-field.ts';
 
 export interface NeutralSymmetry {
   /** About the equilibrium. */
