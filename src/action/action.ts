@@ -5,16 +5,9 @@
 import { NotSymplecticError } from '../errors/index.ts';
 import type { Algebraic, RealField } from '../field/index.ts';
 import type { FiniteGroup } from '../group/index.ts';
-import {
-  type SparseMatrix,
-  sparseCongruence,
-  sparseEquals,
-  sparseIdentity,
-  sparseMultiply,
-  sparseScale,
-  sparseTrace,
-} from '../linear/index.ts';
+import { type SparseMatrix, sparseCongruence, sparseEquals, sparseIdentity, sparseScale, sparseTrace } from '../linear/index.ts';
 import { groupOfMatrices } from './orbit.ts';
+import { multiplyNumbered, type NumberedMatrix, numberedMatrix, sparseOfNumbers, ValueTable } from './value-table.ts';
 
 export interface ActionGenerator {
   readonly name: string;
@@ -84,20 +77,28 @@ export function assembleAction(
   const signs = new Int8Array(group.order);
   signs[0] = 1;
   for (let i = 1; i < group.order; i++) signs[i] = (generators[group.via[i]!]!.sign * signs[group.parent[i]!]!) as 1 | -1;
-  const cache = new Map<number, SparseMatrix<Algebraic>>([[0, sparseIdentity(field, form.rows)]]);
+  const values = new ValueTable(field);
+  const numbered = new Map<number, NumberedMatrix>([[0, numberedMatrix(sparseIdentity(field, form.rows), values)]]);
+  const factors: (NumberedMatrix | undefined)[] = [];
+  const factor = (i: number) => (factors[i] ??= numberedMatrix(generators[i]!.matrix, values));
+  const cache = new Map<number, SparseMatrix<Algebraic>>();
   const matrix = (element: number): SparseMatrix<Algebraic> => {
+    let out = cache.get(element);
+    if (out !== undefined) return out;
     const chain: number[] = [];
     let i = element;
-    while (!cache.has(i)) {
+    while (!numbered.has(i)) {
       chain.push(i);
       i = group.parent[i]!;
     }
-    let m = cache.get(i)!;
+    let m = numbered.get(i)!;
     for (const j of chain.reverse()) {
-      m = sparseMultiply(generators[group.via[j]!]!.matrix, m);
-      cache.set(j, m);
+      m = multiplyNumbered(factor(group.via[j]!), m, values);
+      numbered.set(j, m);
     }
-    return m;
+    out = sparseOfNumbers(m, values);
+    cache.set(element, out);
+    return out;
   };
   let traces: readonly Algebraic[] | undefined;
   return {

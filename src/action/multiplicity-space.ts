@@ -17,6 +17,7 @@ import {
 import { ModularSpan, modularVector } from './modular-span.ts';
 import { cutProjector, type OrbitVectors, orbitsOf, type Represented } from './seed-orbits.ts';
 import { type Cutter, smallProduct } from './subspace-search.ts';
+import type { ValueTable } from './value-table.ts';
 
 /** An irreducible as the construction needs it. */
 export interface PresentIrreducible {
@@ -97,54 +98,75 @@ export function multiplicityBasis(rep: Represented, present: readonly PresentIrr
 /** Bases made so far: the flow and the components often ask for the same ones. */
 const bases = new WeakMap<Represented, Map<string, Matrix<Algebraic>>>();
 
-/** A column of a basis: coefficients and the vectors of an orbit that they belong to. */
-interface Recipe {
-  readonly orbit: OrbitVectors;
-  /** Numbers of vectors of the orbit, in the order of `coefficients`. */
-  readonly images: Int32Array;
+/** Columns of a basis: sums of vectors of an orbit with the same coefficients, still to be carried out. */
+interface Recipes {
   readonly coefficients: readonly Algebraic[];
+  /** For each column the numbers of vectors of the orbit, in the order of `coefficients`. */
+  readonly columns: readonly { readonly orbit: OrbitVectors; readonly images: Int32Array }[];
 }
 
-/** `expected` independent images of basis vectors under e P_K ρ(g), as sums still to be carried out. */
-function findRecipes(rep: Represented, irreducible: PresentIrreducible, expected: number, cutter: Cutter): Recipe[] {
+/** `expected` independent images of basis vectors under e P_K ρ(g). */
+function findRecipes(rep: Represented, irreducible: PresentIrreducible, expected: number, cutter: Cutter): Recipes {
   const f = rep.field;
   const { group, dimension } = rep;
   const { orbits, reduction } = orbitsOf(rep);
   const { p } = reduction;
   const all = cutProjector(group, irreducible.character, cutter, f);
-  const support = all.map((_, x) => x).filter((x) => !f.isZero(all[x]!));
-  const coefficients = support.map((x) => all[x]!);
-  const reduced = coefficients.map((x) => reduction.apply(x));
+  const support = Int32Array.from(all.keys()).filter((x) => !f.isZero(all[x]!));
+  const coefficients = Array.from(support, (x) => all[x]!);
+  const residues = new Map<Algebraic, number>();
+  for (const c of coefficients) if (!residues.has(c)) residues.set(c, reduction.apply(c));
+  const reduced = Int32Array.from(coefficients, (c) => residues.get(c)!);
   const span = new ModularSpan(dimension, p);
   const scratch = new Int32Array(dimension);
+  const weights = new Int32Array(group.order); // by vector of the orbit
   const step = strideOf(group.order);
   const product = smallProduct(group);
-  const out: Recipe[] = [];
+  const columns: { orbit: OrbitVectors; images: Int32Array }[] = [];
   for (const patience of [PATIENCE, group.order])
     for (const orbit of orbits)
       for (let i = 0, g = 0, failures = 0; i < group.order && failures < patience; i++, g = (g + step) % group.order) {
-        if (out.length === expected) return out;
+        if (columns.length === expected) return { coefficients, columns };
         const images = new Int32Array(support.length);
         scratch.fill(0);
         for (let q = 0; q < images.length; q++) {
-          images[q] = orbit.of[product(support[q]!, g)]!;
-          const v = orbit.modular[images[q]!]!;
-          for (let j = 0; j < v.length; j += 2) scratch[v[j]!] = mulAddMod(scratch[v[j]!]!, reduced[q]!, v[j + 1]!, p);
+          const k = orbit.of[product(support[q]!, g)]!;
+          images[q] = k;
+          const sum = weights[k]! - p + reduced[q]!;
+          weights[k] = sum < 0 ? sum + p : sum;
+        }
+        for (let k = 0; k < orbit.modular.length; k++) {
+          const weight = weights[k]!;
+          if (weight === 0) continue;
+          weights[k] = 0;
+          const v = orbit.modular[k]!;
+          for (let j = 0; j < v.length; j += 2) scratch[v[j]!] = mulAddMod(scratch[v[j]!]!, weight, v[j + 1]!, p);
         }
         if (span.add(modularVector(scratch))) {
           failures = 0;
-          out.push({ orbit, images, coefficients });
+          columns.push({ orbit, images });
         } else failures++;
       }
-  if (out.length === expected) return out;
-  throw new Error(`a multiplicity space has dimension ${out.length}, its character says ${expected}`);
+  if (columns.length === expected) return { coefficients, columns };
+  throw new Error(`a multiplicity space has dimension ${columns.length}, its character says ${expected}`);
+}
+
+/** Numbers of the coefficients of recipes. */
+function numbered(values: ValueTable, coefficients: readonly Algebraic[]): number[] {
+  const known = new Map<Algebraic, number>();
+  return coefficients.map((c) => {
+    let k = known.get(c);
+    if (k === undefined) known.set(c, (k = values.number(c)));
+    return k;
+  });
 }
 
 function makeBasis(rep: Represented, irreducible: PresentIrreducible, expected: number, cutter: Cutter): Matrix<Algebraic> {
-  const f = rep.field;
+  const { field, dimension } = rep;
   const { values } = orbitsOf(rep);
-  const columns = findRecipes(rep, irreducible, expected, cutter).map(({ orbit, images, coefficients }) => {
-    const numbers = coefficients.map((x) => values.number(x));
+  const recipes = findRecipes(rep, irreducible, expected, cutter);
+  const numbers = numbered(values, recipes.coefficients);
+  const columns = recipes.columns.map(({ orbit, images }) => {
     const places: number[] = [];
     const terms: number[] = [];
     for (let q = 0; q < images.length; q++) {
@@ -154,9 +176,9 @@ function makeBasis(rep: Represented, irreducible: PresentIrreducible, expected: 
         terms.push(values.mul(numbers[q]!, v[l + 1]!));
       }
     }
-    return values.sums(rep.dimension, places, terms);
+    return values.sums(dimension, places, terms);
   });
-  return tidy(fromColumns(f, columns, rep.dimension), f);
+  return tidy(fromColumns(field, columns, dimension), field);
 }
 
 /** The columns of `multiplicityBasis` in doubles, each up to a factor; which ones are independent is decided exactly. */
@@ -166,13 +188,14 @@ export function numericMultiplicityColumns(
   k: number,
   cutter: Cutter,
 ): Float64Array[] {
-  const recipes = findRecipes(rep, present[k]!, present[k]!.multiplicity * cutter.dimensions[k]!, cutter);
   const { values } = orbitsOf(rep);
-  return recipes.map(({ orbit, images, coefficients }) => {
+  const { coefficients, columns } = findRecipes(rep, present[k]!, present[k]!.multiplicity * cutter.dimensions[k]!, cutter);
+  const factors = Float64Array.from(numbered(values, coefficients), (c) => values.double(c));
+  return columns.map(({ orbit, images }) => {
     const column = new Float64Array(rep.dimension);
     for (let q = 0; q < images.length; q++) {
       const v = orbit.exact[images[q]!]!;
-      const c = values.double(values.number(coefficients[q]!));
+      const c = factors[q]!;
       for (let l = 0; l < v.length; l += 2) column[v[l]!]! += c * values.double(v[l + 1]!);
     }
     return column;

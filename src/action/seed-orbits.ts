@@ -53,16 +53,22 @@ function pointsOf(action: Action, { group, inclusion }: RestrictedGroup): Vector
   return group === action.group || group.generators.every(same) ? points : undefined;
 }
 
-/** Coefficients by element of e P_K up to a factor, Σ_h λ(h) χ(h⁻¹x); P_K is the projector onto the component of K. */
+/**
+ * Coefficients by element of e P_K up to a factor, c(x) = Σ_h λ(h) χ(h⁻¹x); P_K is the projector onto the component of K.
+ * One for each coset of H: c(hx) = λ(h) c(x).
+ */
 export function cutProjector(group: FiniteGroup, character: readonly Algebraic[], cutter: Cutter, f: RealField): Algebraic[] {
   const known = new Map<string, Algebraic>();
   const counts = new Int32Array(group.classes.length);
-  const inverses = cutter.elements.map((h) => group.inverse(h));
+  const { elements, signs } = cutter;
+  const inverses = elements.map((h) => group.inverse(h));
   const { classOf } = group;
   const product = smallProduct(group);
-  return Array.from({ length: group.order }, (_, x) => {
+  const out = new Array<Algebraic | undefined>(group.order).fill(undefined);
+  for (let x = 0; x < group.order; x++) {
+    if (out[x] !== undefined) continue;
     counts.fill(0);
-    for (let i = 0; i < inverses.length; i++) counts[classOf[product(inverses[i]!, x)]!]! += cutter.signs[i]!;
+    for (let i = 0; i < inverses.length; i++) counts[classOf[product(inverses[i]!, x)]!]! += signs[i]!;
     const key = counts.join();
     let sum = known.get(key);
     if (sum === undefined) {
@@ -70,8 +76,10 @@ export function cutProjector(group: FiniteGroup, character: readonly Algebraic[]
       for (let c = 0; c < counts.length; c++) if (counts[c] !== 0) sum = f.add(sum, f.mul(f.fromInteger(counts[c]!), character[c]!));
       known.set(key, sum);
     }
-    return sum;
-  });
+    const minus = f.isZero(sum) ? sum : f.neg(sum);
+    for (let i = 0; i < elements.length; i++) out[product(elements[i]!, x)] = signs[i] === 1 ? sum : minus;
+  }
+  return out as Algebraic[];
 }
 
 /** The images of one basis vector under all elements. */

@@ -3,6 +3,7 @@
  * sum is computed once and looked up afterwards.
  */
 import { type Algebraic, gcd, type RealField } from '../field/index.ts';
+import type { SparseMatrix } from '../linear/index.ts';
 
 /** A pair of numbers below this is one key. */
 const WIDTH = 2 ** 26;
@@ -99,4 +100,53 @@ export class ValueTable {
       return row.every((x) => x === 0) ? zero : this.field.element(Array.from(row, BigInt), denominator);
     });
   }
+}
+
+/** A sparse matrix with the numbers of its values. */
+export interface NumberedMatrix {
+  readonly index: readonly (readonly number[])[];
+  readonly numbers: readonly (readonly number[])[];
+}
+
+export function numberedMatrix(a: SparseMatrix<Algebraic>, values: ValueTable): NumberedMatrix {
+  return { index: a.index, numbers: a.value.map((row) => row.map((x) => values.number(x))) };
+}
+
+/** The product of two square matrices of the same size. */
+export function multiplyNumbered(a: NumberedMatrix, b: NumberedMatrix, values: ValueTable): NumberedMatrix {
+  const n = a.index.length;
+  const sum = new Int32Array(n);
+  const index: number[][] = [];
+  const numbers: number[][] = [];
+  for (let i = 0; i < n; i++) {
+    const cols = a.index[i]!;
+    const places: number[] = [];
+    for (let k = 0; k < cols.length; k++) {
+      const x = a.numbers[i]![k]!;
+      const row = b.index[cols[k]!]!;
+      const entries = b.numbers[cols[k]!]!;
+      for (let q = 0; q < row.length; q++) {
+        const j = row[q]!;
+        if (sum[j] === 0) places.push(j); // again, if terms have cancelled here: left out below
+        sum[j] = values.add(sum[j]!, values.mul(x, entries[q]!));
+      }
+    }
+    places.sort((s, t) => s - t);
+    const own: number[] = [];
+    const found: number[] = [];
+    for (const j of places) {
+      if (sum[j] === 0) continue;
+      own.push(j);
+      found.push(sum[j]!);
+      sum[j] = 0;
+    }
+    index.push(own);
+    numbers.push(found);
+  }
+  return { index, numbers };
+}
+
+export function sparseOfNumbers(a: NumberedMatrix, values: ValueTable): SparseMatrix<Algebraic> {
+  const n = a.index.length;
+  return { field: values.field, rows: n, cols: n, index: a.index, value: a.numbers.map((row) => row.map((k) => values.values[k]!)) };
 }

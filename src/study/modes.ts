@@ -71,30 +71,58 @@ export function normalModes(
   const irreducibles = components.present.map((c) => c.irreducible);
   const cutters = findCutters(group, irreducibles);
   const rep = representedBy(action, components.whole);
+  const k = formRows(stiffness);
+  const m = mass === undefined ? undefined : formRows(mass);
   return components.present.map((component, i): ComponentModes => {
     const { irreducible, label } = component;
     const cut = cutters[i]!.dimensions[i]!;
     const columns = orthonormalColumns(numericMultiplicityColumns(rep, irreducibles, i, cutters[i]!));
-    const block = restricted(stiffness, columns);
-    const values = mass === undefined ? symmetricEigenvalues(block) : pencilEigenvalues(block, restricted(mass, columns));
+    const block = restricted(k, columns);
+    const values = m === undefined ? symmetricEigenvalues(block) : pencilEigenvalues(block, restricted(m, columns));
     return {
       label,
       dimension: irreducible.dimension,
       type: irreducible.type,
       multiplicity: irreducible.multiplicity,
       // each value occurs `cut` times on the cut space; the mean of those is the better value
-      squares: Float64Array.from({ length: irreducible.multiplicity }, (_, k) => {
+      squares: Float64Array.from({ length: irreducible.multiplicity }, (_, i) => {
         let sum = 0;
-        for (let j = 0; j < cut; j++) sum += values[k * cut + j]!;
+        for (let j = 0; j < cut; j++) sum += values[i * cut + j]!;
         return sum / cut;
       }),
     };
   });
 }
 
+/** The nonzero entries of a form: row i holds value[k] in column[k] for start[i] <= k < start[i + 1]. */
+interface FormRows {
+  readonly start: Int32Array;
+  readonly column: Int32Array;
+  readonly value: Float64Array;
+}
+
+function formRows({ rows: n, data }: NumberMatrix): FormRows {
+  let count = 0;
+  for (let i = 0; i < data.length; i++) if (data[i] !== 0) count++;
+  const start = new Int32Array(n + 1);
+  const column = new Int32Array(count);
+  const value = new Float64Array(count);
+  let end = 0;
+  for (let i = 0, at = 0; i < n; i++) {
+    for (let j = 0; j < n; j++, at++) {
+      const x = data[at]!;
+      if (x === 0) continue;
+      column[end] = j;
+      value[end++] = x;
+    }
+    start[i + 1] = end;
+  }
+  return { start, column, value };
+}
+
 /** Values of a symmetric form on columns. */
-function restricted(form: NumberMatrix, columns: readonly Float64Array[]): NumberMatrix {
-  const n = form.rows;
+function restricted({ start, column, value }: FormRows, columns: readonly Float64Array[]): NumberMatrix {
+  const n = start.length - 1;
   const u = columns.length;
   const out = new Float64Array(u * u);
   const image = new Float64Array(n);
@@ -104,7 +132,8 @@ function restricted(form: NumberMatrix, columns: readonly Float64Array[]): Numbe
     for (let k = 0; k < n; k++) {
       const x = v[k]!;
       if (x === 0) continue;
-      for (let j = 0, at = k * n; j < n; j++, at++) image[j]! += x * form.data[at]!;
+      const end = start[k + 1]!;
+      for (let q = start[k]!; q < end; q++) image[column[q]!]! += x * value[q]!;
     }
     for (let b = 0; b <= a; b++) {
       const w = columns[b]!;
