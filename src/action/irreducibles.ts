@@ -73,12 +73,9 @@ export function tracesOn(action: Action, part: RestrictedGroup): Algebraic[] {
 /** Multiplicity of each real irreducible of the part in V, by rounding inner products; proved by `irreduciblesOf`. */
 function multiplicities(action: Action, part: RestrictedGroup): number[] {
   const traces = tracesOn(action, part).map((x) => action.field.toNumber(x));
-  const { field } = part.table;
   return part.irreducibles.map((k) => {
     let s = 0;
-    k.character.forEach((v, c) => {
-      s += part.group.classes[c]!.size * traces[c]! * field.toComplex(v).re;
-    });
+    for (let c = 0; c < traces.length; c++) s += part.group.classes[c]!.size * traces[c]! * k.values[c]!;
     return Math.round(s / part.group.order / k.beta);
   });
 }

@@ -4,6 +4,21 @@ import { invMod, mulAddMod } from '../field/index.ts';
 /** Nonzero entries of a vector modulo p: places in increasing order, each followed by its value. */
 export type ModularVector = Int32Array;
 
+/** dense += g v modulo p for g in [0, p): mulAddMod with its quotient taken once. */
+export function addMultipleInPlace(dense: Int32Array, v: ModularVector, g: number, p: number): void {
+  const w = (g / p) * (1 - 2 ** -50);
+  for (let q = 0; q < v.length; q += 2) {
+    const i = v[q]!;
+    const x = v[q + 1]!;
+    let r = (Math.imul(g, x) - Math.imul((x * w) | 0, p)) | 0;
+    r = (r - p) | 0;
+    r += p & (r >> 31);
+    r = ((r | 0) - p + dense[i]!) | 0;
+    r += p & (r >> 31);
+    dense[i] = r;
+  }
+}
+
 /** A growing subspace of GF(p)^n in echelon form. With a bound on the work it stops growing when that is used up. */
 export class ModularSpan {
   readonly #rows: Array<ModularVector | undefined>;
@@ -30,8 +45,7 @@ export class ModularSpan {
         if (lead < 0) lead = j;
         continue;
       }
-      const g = this.#p - w[j]!;
-      for (let q = 0; q < r.length; q += 2) w[r[q]!] = mulAddMod(w[r[q]!]!, g, r[q + 1]!, this.#p);
+      addMultipleInPlace(w, r, this.#p - w[j]!, this.#p);
       this.#work += r.length;
     }
     return lead;
@@ -39,17 +53,21 @@ export class ModularSpan {
   get #full(): boolean {
     return this.#rank === this.#rows.length;
   }
+  /** Whether the bound on the work was reached, so that it stopped growing. */
+  get exhausted(): boolean {
+    return this.#work > this.#most;
+  }
   /** Whether v lies in it; false where that is not known any more. */
   contains(v: ModularVector): boolean {
     if (this.#full) return true;
-    if (this.#work > this.#most) return false;
+    if (this.exhausted) return false;
     const lead = this.#reduceInPlace(v);
     this.#scratch.fill(0);
     return lead < 0;
   }
   /** True if the subspace grew. */
   add(v: ModularVector): boolean {
-    if (this.#full || this.#work > this.#most) return false;
+    if (this.#full || this.exhausted) return false;
     const w = this.#scratch;
     const lead = this.#reduceInPlace(v);
     if (lead >= 0) {

@@ -2,7 +2,7 @@
  * Multiplicity spaces: for each irreducible K of a subgroup acting on V an exact basis of e V_K (see
  * subspace-search.ts). The forms S and ω restricted to it carry all that happens on the component of K.
  */
-import { type Algebraic, gcd, mulAddMod, type RealField } from '../field/index.ts';
+import { type Algebraic, gcd, type RealField } from '../field/index.ts';
 import {
   build,
   fromColumns,
@@ -14,7 +14,7 @@ import {
   type SparseMatrix,
   sparseFromMaps,
 } from '../linear/index.ts';
-import { ModularSpan, modularVector } from './modular-span.ts';
+import { addMultipleInPlace, ModularSpan, modularVector } from './modular-span.ts';
 import { cutProjector, type OrbitVectors, orbitsOf, type Represented } from './seed-orbits.ts';
 import { type Cutter, smallProduct } from './subspace-search.ts';
 import type { ValueTable } from './value-table.ts';
@@ -139,8 +139,7 @@ function findRecipes(rep: Represented, irreducible: PresentIrreducible, expected
           const weight = weights[k]!;
           if (weight === 0) continue;
           weights[k] = 0;
-          const v = orbit.modular[k]!;
-          for (let j = 0; j < v.length; j += 2) scratch[v[j]!] = mulAddMod(scratch[v[j]!]!, weight, v[j + 1]!, p);
+          addMultipleInPlace(scratch, orbit.modular[k]!, weight, p);
         }
         if (span.add(modularVector(scratch))) {
           failures = 0;

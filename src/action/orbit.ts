@@ -56,20 +56,32 @@ export function groupOfMatrices(
   const exact = proveExactly(values, columns, seeds, images, points.list.length, limit);
   const permutations: Permutation[] = images.map((row) => Int32Array.from(row));
   const group = closeGroup(permutations, points.list.length, limit);
-  pointsOfGroups.set(group, { matrices: generators, values, exact, modular: points.list, first: new Map(seeds) });
+  pointsOfGroups.set(group, {
+    order: group.order,
+    matrices: generators,
+    values,
+    exact,
+    modular: points.list,
+    first: new Map(seeds),
+    spanned: !span.exhausted,
+  });
   return group;
 }
 
 /** What the elements of a group of matrices permute: vectors of orbits of basis vectors. */
 export interface VectorPoints {
+  /** Order of the group. */
+  readonly order: number;
   /** The generators; all entries are in the field of the values. */
   readonly matrices: readonly SparseMatrix<Algebraic>[];
   readonly values: ValueTable;
   /** By point the nonzero entries: place, number of the value, …, places increasing. */
   readonly exact: readonly Int32Array[];
   readonly modular: readonly ModularVector[];
-  /** The point that is the basis vector of a seed. */
+  /** The point that is the basis vector of a seed, seeds increasing. */
   readonly first: ReadonlyMap<number, number>;
+  /** True if each seed is known to lie outside the span of the orbits before it. */
+  readonly spanned: boolean;
 }
 
 const pointsOfGroups = new WeakMap<FiniteGroup, VectorPoints>();

@@ -1,6 +1,7 @@
 /** Bilinear forms on the columns of a basis. What is asked for again on the same matrices is remembered. */
 import { type Algebraic, gcd, type RealField } from '../field/index.ts';
 import { type Matrix, multiply, type SparseMatrix, sparseTimes, transpose } from '../linear/index.ts';
+import { integerCongruence } from './integer-form.ts';
 
 /** A form times its common denominator, so that its entries are integral over the basis of the field. */
 interface Cleared {
@@ -36,7 +37,11 @@ export function restrictForm(basis: Matrix<Algebraic>, form: SparseMatrix<Algebr
   if (out === undefined) {
     const { integral, denominator } = cleared(form);
     const f = basis.field as RealField;
-    const raw = multiply(transpose(basis), sparseTimes(integral, basis));
+    const data = integerCongruence(basis, integral, f);
+    const raw =
+      data === undefined
+        ? multiply(transpose(basis), sparseTimes(integral, basis))
+        : { field: basis.field, rows: basis.cols, cols: basis.cols, data };
     out = denominator === 1n ? raw : { ...raw, data: raw.data.map((x) => f.element(x.c, x.d * denominator)) };
     known.set(form, out);
   }

@@ -114,8 +114,10 @@ function makeOrbits(rep: Represented): SeedOrbits {
   const f = rep.field;
   const { group, dimension } = rep;
   const reduction = f.reduction();
-  const span = new ModularSpan(dimension, reduction.p, SPAN_WORK);
   const { points } = rep;
+  if (points?.spanned && points.order === group.order)
+    return { reduction, values: points.values, orbits: Array.from(points.first.values(), (first) => knownOrbit(group, points, first)) };
+  const span = new ModularSpan(dimension, reduction.p, SPAN_WORK);
   const values = points?.values ?? new ValueTable(f);
   const walk = lazily(() => walker(rep, values, reduction));
   const orbits: OrbitVectors[] = [];

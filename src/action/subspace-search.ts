@@ -69,13 +69,16 @@ function realCharacters(
   elements: readonly number[],
   words: readonly number[][],
 ): (1 | -1)[][] {
-  const position = new Map(elements.map((e, i) => [e, i]));
+  const position: number[] = [];
+  elements.forEach((e, i) => {
+    position[e] = i;
+  });
   const out: (1 | -1)[][] = [];
   for (let mask = 0; mask < 1 << generators.length; mask++) {
     const sign = (s: number): 1 | -1 => (mask & (1 << s) ? -1 : 1);
     const values: (1 | -1)[] = [1];
     for (let i = 1; i < elements.length; i++) values.push((sign(words[i]![0]!) * values[words[i]![1]!]!) as 1 | -1);
-    const good = elements.every((e, i) => generators.every((g, s) => values[position.get(product(g, e))!] === sign(s) * values[i]!));
+    const good = elements.every((e, i) => generators.every((g, s) => values[position[product(g, e)]!] === sign(s) * values[i]!));
     if (good) out.push(values);
   }
   return out;
@@ -91,10 +94,7 @@ export function findCutters(group: FiniteGroup, irreducibles: readonly SearchedI
     const closed = generated(group, generators, product, whole);
     if (closed === undefined) return;
     const { elements, words } = closed;
-    const key = elements
-      .slice()
-      .sort((a, b) => a - b)
-      .join(',');
+    const key = Int32Array.from(elements).sort().join(',');
     if (seen.has(key)) return;
     seen.add(key);
     for (const signs of realCharacters(product, generators, elements, words)) {

@@ -71,19 +71,32 @@ export function sparseTranspose<T>(a: SparseMatrix<T>): SparseMatrix<T> {
 export function sparseMultiply<T>(a: SparseMatrix<T>, b: SparseMatrix<T>): SparseMatrix<T> {
   if (a.cols !== b.rows) throw new ShapeError(`${a.rows} x ${a.cols} times ${b.rows} x ${b.cols}`);
   const f = a.field;
-  const maps = a.index.map((cols, i) => {
-    const m = new Map<number, T>();
-    cols.forEach((j, k) => {
-      const x = a.value[i]![k]!;
-      b.index[j]!.forEach((l, q) => {
-        const t = f.mul(x, b.value[j]![q]!);
-        const old = m.get(l);
-        m.set(l, old === undefined ? t : f.add(old, t));
-      });
-    });
-    return m;
-  });
-  return sparseFromMaps(f, b.cols, maps);
+  const index: (readonly number[])[] = [];
+  const value: (readonly T[])[] = [];
+  for (let i = 0; i < a.rows; i++) {
+    const cols = a.index[i]!;
+    const vals = a.value[i]!;
+    if (cols.length === 1) {
+      const x = vals[0]!;
+      index.push(b.index[cols[0]!]!);
+      value.push(b.value[cols[0]!]!.map((y) => f.mul(x, y)));
+      continue;
+    }
+    const sum = new Map<number, T>();
+    for (let k = 0; k < cols.length; k++) {
+      const row = b.index[cols[k]!]!;
+      const entries = b.value[cols[k]!]!;
+      for (let q = 0; q < row.length; q++) {
+        const t = f.mul(vals[k]!, entries[q]!);
+        const old = sum.get(row[q]!);
+        sum.set(row[q]!, old === undefined ? t : f.add(old, t));
+      }
+    }
+    const keys = [...sum.keys()].filter((j) => !f.isZero(sum.get(j)!)).sort((s, t) => s - t);
+    index.push(keys);
+    value.push(keys.map((j) => sum.get(j)!));
+  }
+  return { field: f, rows: a.rows, cols: b.cols, index, value };
 }
 
 export function sparseApply<T>(a: SparseMatrix<T>, v: readonly T[]): T[] {
