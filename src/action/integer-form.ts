@@ -52,22 +52,40 @@ export function integerCongruence(basis: Matrix<Algebraic>, form: SparseMatrix<A
   let terms = degree * degree * n;
   for (const x of structure) terms = Math.max(terms, degree * degree * n * Math.abs(x));
   if (!(terms * b.largest * terms * values.largest * b.largest <= Number.MAX_SAFE_INTEGER)) return undefined;
+  const places = nonzeroPlaces(b.entries, n, u, degree);
   const image = new Float64Array(n * u * degree);
   for (let i = 0, at = 0; i < n; i++)
     for (const k of form.index[i]!) {
-      for (let j = 0; j < u; j++)
+      for (const j of places[k]!)
         addProductInPlace(image, (i * u + j) * degree, values.entries, at, b.entries, (k * u + j) * degree, structure, degree);
       at += degree;
     }
   const out = new Float64Array(u * u * degree);
+  const imagePlaces = nonzeroPlaces(image, n, u, degree);
   for (let k = 0; k < n; k++)
-    for (let i = 0; i < u; i++)
-      for (let j = 0; j < u; j++)
+    for (const i of places[k]!)
+      for (const j of imagePlaces[k]!)
         addProductInPlace(out, (i * u + j) * degree, b.entries, (k * u + i) * degree, image, (k * u + j) * degree, structure, degree);
   return Array.from({ length: u * u }, (_, k) => {
     const c = out.subarray(k * degree, (k + 1) * degree);
     return c.every((x) => x === 0) ? f.zero : { c: Array.from(c, BigInt), d: 1n };
   });
+}
+
+/** For each row of an n × u matrix the columns that are not zero. */
+function nonzeroPlaces(entries: Float64Array, n: number, u: number, degree: number): number[][] {
+  const out: number[][] = [];
+  for (let i = 0, at = 0; i < n; i++) {
+    const row: number[] = [];
+    for (let j = 0; j < u; j++, at += degree)
+      for (let l = 0; l < degree; l++)
+        if (entries[at + l] !== 0) {
+          row.push(j);
+          break;
+        }
+    out.push(row);
+  }
+  return out;
 }
 
 /** out += x y; the elements start at the given places. */
