@@ -1,3 +1,4 @@
+/** Continuous symmetries as affine vector fields ξ(x) = Ax + b, as a declaration gives them. */
 import type { Algebraic, RealField } from '../field/index.ts';
 import { type SparseMatrix, sparseFromMaps } from '../linear/index.ts';
 import type { Declaration } from './declaration/declaration.ts';
