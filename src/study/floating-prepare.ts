@@ -3,7 +3,7 @@
  * Newton's method inside the fixed space of the group, and the invariance of H within the tolerance.
  */
 import { type Action, type Components, makeAction, signOf, withCharacters } from '../action/index.ts';
-import { InputError, NotAGroupError, NotAnEquilibriumError, NotInvariantError } from '../errors/index.ts';
+import { InputError, NotAGroupError, NotAnEquilibriumError } from '../errors/index.ts';
 import { DEFAULT_TOLERANCE } from '../event/floating/readings.ts';
 import { largestEntry, type NumberMatrix, numberCombine, numberMatrix } from '../linear/index.ts';
 import { symmetricEigen } from '../linear/spectral.ts';
@@ -22,7 +22,7 @@ import {
 } from './floating-action.ts';
 import { labelledComponents } from './labels.ts';
 import { type FloatingNeutral, floatingNeutral } from './neutral-floating.ts';
-import { formFailure, type GeneratorCheck, type NotExact } from './prepare.ts';
+import { formFailure, type GeneratorCheck, type NotExact, requireGenerators } from './prepare.ts';
 
 /** A declared point that polishing moves by more than this share of 1 + |x| is not near an equilibrium. */
 export const LONGEST_STEP = 1e-2;
@@ -286,16 +286,7 @@ export function requireFloatingHolds(p: FloatingPrepared): asserts p is Floating
   if (p.notAGroup !== undefined) throw p.notAGroup;
   const file = p.source.declaration.source;
   const next = 'see all of it with symcodim check';
-  const bad = p.generators.find((g) => g.reason !== undefined);
-  if (bad !== undefined)
-    throw new NotInvariantError(bad.reason!, {
-      file,
-      key: bad.where,
-      value: bad.name,
-      expected:
-        bad.sign === undefined ? 'ρᵀWρ = W, or ρᵀWρ = −W for a generator that reverses time' : 'a generator that leaves H invariant',
-      next,
-    });
+  requireGenerators(p.generators, file, next);
   const e = p.equilibrium;
   if (!e.holds)
     throw new NotAnEquilibriumError(

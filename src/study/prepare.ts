@@ -235,20 +235,24 @@ function quadraticDifference(name: string, image: SparseMatrix<Algebraic>, s: Sp
   return `H is not invariant under ${name}`;
 }
 
+/** Throws NotInvariantError for the first generator that fails. */
+export function requireGenerators(generators: readonly GeneratorCheck[], file: Declaration['source'], next: string): void {
+  const bad = generators.find((g) => g.reason !== undefined);
+  if (bad === undefined) return;
+  throw new NotInvariantError(bad.reason!, {
+    file,
+    key: bad.where,
+    value: bad.name,
+    expected: bad.sign === undefined ? 'ρᵀWρ = W, or ρᵀWρ = −W for a generator that reverses time' : 'a generator that leaves H invariant',
+    next,
+  });
+}
+
 /** Stops where the model is not what it claims, with the words of `check`. */
 export function requireHolds(p: Prepared): void {
   const file = p.declaration.source;
   const next = 'see all of it with symcodim check';
-  const bad = p.generators.find((g) => g.reason !== undefined);
-  if (bad !== undefined)
-    throw new NotInvariantError(bad.reason!, {
-      file,
-      key: bad.where,
-      value: bad.name,
-      expected:
-        bad.sign === undefined ? 'ρᵀWρ = W, or ρᵀWρ = −W for a generator that reverses time' : 'a generator that leaves H invariant',
-      next,
-    });
+  requireGenerators(p.generators, file, next);
   if (!p.equilibriumHolds) {
     const i = p.local.gradient.findIndex((x) => !p.field.isZero(x));
     throw new NotAnEquilibriumError(

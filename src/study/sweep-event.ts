@@ -16,7 +16,8 @@ import { linearStudy } from './linear-study.ts';
 import { isExact, prepare } from './prepare.ts';
 import type { InertiaSummary, Motion } from './result.ts';
 import type { BlocksAt } from './sweep-curve.ts';
-import { declarationAt, type SweepFamily } from './sweep-family.ts';
+import type { SweepFamily } from './sweep-family.ts';
+import { declarationAt } from './sweep-range.ts';
 import { blockEigenvalues, type Place, placeNearZero } from './sweep-spectrum.ts';
 
 export interface ActiveBlock {

@@ -18,8 +18,8 @@ import {
   symplecticPart,
   withCharacters,
 } from '../action/index.ts';
-import { InputError, NotInvariantError, UsageError } from '../errors/index.ts';
-import { type Algebraic, type Rational, RealField, rational, rationals } from '../field/index.ts';
+import { InputError, NotInvariantError } from '../errors/index.ts';
+import { type Algebraic, RealField } from '../field/index.ts';
 import {
   type Matrix,
   type NumberMatrix,
@@ -35,33 +35,17 @@ import { energyExpression, floatingSource } from '../model/energy.ts';
 import {
   compileNumeric,
   type Expression,
-  exactValue,
   parseExpression,
   resolveDefinitions,
   substituteSymbols,
   symbolsOf,
-  Transcendental,
   taylor,
-  withField,
 } from '../model/expression/index.ts';
-import { type Quantities, rationalNear, readQuantities } from '../model/quantities.ts';
+import { type Quantities, readQuantities } from '../model/quantities.ts';
 import { factorsOf, type Polynomial, type PolynomialRing, type Univariate, UnivariateRing } from '../polynomial/index.ts';
 import { labelledComponents } from './labels.ts';
 import { fixedSpace } from './linear-study.ts';
-
-/** Values of the parameter at which the curves of a picture are computed, where nothing else is said. */
-export const DEFAULT_STEPS = 200;
-
-/** Where a parameter goes. */
-export interface Range {
-  readonly parameter: string;
-  readonly from: number;
-  readonly to: number;
-  /** The ends exactly, or the doubles as fractions. */
-  readonly low: Rational;
-  readonly high: Rational;
-  readonly steps: number;
-}
+import { declarationAt, formatRational, type Range, readRanges } from './sweep-range.ts';
 
 /** S(μ) = Σ μᵏ coefficients[k] / denominator(μ), exactly. */
 export interface RationalFamily {
@@ -104,56 +88,6 @@ export interface SweepFamily {
   readonly because: string | undefined;
   /** Relative to the scale of S, where its numbers carry errors of their own; absent where only rounding is at stake. */
   readonly tolerance?: number;
-}
-
-/** The same declaration with another value of a parameter. */
-export function declarationAt(declaration: Declaration, values: ReadonlyMap<string, string>): Declaration {
-  return {
-    ...declaration,
-    parameters: new Map([...declaration.parameters, ...values]),
-    unset: declaration.unset.filter((name) => !values.has(name)),
-  };
-}
-
-/** Reads the ranges of a declaration. Throws UsageError where there is none, InputError for what cannot be read. */
-export function readRanges(declaration: Declaration): Range[] {
-  if (declaration.range.size === 0) {
-    const name = declaration.vary[0] ?? [...declaration.parameters.keys(), ...declaration.unset][0];
-    throw new UsageError('sweep needs a range for a parameter', {
-      key: '--range',
-      expected: 'NAME=FROM:TO, or range in the model file',
-      next: name === undefined ? 'the model has no parameter' : `add --range ${name}=-1:1`,
-    });
-  }
-  const ranges = [...declaration.range].map(([parameter, { from, to, steps }]): Range => {
-    const end = (text: string, side: string) => readEnd(declaration, parameter, text, side);
-    const [low, high] = [end(from, 'from'), end(to, 'to')];
-    if (rationals.compare(low, high) >= 0)
-      throw new InputError(`the range of ${parameter} is empty`, {
-        file: declaration.source,
-        key: `range.${parameter}`,
-        value: `${from}, ${to}`,
-        expected: 'a lower end before a higher one',
-      });
-    return { parameter, from: rationals.toNumber(low), to: rationals.toNumber(high), low, high, steps: steps ?? DEFAULT_STEPS };
-  });
-  const first = ranges.findIndex((r) => declaration.vary.includes(r.parameter));
-  return first <= 0 ? ranges : [ranges[first]!, ...ranges.filter((_, i) => i !== first)];
-}
-
-function readEnd(declaration: Declaration, parameter: string, text: string, side: string): Rational {
-  const where = { file: declaration.source, key: `range.${parameter}.${side}` };
-  const e = parseExpression(text, where);
-  try {
-    const { field, result } = withField((f) => exactValue(e, undefined, f));
-    if (result.c.every((c, i) => i === 0 || c === 0n)) return rational(result.c[0]!, result.d);
-    const near = rationalNear(field.toNumber(result), RealField.of());
-    return rational(near.c[0]!, near.d);
-  } catch (error) {
-    if (!(error instanceof Transcendental)) throw error;
-    const near = rationalNear(compileNumeric(e, [])([]), RealField.of());
-    return rational(near.c[0]!, near.d);
-  }
 }
 
 /** Stands for H where the energy is evaluated from matrices of doubles. */
@@ -262,10 +196,6 @@ export function familyWithEnergy(frame: SweepFamily, declaration: Declaration, r
   requireInvariant(family, frame.action, declaration);
   const others = resolveDefinitions(new Map([...quantities.valueExpressions].filter(([k]) => k !== range.parameter)));
   return { ...frame, declaration, range, ranges: [range], hamiltonian: substituteSymbols(h, others), rational: family };
-}
-
-export function formatRational(x: Rational): string {
-  return x.d === 1n ? `${x.n}` : `${x.n}/${x.d}`;
 }
 
 function requireDeclaredSigns(quantities: Quantities, action: Action, declaration: Declaration): void {

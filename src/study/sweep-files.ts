@@ -16,8 +16,9 @@ import type { InertiaSummary } from './result.ts';
 import type { Tracked } from './sweep-collisions.ts';
 import { type BlocksAt, blockEvaluator, type Curve, type CurvePoint } from './sweep-curve.ts';
 import { exactEvent, floatingEvent, inertiaAt } from './sweep-event.ts';
-import { declarationAt, familyWithEnergy, type Range, readRanges, type SweepFamily, sweepFamily } from './sweep-family.ts';
+import { familyWithEnergy, type SweepFamily, sweepFamily } from './sweep-family.ts';
 import { type FloatingMatrices, floatingMatrices, isPiecewiseLinear } from './sweep-matrices.ts';
+import { declarationAt, type Range, readRanges } from './sweep-range.ts';
 import type { BlockEigenvalue } from './sweep-spectrum.ts';
 import { type Zero, type Zeros, zerosOfFamily, zerosOnCurve } from './sweep-zeros.ts';
 

@@ -12,7 +12,8 @@ import { energyOfMatrices } from '../model/floating-matrices.ts';
 import { readQuantities } from '../model/quantities.ts';
 import { toleranceOf } from './floating-prepare.ts';
 import type { BlocksAt, CurvePoint } from './sweep-curve.ts';
-import type { Range, SweepFamily } from './sweep-family.ts';
+import type { SweepFamily } from './sweep-family.ts';
+import type { Range } from './sweep-range.ts';
 
 export interface FloatingMatrices {
   readonly family: SweepFamily;

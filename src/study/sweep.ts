@@ -10,9 +10,10 @@ import { CAUTION, componentSummaries, groupSummary, modelSummary } from './summa
 import { type SweepCollision, sweepCollisions, type Tracks, tracksOf } from './sweep-collisions.ts';
 import { type BlocksAt, blockEvaluator, type Curve, type CurvePoint, sweepCurve } from './sweep-curve.ts';
 import { type EventNumbers, exactEvent, floatingEvent, inertiaAt, type Observation, observe, transversal } from './sweep-event.ts';
-import { formatRational, type SweepFamily, sweepFamily } from './sweep-family.ts';
+import { type SweepFamily, sweepFamily } from './sweep-family.ts';
 import { type FileTable, fileSweep } from './sweep-files.ts';
 import { type ZeroChart, zeroChart } from './sweep-grid.ts';
+import { formatRational } from './sweep-range.ts';
 import { type Zeros, zerosOfFamily, zerosOnCurve } from './sweep-zeros.ts';
 import { thresholdFormulas } from './threshold-formula.ts';
 

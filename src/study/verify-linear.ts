@@ -12,8 +12,6 @@ import {
   kernel,
   type Matrix,
   type ModularMatrix,
-  modularEchelon,
-  modularMultiply,
   modularRank,
   modularTranspose,
   multiply,
@@ -21,6 +19,7 @@ import {
 } from '../linear/index.ts';
 import { exactValue, parseExpression, withField } from '../model/expression/index.ts';
 import type { EntryTexts, LinearCertificate } from './certificate.ts';
+import { conjugatesOf, solveModular, wordMatrix } from './verify-conjugates.ts';
 import { inertiaByDescartes } from './verify-inertia.ts';
 import {
   blocksOf,
@@ -109,20 +108,6 @@ const reduce = (a: Matrix<Algebraic>, r: Reduction): ModularMatrix => ({
   cols: a.cols,
   data: Int32Array.from(a.data, (x) => r.apply(x)),
 });
-
-function solveModular(w: ModularMatrix, s: ModularMatrix): ModularMatrix {
-  // rows of [w | s] reduced: w⁻¹ s
-  const n = w.rows;
-  const data = new Int32Array(n * 2 * n);
-  for (let i = 0; i < n; i++) {
-    data.set(w.data.subarray(i * n, (i + 1) * n), i * 2 * n);
-    data.set(s.data.subarray(i * n, (i + 1) * n), i * 2 * n + n);
-  }
-  const { matrix } = modularEchelon({ p: w.p, rows: n, cols: 2 * n, data });
-  const out = new Int32Array(n * n);
-  for (let i = 0; i < n; i++) out.set(matrix.data.subarray(i * 2 * n + n, (i + 1) * 2 * n), i * n);
-  return { p: w.p, rows: n, cols: n, data: out };
-}
 
 const same = (a: Matrix<Algebraic>, b: Matrix<Algebraic>, sign: 1 | -1) =>
   a.data.every((x, i) => a.field.equal(x, sign === 1 ? b.data[i]! : a.field.neg(b.data[i]!)));
@@ -380,49 +365,6 @@ function checkSubgroups(
     compare(`${key}.codimension`, sub.codimension, brute.codimension, 'adjoint map on the whole generalised kernel');
     compare(`${key}.motion`, sub.motion, brute.motion, 'adjoint map on the whole generalised kernel');
   });
-}
-
-/** `r^2 s`: the rightmost letter acts first. */
-function wordMatrix(word: string, named: ReadonlyMap<string, SignedMatrix>, n: number, p: number, order: number): SignedMatrix | undefined {
-  let matrix: ModularMatrix = { p, rows: n, cols: n, data: Int32Array.from({ length: n * n }, (_, i) => (i % (n + 1) === 0 ? 1 : 0)) };
-  let sign: 1 | -1 = 1;
-  if (word === '1') return { matrix, sign };
-  for (const letter of word.split(' ')) {
-    const [name, power = '1'] = letter.split('^');
-    const g = named.get(name!);
-    if (g === undefined || !/^\d{1,6}$/.test(power) || Number(power) > order) return undefined;
-    for (let k = Number(power); k > 0; k--) {
-      matrix = modularMultiply(matrix, g.matrix);
-      sign = (sign * g.sign) as 1 | -1;
-    }
-  }
-  return { matrix, sign };
-}
-
-/** Number of conjugates of a subgroup: orbits of the vector under the conjugates, told apart by their sorted images. */
-function conjugatesOf(own: readonly SignedMatrix[], order: number, generators: readonly SignedMatrix[], vector: Int32Array): number {
-  const keyOf = (h: readonly SignedMatrix[]) =>
-    orbitOf(h, vector, order + 1)
-      ?.keys.slice()
-      .sort()
-      .join(';') ?? '';
-  const seen = new Map([[keyOf(own), own]]);
-  const open = [own];
-  for (let h = open.pop(); h !== undefined; h = open.pop())
-    for (const g of generators) {
-      const inverse = inverseOf(g.matrix);
-      const moved = h.map((x) => ({ matrix: modularMultiply(g.matrix, modularMultiply(x.matrix, inverse)), sign: x.sign }));
-      const key = keyOf(moved);
-      if (seen.has(key)) continue;
-      seen.set(key, moved);
-      open.push(moved);
-    }
-  return seen.size;
-}
-
-function inverseOf(a: ModularMatrix): ModularMatrix {
-  const n = a.rows;
-  return solveModular(a, { p: a.p, rows: n, cols: n, data: Int32Array.from({ length: n * n }, (_, i) => (i % (n + 1) === 0 ? 1 : 0)) });
 }
 
 /** Signs of the blocks of even size j: the signature of S L^{j−2} on ker L^j, over all components together. */
